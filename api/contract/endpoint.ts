@@ -10,7 +10,12 @@ export type Access = 'public' | 'session' | 'member' | readonly Role[];
 type Shape = z.ZodType;
 
 /** One HTTP operation, described once: the server mounts it, the client calls it, OpenAPI lists it. */
-export interface Endpoint<P extends Shape = Shape, Q extends Shape = Shape, B extends Shape = Shape, R extends Shape = Shape> {
+export interface Endpoint<
+  P extends Shape = Shape,
+  Q extends Shape = Shape,
+  B extends Shape = Shape,
+  R extends Shape = Shape,
+> {
   id: string;
   method: 'get' | 'post' | 'put' | 'delete';
   /** Path under /api/v1, Express form (`/runs/:runId`). */

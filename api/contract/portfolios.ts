@@ -133,7 +133,13 @@ export const Edition = z.object({
 });
 export type Edition = z.infer<typeof Edition>;
 
-export const EditionSummary = Edition.pick({ id: true, number: true, state: true, asAt: true, reconciliation: true }).extend({
+export const EditionSummary = Edition.pick({
+  id: true,
+  number: true,
+  state: true,
+  asAt: true,
+  reconciliation: true,
+}).extend({
   updatedAt: Instant,
 });
 

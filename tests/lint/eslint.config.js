@@ -71,7 +71,10 @@ export default tseslint.config(
   {
     files: ['api/engine/**/*.ts'],
     rules: {
-      'no-restricted-imports': ['error', { patterns: [{ regex: '^(?!\\.|#engine/)', message: 'The engine is pure.' }] }],
+      'no-restricted-imports': [
+        'error',
+        { patterns: [{ regex: '^(?!\\.|#engine/)', message: 'The engine is pure.' }] },
+      ],
       'no-restricted-globals': ['error', ...forbidInEngine.map((name) => ({ name, message: 'The engine is pure.' }))],
       'no-restricted-properties': [
         'error',

@@ -1,0 +1,476 @@
+import { z } from 'zod';
+import { Currency, Digest, Id, Instant, LossRange, Minor, Notice, PageQuery, pageOf } from './common.ts';
+import { endpoint } from './endpoint.ts';
+import { LocationQuality, Reconciliation, RowState } from './portfolios.ts';
+import { EVERY_ROLE, READERS, UNDERWRITERS } from './roles.ts';
+import { Anchor, Intensity } from './scenarios.ts';
+
+export const Purpose = z.enum(['exploratory', 'underwriting_file', 'event', 'placement']);
+export type Purpose = z.infer<typeof Purpose>;
+
+export const RunOptions = z.object({
+  mesovortices: z.boolean().default(true),
+  intensity: Intensity.default('pressure'),
+  anchor: Anchor.default('auto'),
+  /** Gusts whose chance of being exceeded is counted per site [m/s]. */
+  gustThresholdsMs: z.tuple([z.number().min(20).max(85), z.number().min(20).max(85)]).default([40, 50]),
+});
+export type RunOptions = z.infer<typeof RunOptions>;
+
+export const QuoteRequest = z.object({
+  editionId: Id,
+  scenarioVersionIds: z.array(Id).min(1, 'Choose at least one track.').max(20),
+  calibrationId: Id,
+  curveSetId: Id,
+  options: RunOptions,
+  purpose: Purpose,
+  costCentre: z.string().trim().max(64).default(''),
+});
+export type QuoteRequest = z.infer<typeof QuoteRequest>;
+
+/** The price before the button: never exceeded. */
+export const Quote = z.object({
+  id: Id,
+  number: z.string(),
+  request: QuoteRequest,
+  editionName: z.string(),
+  scenarioNames: z.array(z.string()),
+  readySites: z.int(),
+  heldSites: z.int(),
+  heldTivMinor: Minor,
+  scenarios: z.int(),
+  siteScenarios: z.int(),
+  outOfReach: z.int(),
+  units: z.int(),
+  /** Price of one site–scenario in currency units, as a decimal string (exact). */
+  unitPrice: z.string(),
+  minimumApplied: z.boolean(),
+  minimumMinor: Minor,
+  netMinor: Minor,
+  taxLabel: z.string(),
+  taxMinor: Minor,
+  grossMinor: Minor,
+  currency: Currency,
+  tariffVersion: z.int(),
+  createdAt: Instant,
+  validUntil: Instant,
+  state: z.enum(['open', 'accepted', 'expired']),
+  /** An earlier run with identical inputs and engine, offered free. */
+  identicalRunId: Id.nullable(),
+  freeBalanceMinor: Minor,
+  assumedTivShare: z.number(),
+  warnings: z.array(z.object({ code: z.string(), text: z.string() })),
+});
+export type Quote = z.infer<typeof Quote>;
+
+export const RunState = z.enum(['waiting', 'working', 'complete', 'failed', 'cancelled']);
+export type RunState = z.infer<typeof RunState>;
+export const ScenarioState = z.enum(['waiting', 'building', 'scoring', 'stored', 'failed', 'cancelled']);
+
+/** Event results of one track. Ranges are 5–95 % over 264 vortex draws; null range fields when the layer is off. */
+export const ScenarioResult = z.object({
+  sitesScored: z.int(),
+  outOfReach: z.int(),
+  belowFloor: z.int(),
+  tivMinor: Minor,
+  groundUpPlainMinor: Minor,
+  grossPlainMinor: Minor,
+  /** Null when the mesovortex layer is off or never acts: there is no vortex range then. */
+  groundUp: LossRange.nullable(),
+  gross: LossRange.nullable(),
+  peakGustMs: z.object({ plain: z.number(), p5: z.number(), p50: z.number(), p95: z.number() }),
+  /** Sites above each chosen gust: plain, and 5, 50, 95 % over draws. */
+  above: z.array(
+    z.object({ gustMs: z.number(), plain: z.int(), p5: z.int(), p50: z.int(), p95: z.int(), tivMinor: Minor }),
+  ),
+  /** Sites per 5 m/s bin from 20 to 85+, enhanced median and plain. */
+  histogram: z.object({ p50: z.array(z.int()), plain: z.array(z.int()) }),
+  wavenumber: z.int().nullable(),
+  maxima: z.object({ reportedMs: z.number().nullable(), pressureImpliedMs: z.number().nullable(), used: Intensity }),
+  anchor: z.enum(['mean', 'peak', 'mixed']),
+  engineNotices: z.array(z.object({ code: z.string(), text: z.string() })),
+});
+export type ScenarioResult = z.infer<typeof ScenarioResult>;
+
+export const RunScenario = z.object({
+  id: Id,
+  scenarioVersionId: Id,
+  name: z.string(),
+  version: z.int(),
+  state: ScenarioState,
+  sitesDone: z.int(),
+  sitesTotal: z.int(),
+  error: z.string().nullable(),
+  startedAt: Instant.nullable(),
+  finishedAt: Instant.nullable(),
+  restarts: z.int(),
+  result: ScenarioResult.nullable(),
+  path: z.array(z.tuple([z.number(), z.number()])),
+  pathTimes: z.array(z.object({ time: Instant, longitude: z.number(), latitude: z.number() })),
+});
+export type RunScenario = z.infer<typeof RunScenario>;
+
+export const RunSummary = z.object({
+  id: Id,
+  number: z.string(),
+  portfolioId: Id,
+  portfolioName: z.string(),
+  editionId: Id,
+  editionNumber: z.int(),
+  scenarioNames: z.array(z.string()),
+  state: RunState,
+  purpose: Purpose,
+  /** True when the calibration isn't signed: every output says so. */
+  stamped: z.boolean(),
+  scenariosDone: z.int(),
+  scenariosTotal: z.int(),
+  currency: Currency,
+  grossPlainMinor: Minor.nullable(),
+  gross: LossRange.nullable(),
+  quotedMinor: Minor,
+  chargedMinor: Minor.nullable(),
+  acceptedAt: Instant,
+  acceptedBy: z.string(),
+  finishedAt: Instant.nullable(),
+});
+export type RunSummary = z.infer<typeof RunSummary>;
+
+export const Run = RunSummary.extend({
+  asAt: z.string().nullable(),
+  options: RunOptions,
+  calibration: z.object({
+    id: Id,
+    code: z.string(),
+    version: z.int(),
+    state: z.string(),
+    signedBy: z.string().nullable(),
+  }),
+  curveSet: z.object({ id: Id, name: z.string(), version: z.int(), note: z.string() }),
+  costCentre: z.string(),
+  reconciliation: Reconciliation,
+  assumedTivMinor: Minor,
+  assumedSites: z.int(),
+  engineVersion: z.string(),
+  scenarios: z.array(RunScenario),
+  notices: z.array(Notice),
+});
+export type Run = z.infer<typeof Run>;
+
+/** Pushed over server-sent events whenever something changed; the client reads the run again or patches progress. */
+export const RunEvent = z.object({
+  runId: Id,
+  state: RunState,
+  scenarios: z.array(z.object({ id: Id, state: ScenarioState, sitesDone: z.int(), sitesTotal: z.int() })),
+});
+export type RunEvent = z.infer<typeof RunEvent>;
+
+export const SiteSort = z.enum(['ref', 'tiv', 'plain', 'p50', 'p95', 'damage', 'groundUp', 'gross']);
+
+export const SiteResult = z.object({
+  siteNo: z.int(),
+  siteRef: z.string(),
+  label: z.string(),
+  town: z.string(),
+  latitude: z.number(),
+  longitude: z.number(),
+  state: RowState,
+  locationQuality: LocationQuality,
+  assumed: z.array(z.string()),
+  tivMinor: Minor,
+  reach: z.enum(['scored', 'out_of_reach', 'below_floor']),
+  plainMs: z.number().nullable(),
+  p5Ms: z.number().nullable(),
+  p50Ms: z.number().nullable(),
+  p90Ms: z.number().nullable(),
+  p95Ms: z.number().nullable(),
+  p99Ms: z.number().nullable(),
+  peakTime: Instant.nullable(),
+  directionDeg: z.number().nullable(),
+  damagePlain: z.number().nullable(),
+  damageMean: z.number().nullable(),
+  damageP5: z.number().nullable(),
+  damageP95: z.number().nullable(),
+  groundUpPlainMinor: Minor.nullable(),
+  groundUpMeanMinor: Minor.nullable(),
+  grossPlainMinor: Minor.nullable(),
+  grossMeanMinor: Minor.nullable(),
+  grossP5Minor: Minor.nullable(),
+  grossP50Minor: Minor.nullable(),
+  grossP95Minor: Minor.nullable(),
+});
+export type SiteResult = z.infer<typeof SiteResult>;
+
+export const SitesQuery = z.object({
+  sort: SiteSort.default('gross'),
+  direction: z.enum(['asc', 'desc']).default('desc'),
+  minGustMs: z.coerce.number().min(0).max(120).optional(),
+  search: z.string().trim().max(64).optional(),
+  offset: z.coerce.number().int().min(0).max(5_000_000).default(0),
+  limit: z.coerce.number().int().min(1).max(500).default(100),
+});
+export const SitesPage = z.object({
+  items: z.array(SiteResult),
+  total: z.int(),
+  totals: z.object({ tivMinor: Minor, groundUpMeanMinor: Minor, grossMeanMinor: Minor, grossPlainMinor: Minor }),
+  largestGustMs: z.number().nullable(),
+  notices: z.array(Notice),
+});
+
+/** One rung of "why this gust": factor or addition, and the wind after it. */
+export const LadderStep = z.object({
+  key: z.enum(['gradient', 'surface', 'motion', 'terrain', 'gust_factor', 'hills']),
+  reason: z.string(),
+  operation: z.enum(['start', 'times', 'plus']),
+  amount: z.number(),
+  afterMs: z.number(),
+});
+export const SiteDetail = SiteResult.extend({
+  construction: z.string(),
+  occupancy: z.string(),
+  yearBuilt: z.int().nullable(),
+  storeys: z.int().nullable(),
+  terrain: z.string(),
+  roughnessM: z.number().nullable(),
+  fetchM: z.array(z.number()),
+  deductibleMinor: Minor,
+  limitMinor: Minor.nullable(),
+  curve: z.string(),
+  meanMs: z.number().nullable(),
+  seaWindMs: z.number().nullable(),
+  secondsAbove25: z.number().nullable(),
+  secondsAbove33: z.number().nullable(),
+  distanceToTrackKm: z.number().nullable(),
+  sideOfTrack: z.enum(['left', 'right']).nullable(),
+  wavenumber: z.int().nullable(),
+  ladder: z.array(LadderStep),
+  /** Hours around the peak, at most 400 points. */
+  series: z.object({
+    time: z.array(Instant),
+    plain: z.array(z.number()),
+    p5: z.array(z.number()),
+    p50: z.array(z.number()),
+    p95: z.array(z.number()),
+    directionDeg: z.array(z.number()),
+  }),
+  notices: z.array(Notice),
+});
+export type SiteDetail = z.infer<typeof SiteDetail>;
+
+export const ResultPoints = z.object({
+  siteNo: z.array(z.int()),
+  ref: z.array(z.string()),
+  longitude: z.array(z.number()),
+  latitude: z.array(z.number()),
+  tivMinor: z.array(Minor),
+  state: z.array(RowState),
+  plainMs: z.array(z.number().nullable()),
+  p5Ms: z.array(z.number().nullable()),
+  p95Ms: z.array(z.number().nullable()),
+});
+export type ResultPoints = z.infer<typeof ResultPoints>;
+
+export const FootprintView = z.enum(['plain', 'p50', 'p90', 'difference']);
+export type FootprintView = z.infer<typeof FootprintView>;
+/** Filled bands: `level` is the lower edge in m/s (gust) or the lower edge of the difference step. */
+export const Footprint = z.object({
+  view: FootprintView,
+  levels: z.array(z.number()),
+  bbox: z.tuple([z.number(), z.number(), z.number(), z.number()]),
+  bands: z.object({
+    type: z.literal('FeatureCollection'),
+    features: z.array(
+      z.object({
+        type: z.literal('Feature'),
+        properties: z.object({ level: z.number() }),
+        geometry: z.object({
+          type: z.literal('MultiPolygon'),
+          coordinates: z.array(z.array(z.array(z.tuple([z.number(), z.number()])))),
+        }),
+      }),
+    ),
+  }),
+  definition: z.string(),
+  notices: z.array(Notice),
+});
+export type Footprint = z.infer<typeof Footprint>;
+
+/** Everything a run rests on, by version and digest; a re-run from it must give the same digits. */
+export const RunSlip = z.object({
+  run: z.string(),
+  state: RunState,
+  acceptedAt: Instant,
+  acceptedBy: z.string(),
+  finishedAt: Instant.nullable(),
+  purpose: Purpose,
+  edition: z.object({
+    portfolio: z.string(),
+    number: z.int(),
+    asAt: z.string().nullable(),
+    digest: Digest,
+    sites: z.int(),
+    held: z.int(),
+  }),
+  scenarios: z.array(
+    z.object({
+      name: z.string(),
+      version: z.int(),
+      digest: Digest,
+      source: z.string(),
+      windAveragingS: z.int(),
+      conversion: z.string(),
+      filled: z.array(z.string()),
+      resultDigest: Digest.nullable(),
+    }),
+  ),
+  calibration: z.object({ code: z.string(), version: z.int(), state: z.string(), digest: Digest }),
+  curveSet: z.object({ name: z.string(), version: z.int(), digest: Digest }),
+  options: RunOptions,
+  draws: z.string(),
+  engineVersion: z.string(),
+  inputsDigest: Digest,
+  quote: z.object({ number: z.string(), tariffVersion: z.int(), grossMinor: Minor, currency: Currency }),
+  chargedMinor: Minor.nullable(),
+  notices: z.array(Notice),
+});
+export type RunSlip = z.infer<typeof RunSlip>;
+
+const QuoteParams = z.object({ quoteId: Id });
+const RunParams = z.object({ runId: Id });
+const ScenarioParams = z.object({ runId: Id, runScenarioId: Id });
+const SiteParams = ScenarioParams.extend({ siteNo: z.coerce.number().int().min(1) });
+
+export const createQuote = endpoint({
+  id: 'createQuote',
+  method: 'post',
+  path: '/quotes',
+  summary: 'Price a run; free, valid for a day, pinned to its inputs',
+  access: UNDERWRITERS,
+  body: QuoteRequest,
+  response: Quote,
+  status: 201,
+});
+export const getQuote = endpoint({
+  id: 'getQuote',
+  method: 'get',
+  path: '/quotes/:quoteId',
+  summary: 'One quote',
+  access: UNDERWRITERS,
+  params: QuoteParams,
+  response: Quote,
+  status: 200,
+});
+export const acceptQuote = endpoint({
+  id: 'acceptQuote',
+  method: 'post',
+  path: '/quotes/:quoteId/accept',
+  summary: 'Accept a quote: reserves its total and starts the run',
+  access: UNDERWRITERS,
+  idempotent: true,
+  params: QuoteParams,
+  response: Run,
+  status: 201,
+});
+export const listRuns = endpoint({
+  id: 'listRuns',
+  method: 'get',
+  path: '/runs',
+  summary: 'Runs, newest first',
+  access: EVERY_ROLE,
+  query: PageQuery.extend({ portfolioId: Id.optional() }),
+  response: pageOf(RunSummary),
+  status: 200,
+});
+export const getRun = endpoint({
+  id: 'getRun',
+  method: 'get',
+  path: '/runs/:runId',
+  summary: 'A run with its scenarios and event results',
+  access: READERS,
+  params: RunParams,
+  response: Run,
+  status: 200,
+});
+export const watchRun = endpoint({
+  id: 'watchRun',
+  method: 'get',
+  path: '/runs/:runId/events',
+  summary: 'Progress as server-sent events (RunEvent)',
+  access: READERS,
+  params: RunParams,
+  stream: 'text/event-stream',
+  response: RunEvent,
+  status: 200,
+});
+export const cancelRun = endpoint({
+  id: 'cancelRun',
+  method: 'post',
+  path: '/runs/:runId/cancel',
+  summary: 'Cancel: finished tracks are kept and charged, the rest released',
+  access: UNDERWRITERS,
+  params: RunParams,
+  response: Run,
+  status: 200,
+});
+export const getRunSlip = endpoint({
+  id: 'getRunSlip',
+  method: 'get',
+  path: '/runs/:runId/slip',
+  summary: 'Run slip: every input by version and digest',
+  access: READERS,
+  params: RunParams,
+  response: RunSlip,
+  status: 200,
+});
+export const listSites = endpoint({
+  id: 'listSites',
+  method: 'get',
+  path: '/runs/:runId/scenarios/:runScenarioId/sites',
+  summary: 'Site results, sorted and filtered on the server',
+  access: READERS,
+  params: ScenarioParams,
+  query: SitesQuery,
+  response: SitesPage,
+  status: 200,
+});
+export const exportSites = endpoint({
+  id: 'exportSites',
+  method: 'get',
+  path: '/runs/:runId/scenarios/:runScenarioId/sites.csv',
+  summary: 'All site results as CSV, streamed',
+  access: READERS,
+  params: ScenarioParams,
+  stream: 'text/csv',
+  response: z.string(),
+  status: 200,
+});
+export const getSiteDetail = endpoint({
+  id: 'getSiteDetail',
+  method: 'get',
+  path: '/runs/:runId/scenarios/:runScenarioId/sites/:siteNo',
+  summary: 'One site: why this gust, series through the storm, damage and terms',
+  access: READERS,
+  params: SiteParams,
+  response: SiteDetail,
+  status: 200,
+});
+export const getResultPoints = endpoint({
+  id: 'getResultPoints',
+  method: 'get',
+  path: '/runs/:runId/scenarios/:runScenarioId/points',
+  summary: 'Site points for the map',
+  access: READERS,
+  params: ScenarioParams,
+  response: ResultPoints,
+  status: 200,
+});
+export const getFootprint = endpoint({
+  id: 'getFootprint',
+  method: 'get',
+  path: '/runs/:runId/scenarios/:runScenarioId/footprint',
+  summary: 'Footprint as filled bands',
+  access: READERS,
+  params: ScenarioParams,
+  query: z.object({ view: FootprintView.default('p50') }),
+  response: Footprint,
+  status: 200,
+});
