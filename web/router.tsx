@@ -1,0 +1,24 @@
+import { createBrowserRouter } from 'react-router-dom';
+import { SIGNED_IN_ROUTE } from './features/session/session-queries.ts';
+import { BareError } from './pages/bare-error.tsx';
+import { Starting } from './pages/starting.tsx';
+
+/** Pages load when first visited; each exports loader, Component and ErrorBoundary. */
+export const router = createBrowserRouter([
+  {
+    HydrateFallback: Starting,
+    ErrorBoundary: BareError,
+    children: [
+      { path: 'sign-in', lazy: () => import('./pages/sign-in.tsx') },
+      { path: 'accept', lazy: () => import('./pages/first-acceptance.tsx') },
+      {
+        id: SIGNED_IN_ROUTE,
+        lazy: () => import('./pages/app-shell.tsx'),
+        children: [
+          { path: 'limits', lazy: () => import('./pages/limits.tsx') },
+          { path: '*', lazy: () => import('./pages/not-found.tsx') },
+        ],
+      },
+    ],
+  },
+]);
