@@ -26,6 +26,7 @@ export const Movement = z.object({
   amountMinor: Minor,
   currency: Currency,
 });
+export type Movement = z.infer<typeof Movement>;
 export const Charge = z.object({
   runId: Id,
   runNumber: z.string(),
@@ -39,6 +40,7 @@ export const Charge = z.object({
   currency: Currency,
   state: z.enum(['reserved', 'charged', 'released']),
 });
+export type Charge = z.infer<typeof Charge>;
 
 export const TopUpRequest = z.object({
   amountMinor: Minor.min(1000, 'The smallest top-up is 10.00.').max(10_000_000, 'The largest top-up is 100,000.00.'),

@@ -12,7 +12,7 @@ export const DamageCurve = z.discriminatedUnion('kind', [
     name: z.string(),
     thresholdMs: z.number().positive(),
     halfMs: z.number().positive(),
-    gustBasis: z.object({ averagingS: z.literal(3), heightM: z.literal(10), exposure: z.string() }),
+    gustBasis: z.object({ averagingS: z.literal(3), heightM: z.literal(10), exposure: z.literal('as found') }),
     fittedOn: z.enum(['plain', 'enhanced']),
     source: z.string(),
     version: z.string(),
@@ -23,7 +23,7 @@ export const DamageCurve = z.discriminatedUnion('kind', [
     name: z.string(),
     speedsMs: z.array(z.number().nonnegative()).min(2),
     ratios: z.array(z.number().min(0).max(1)).min(2),
-    gustBasis: z.object({ averagingS: z.literal(3), heightM: z.literal(10), exposure: z.string() }),
+    gustBasis: z.object({ averagingS: z.literal(3), heightM: z.literal(10), exposure: z.literal('as found') }),
     fittedOn: z.enum(['plain', 'enhanced']),
     source: z.string(),
     version: z.string(),
@@ -49,6 +49,7 @@ export const CalibrationSettings = z.object({
   ringWidthFraction: z.number(),
   eyeVorticityRatio: z.number(),
 });
+export type CalibrationSettings = z.infer<typeof CalibrationSettings>;
 
 export const Calibration = z.object({
   id: Id,

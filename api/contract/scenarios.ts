@@ -3,30 +3,36 @@ import { Digest, Id, Instant, Notice, PageQuery, pageOf } from './common.ts';
 import { endpoint } from './endpoint.ts';
 import { READERS, TRACK_WRITERS } from './roles.ts';
 
-export const Averaging = z.union([z.literal(60), z.literal(120), z.literal(180), z.literal(600)]);
+export const Averaging = z.union([z.literal(60), z.literal(120), z.literal(180), z.literal(600)], {
+  error: 'Declare how long the winds were averaged: 60, 120, 180 or 600 seconds. A 10-min wind reads about 5 % lower.',
+});
 export const Intensity = z.enum(['pressure', 'wind']);
 export const Anchor = z.enum(['auto', 'mean', 'peak']);
 
-/** A fix as entered, SI and hPa; null is "not given". Order is time order. */
+/**
+ * A fix as entered, m/s, m and hPa; null is "not given". The bounds here only keep nonsense out of the arithmetic:
+ * what is plausible is said by the TRACK rules, in words, for every fix at once.
+ */
 export const Fix = z.object({
   time: Instant,
-  latitude: z.number().min(-60).max(60),
+  latitude: z.number().min(-90).max(90),
   longitude: z.number().min(-180).max(180),
-  centralPressureHpa: z.number().min(850).max(1025).nullable(),
-  ambientPressureHpa: z.number().min(950).max(1040).nullable(),
-  maxWindMs: z.number().min(0).max(120).nullable(),
-  radiusOfMaxWindM: z.number().min(3000).max(300_000).nullable(),
+  centralPressureHpa: z.number().min(0).max(200_000).nullable(),
+  ambientPressureHpa: z.number().min(0).max(200_000).nullable(),
+  maxWindMs: z.number().min(0).max(1000).nullable(),
+  radiusOfMaxWindM: z.number().min(0).max(10_000_000).nullable(),
   /** Quadrants NE, SE, SW, NW; 0 is none, null not given. */
   radius64KtM: z.tuple([z.number().min(0), z.number().min(0), z.number().min(0), z.number().min(0)]).nullable(),
-  ringWidthFraction: z.number().min(0.1).max(0.45).nullable(),
-  eyeVorticityRatio: z.number().min(0).max(0.6).nullable(),
-  hoursInland: z.number().min(0).max(240).nullable(),
+  ringWidthFraction: z.number().min(0).max(1).nullable(),
+  eyeVorticityRatio: z.number().min(0).max(1).nullable(),
+  hoursInland: z.number().min(0).max(1000).nullable(),
 });
 export type Fix = z.infer<typeof Fix>;
 
 /** What a check of the track found (TRACK-nn): seen, why it matters, what to do. */
 export const TrackFinding = z.object({
   code: z.string().regex(/^TRACK-\d\d$/),
+  /** refuse: can't be saved; consent: can't be saved until the person agrees (`sortByTime`); note: saved, shown. */
   severity: z.enum(['refuse', 'consent', 'note']),
   /** Index of the fix concerned, null for the whole track. */
   fix: z.int().nullable(),
@@ -88,12 +94,17 @@ export const TrackDeclarations = z.object({
 export const Track = z.object({ fixes: z.array(Fix).min(1).max(400), declarations: TrackDeclarations });
 export type Track = z.infer<typeof Track>;
 
+/** Consent to put fixes in time order; without it a track out of order isn't saved. */
+const SortByTime = z.boolean().default(false);
+
 export const ReadTrack = z.object({
   format: z.enum(['auto', 'best-track', 'track-csv']).default('auto'),
   text: z.string().min(1, 'The text is empty. Paste a best track or choose a file.').max(2_000_000),
   /** In a file of several storms, which one; the first when left out. */
   storm: z.string().max(40).optional(),
+  sortByTime: SortByTime,
 });
+export type ReadTrack = z.infer<typeof ReadTrack>;
 export const ReadTrackReply = z.object({
   format: z.enum(['best-track', 'track-csv']),
   name: z.string(),
@@ -105,6 +116,7 @@ export const ReadTrackReply = z.object({
   fixes: z.array(Fix),
   findings: z.array(TrackFinding),
 });
+export type ReadTrackReply = z.infer<typeof ReadTrackReply>;
 
 export const ScenarioVersion = z.object({
   id: Id,
@@ -143,8 +155,18 @@ export const NewScenario = z.object({
   name: z.string().trim().min(1, 'Give the scenario a name.').max(120),
   description: z.string().trim().max(500).default(''),
   track: Track,
+  sortByTime: SortByTime,
 });
-export const NewVersion = z.object({ track: Track, basedOn: z.int() });
+export type NewScenario = z.infer<typeof NewScenario>;
+export const NewVersion = z.object({ track: Track, basedOn: z.int(), sortByTime: SortByTime });
+export type NewVersion = z.infer<typeof NewVersion>;
+/** `fixes` of the reply is empty while a finding refuses the track. */
+export const ResolveTrack = z.object({
+  track: Track,
+  intensity: Intensity.default('pressure'),
+  sortByTime: SortByTime,
+});
+export type ResolveTrack = z.infer<typeof ResolveTrack>;
 
 const ScenarioParams = z.object({ scenarioId: Id });
 
@@ -174,7 +196,7 @@ export const resolveTrack = endpoint({
   path: '/scenarios/resolve',
   summary: 'What the service fills in, and what it finds odd, without saving',
   access: READERS,
-  body: z.object({ track: Track, intensity: Intensity.default('pressure') }),
+  body: ResolveTrack,
   response: TrackResolution,
   status: 200,
 });
