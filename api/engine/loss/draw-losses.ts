@@ -60,7 +60,11 @@ export function drawLosses(
     if (mu > 0 && mu < lowest) lowest = mu;
     if (mu > highest) highest = mu;
   }
-  if (value === 0 || highest === 0) return;
+  if (highest === 0) return;
+  if (value === 0) {
+    outGross.set(outGroundUp);
+    return;
+  }
   if (lowest === highest) {
     const gross = expectedGross(highest, value, deductible, limit);
     for (let d = 0; d < count; d++) if (outGross[d]! > 0) outGross[d] = gross;

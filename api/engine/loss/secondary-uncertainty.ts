@@ -41,7 +41,9 @@ export function damageStopLoss(mu: number, k: number): number {
   if (k > 0.5) {
     const c = 1 - k;
     // (1 / bB) c^(b+1) (1/(b+1) + b * sum over n ≥ 1 of ...): written so that b near 0 stays accurate.
-    return reciprocalBeta(b) * Math.exp((b + 1) * Math.log(c)) * (1 / (b + 1) + b * tailSeries(b, 1 - a, c));
+    // A tiny a would be lost in b = 4 - a, so the beta function is taken from the smaller shape.
+    const front = a < b ? (a / b) * reciprocalBeta(a) : reciprocalBeta(b);
+    return front * Math.exp((b + 1) * Math.log(c)) * (1 / (b + 1) + b * tailSeries(b, 1 - a, c));
   }
   const logK = Math.log(k);
   const front = reciprocalBeta(a);
