@@ -287,8 +287,23 @@ export function distanceToLandM(index: LandIndex, latitude: number, longitude: n
         const segment = cellSegments[k]!;
         if (artificial[segment] === 1) continue;
         const s = 4 * segment;
-        const a = orthographic(segments[s]! - longitude, segments[s + 1]!, sinPhi, cosPhi);
-        const b = orthographic(segments[s + 2]! - longitude, segments[s + 3]!, sinPhi, cosPhi);
+        const dx = segments[s + 2]! - segments[s]!;
+        const dy = segments[s + 3]! - segments[s + 1]!;
+        let from = 0;
+        let to = 1;
+        if (Math.abs(dx) > CELL_DEG || Math.abs(dy) > CELL_DEG) {
+          // A long edge is straight in longitude and latitude, not in the projection: take only its part near this cell.
+          const west = nearest(-180 + column * CELL_DEG - segments[s]!);
+          const south = -90 + row * CELL_DEG - segments[s + 1]!;
+          const inX = shareWithin(west, west + CELL_DEG, dx);
+          const inY = shareWithin(south, south + CELL_DEG, dy);
+          from = Math.max(inX[0], inY[0]);
+          to = Math.min(inX[1], inY[1]);
+          if (from > to) continue;
+        }
+        const east = segments[s]! - longitude;
+        const a = orthographic(east + from * dx, segments[s + 1]! + from * dy, sinPhi, cosPhi);
+        const b = orthographic(east + to * dx, segments[s + 1]! + to * dy, sinPhi, cosPhi);
         const ex = b.x - a.x;
         const ey = b.y - a.y;
         const length = ex * ex + ey * ey;
@@ -303,6 +318,14 @@ export function distanceToLandM(index: LandIndex, latitude: number, longitude: n
   }
   const distance = found ? EARTH_RADIUS * Math.asin(Math.sqrt(best)) : Infinity;
   return isLand(index, latitude, longitude) ? -distance : distance;
+}
+
+/** Shares of a run from 0 to `step` that lie between low and high, a hair wider so that neighbouring parts meet. */
+function shareWithin(low: number, high: number, step: number): [number, number] {
+  if (step === 0) return low <= 0 && high >= 0 ? [0, 1] : [1, 0];
+  const a = low / step;
+  const b = high / step;
+  return [Math.max(Math.min(a, b) - 1e-9, 0), Math.min(Math.max(a, b) + 1e-9, 1)];
 }
 
 function orthographic(east: number, latitude: number, sinPhi: number, cosPhi: number): { x: number; y: number } {
