@@ -8,6 +8,8 @@ export const MS_PER_MPH = 1609.344 / 3600;
 export const MS_PER_KMH = 1 / 3.6;
 /** Pascals in one hectopascal. */
 export const PA_PER_HPA = 100;
+/** Pascals in one inch of mercury at 0 °C, conventional value. */
+export const PA_PER_INCH_OF_MERCURY = 3386.389;
 
 /** Knots to metres per second. */
 export const msFromKnots = (knots: number): number => knots * MS_PER_KNOT;
