@@ -8,8 +8,8 @@ const ROWS = 720;
 // Reference points sit off the middle of their cell, where drawn or round coordinates seldom lie.
 const REFERENCE_X = 0.48713;
 const REFERENCE_Y = 0.51279;
-// A great circle is followed in straight pieces of longitude and latitude; 2 km keeps them within 0.5 m up to 80 degrees.
-const PIECE = 2_000;
+// A great circle is followed in straight pieces of longitude and latitude; 4 km keeps them within 1 m up to 70 degrees.
+const PIECE = 4_000;
 
 /** Greatest overland distance looked for [m]. */
 export const FETCH_LIMIT = 100_000;
@@ -193,15 +193,17 @@ export function fetchBySector(
   out: Float64Array,
   offset = 0,
 ): Float64Array {
-  const onLand = isLand(index, latitude, longitude);
+  // No ray can meet the coast before the nearest coast, so all of them start that far out.
+  const clear = -distanceToLandM(index, latitude, longitude);
   for (let k = 0; k < FETCH_SECTORS.length; k++) {
-    out[offset + k] = onLand ? distanceAlong(index, latitude, longitude, FETCH_SECTORS[k]!) : 0;
+    out[offset + k] = clear < 0 ? 0 : distanceAlong(index, latitude, longitude, FETCH_SECTORS[k]!, clear);
   }
   return out;
 }
 
-/** Distance to the first coast met along a bearing, at most FETCH_LIMIT. */
-function distanceAlong(index: LandIndex, latitude: number, longitude: number, bearing: number): number {
+/** Distance to the first coast met along a bearing, at most FETCH_LIMIT, when there is none nearer than `clear`. */
+function distanceAlong(index: LandIndex, latitude: number, longitude: number, bearing: number, clear: number): number {
+  if (clear > FETCH_LIMIT) return FETCH_LIMIT;
   const phi = radians(latitude);
   const sinPhi = Math.sin(phi);
   const cosPhi = Math.cos(phi);
@@ -209,7 +211,9 @@ function distanceAlong(index: LandIndex, latitude: number, longitude: number, be
   const cosB = Math.cos(radians(bearing));
   let lat = latitude;
   let east = 0;
-  for (let piece = 1; piece * PIECE <= FETCH_LIMIT; piece++) {
+  // One piece less than the clear distance allows: a cut edge is known to some metres only.
+  const skipped = Math.max(Math.min(Math.floor(clear / PIECE), FETCH_LIMIT / PIECE) - 1, 0);
+  for (let piece = skipped; piece * PIECE <= FETCH_LIMIT; piece++) {
     const c = (piece * PIECE) / EARTH_RADIUS;
     const sinC = Math.sin(c);
     const cosC = Math.cos(c);
@@ -217,8 +221,10 @@ function distanceAlong(index: LandIndex, latitude: number, longitude: number, be
     const x = cosPhi * cosC - sinPhi * sinC * cosB;
     const nextLat = degrees(Math.atan2(sinLat, Math.hypot(sinC * sinB, x)));
     const nextEast = degrees(Math.atan2(sinC * sinB, x));
-    const share = firstCrossing(index, longitude + east, lat, nearest(nextEast - east), nextLat - lat);
-    if (share <= 1) return (piece - 1 + share) * PIECE;
+    if (piece > skipped) {
+      const share = firstCrossing(index, longitude + east, lat, nearest(nextEast - east), nextLat - lat);
+      if (share <= 1) return (piece - 1 + share) * PIECE;
+    }
     lat = nextLat;
     east = nextEast;
   }
