@@ -13,6 +13,7 @@ export const paths = {
   signIn: (next?: string) => withQuery('/sign-in', { next }),
   accept: (next?: string) => withQuery('/accept', { next }),
   portfolios: () => '/portfolios',
+  uploadSchedule: () => withQuery('/portfolios', { upload: 'new' }),
   portfolio: (portfolioId: string) => `/portfolios/${portfolioId}`,
   edition: (editionId: string, step?: IntakeStep) => withQuery(`/editions/${editionId}`, { step }),
   scenarios: () => '/scenarios',

@@ -15,6 +15,10 @@ export const router = createBrowserRouter([
         id: SIGNED_IN_ROUTE,
         lazy: () => import('./pages/app-shell.tsx'),
         children: [
+          { index: true, lazy: () => import('./pages/home.tsx') },
+          { path: 'portfolios', lazy: () => import('./pages/portfolios.tsx') },
+          { path: 'portfolios/:portfolioId', lazy: () => import('./pages/portfolio.tsx') },
+          { path: 'editions/:editionId', lazy: () => import('./pages/edition.tsx') },
           { path: 'limits', lazy: () => import('./pages/limits.tsx') },
           { path: '*', lazy: () => import('./pages/not-found.tsx') },
         ],

@@ -86,6 +86,7 @@ export function TextField({
           <input
             {...input}
             {...wiring}
+            aria-describedby={wiring['aria-describedby'] ?? input['aria-describedby']}
             readOnly={blocked || input.readOnly}
             aria-disabled={blocked || undefined}
             className={classNames(
@@ -128,7 +129,12 @@ export function SelectField({
     <Field {...{ label, aside, hint, error, className, labelHidden }}>
       {(wiring) => (
         <div className="relative">
-          <select {...select} {...wiring} className={classNames(EDGE, HEIGHTS[height], 'appearance-none pr-8')}>
+          <select
+            {...select}
+            {...wiring}
+            aria-describedby={wiring['aria-describedby'] ?? select['aria-describedby']}
+            className={classNames(EDGE, HEIGHTS[height], 'appearance-none pr-8')}
+          >
             {children}
           </select>
           <ChevronDown

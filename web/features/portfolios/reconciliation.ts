@@ -1,0 +1,89 @@
+import { Archive, CircleCheck, Hand, StickyNote } from 'lucide-react';
+import type { Reconciliation } from '#contract/portfolios.ts';
+import { exactAmount, minorPerUnit, millions } from '../../lib/money.ts';
+import { count, counted, decimal, percent } from '../../lib/numbers.ts';
+import type { Share, SumTerm } from '../../ui/sum-row.tsx';
+
+/** TIV under a term: in millions, or in whole units when that would read 0.0. */
+export const tivText = (tivMinor: number, currency: string): string => {
+  const units = tivMinor / minorPerUnit(currency);
+  return units === 0 || units >= 100_000 ? `${millions(tivMinor, currency)} m` : decimal(units, 0);
+};
+
+/** file rows = ready + with notes + held + set aside, each with its TIV. */
+export const equationOf = (sum: Reconciliation, currency: string): { total: SumTerm; terms: SumTerm[] } => {
+  const tiv = (minor: number) => `TIV ${tivText(minor, currency)}`;
+  return {
+    total: { label: 'File rows', value: count(sum.fileRows), note: 'less header line' },
+    terms: [
+      { label: 'Ready', value: count(sum.ready.rows), note: tiv(sum.ready.tivMinor), icon: CircleCheck, tone: 'done' },
+      {
+        label: 'With notes',
+        value: count(sum.notes.rows),
+        note: tiv(sum.notes.tivMinor),
+        icon: StickyNote,
+        tone: 'info',
+      },
+      { label: 'Held', value: count(sum.held.rows), note: tiv(sum.held.tivMinor), icon: Hand, tone: 'caution' },
+      { label: 'Set aside', value: count(sum.setAside.rows), note: 'repeats and totals', icon: Archive, tone: 'idle' },
+    ],
+  };
+};
+
+export const scoredTiv = (sum: Reconciliation): number => sum.ready.tivMinor + sum.notes.tivMinor;
+export const scoredRows = (sum: Reconciliation): number => sum.ready.rows + sum.notes.rows;
+/** What a control total is compared with: everything but the lines set aside. */
+export const siteRows = (sum: Reconciliation): number => scoredRows(sum) + sum.held.rows;
+export const siteTiv = (sum: Reconciliation): number => scoredTiv(sum) + sum.held.tivMinor;
+
+export const tivShares = (sum: Reconciliation): Share[] => {
+  // A schedule without values still shows how its rows divide.
+  const size = (part: { rows: number; tivMinor: number }) => (siteTiv(sum) > 0 ? part.tivMinor : part.rows);
+  return [
+    { key: 'ready', share: size(sum.ready), className: 'bg-ribbon' },
+    { key: 'notes', share: size(sum.notes), className: 'bg-diff-4' },
+    { key: 'held', share: size(sum.held), className: 'bg-ceiling' },
+  ];
+};
+
+export const tivSentence = (sum: Reconciliation, currency: string): string => {
+  const all = siteTiv(sum);
+  if (all === 0) return `TIV, ${currency}: no value read.`;
+  const share = (minor: number) => percent(minor / all);
+  return `TIV, ${currency} million: ${share(sum.ready.tivMinor)} ready, ${share(sum.notes.tivMinor)} with notes, ${share(sum.held.tivMinor)} held`;
+};
+
+export interface ControlVerdict {
+  state: 'none' | 'ties' | 'differs';
+  rows: { expected: number | null; read: number };
+  tiv: { expected: number | null; read: number };
+  sentence: string;
+}
+
+/** Expected against read; a total that wasn't given can't differ. */
+export const controlVerdict = (
+  sum: Reconciliation,
+  control: { expectedRows: number | null; expectedTivMinor: number | null },
+  currency: string,
+): ControlVerdict => {
+  const rows = { expected: control.expectedRows, read: siteRows(sum) };
+  const tiv = { expected: control.expectedTivMinor, read: siteTiv(sum) };
+  const differs = [rows, tiv].some(({ expected, read }) => expected !== null && expected !== read);
+  const given = rows.expected !== null || tiv.expected !== null;
+  const said = [
+    rows.expected !== null && counted(rows.expected, 'site'),
+    tiv.expected !== null && `${currency} ${exactAmount(tiv.expected, currency)}`,
+  ].filter(Boolean);
+  const seen = [
+    rows.expected !== null && counted(rows.read, 'site'),
+    tiv.expected !== null && `${currency} ${exactAmount(tiv.read, currency)}`,
+  ].filter(Boolean);
+  return {
+    state: !given ? 'none' : differs ? 'differs' : 'ties',
+    rows,
+    tiv,
+    sentence: differs
+      ? `Expected ${said.join(' and ')}; read ${seen.join(' and ')}.`
+      : `${said.join(' and ')} expected and read.`,
+  };
+};
