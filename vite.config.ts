@@ -12,7 +12,8 @@ export default defineConfig({
   resolve: { alias: { '#contract': at('api/contract'), '#engine': at('api/engine') } },
   worker: { format: 'es' },
   build: { outDir: at('dist/web'), emptyOutDir: true, target: 'es2023', chunkSizeWarningLimit: 1500 },
-  server: { proxy: { '/api': process.env.API_URL ?? 'http://127.0.0.1:3000' } },
+  // Not '/api': the dev server serves the client's own web/api modules from there.
+  server: { proxy: { '/api/v1': process.env.API_URL ?? 'http://127.0.0.1:3000' } },
   test: {
     reporters: ['default', at('tests/helpers/count-reporter.ts')],
     projects: [
