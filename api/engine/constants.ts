@@ -16,3 +16,15 @@ export const MOTION_TURN_DEG = 20;
 export const REACH_LIMIT = 1_000_000;
 /** Peak gust below which a site is "below the floor" [m s⁻¹]. Product rule. */
 export const GUST_FLOOR = 20;
+/** Half span of the central difference that gives the storm's motion [s]. Product rule. */
+export const MOTION_HALF_SPAN = 1800;
+/** Ambient pressure where none is given [Pa]. Product rule. */
+export const STANDARD_AMBIENT_PRESSURE = 101_000;
+/** Least pressure deficit used [Pa]. Product rule. */
+export const LEAST_PRESSURE_DEFICIT = 100;
+/** Least symmetric 10-min wind left after the motion is taken out [m s⁻¹]. Product rule. */
+export const LEAST_SYMMETRIC_WIND = 5;
+/** Height of every wind of the chain above ground [m]. */
+export const REFERENCE_HEIGHT = 10;
+/** Largest gust a result may hold [m s⁻¹]. Product rule: beyond it the input is at fault. */
+export const GUST_CEILING = 120;

@@ -1,0 +1,131 @@
+import { AMPLITUDE_NODES, DRAW_COUNT, PHASE_COUNT, startingPhase } from '../ring/draws.ts';
+import type { Passage } from './passage.ts';
+
+const NODE_COUNT = AMPLITUDE_NODES.length;
+const NODES = Float64Array.from(AMPLITUDE_NODES);
+const WEAKEST = AMPLITUDE_NODES[0];
+const STRONGEST = AMPLITUDE_NODES[NODE_COUNT - 1]!;
+const HALF = PHASE_COUNT / 2;
+const START_COS = Float64Array.from({ length: HALF }, (_, j) => Math.cos(startingPhase(j)));
+const START_SIN = Float64Array.from({ length: HALF }, (_, j) => Math.sin(startingPhase(j)));
+
+/** Working arrays for the peaks of all draws; made once, used for many sites. */
+export type DrawWork = {
+  /** Times inside the layer, as indices into the passage. */
+  readonly inside: Int32Array;
+  /** Per phase, value at the weakest and the strongest node of the line that dominates most so far [m s⁻¹]. */
+  readonly low: Float64Array;
+  readonly high: Float64Array;
+};
+
+/**
+ * Makes the working arrays.
+ *
+ * @param stateCount Number of states of the storm.
+ * @returns The arrays.
+ */
+export function makeDrawWork(stateCount: number): DrawWork {
+  return {
+    inside: new Int32Array(stateCount),
+    low: new Float64Array(PHASE_COUNT),
+    high: new Float64Array(PHASE_COUNT),
+  };
+}
+
+/**
+ * Peak gust of a site in every draw.
+ *
+ * At a fixed time and phase the gust is a straight line in the strength of the draw. Times are taken outward from the
+ * highest plain gust, and a line that lies below one already seen at both ends of the strengths is skipped.
+ *
+ * @param passage Series of the site from followPassage.
+ * @param count   Number of times in it.
+ * @param peak    Index of the highest plain gust in it.
+ * @param work    Working arrays.
+ * @param gusts   Receives the peak per draw [m s⁻¹], shape (264,); draw = 24 times node + phase.
+ * @returns False when the layer never touches the site: every draw then equals the plain peak, bit for bit.
+ * @source Largest of max(0, F (U + a A v E C / 1.05)) over time, term by term.
+ */
+export function drawPeaks(passage: Passage, count: number, peak: number, work: DrawWork, gusts: Float64Array): boolean {
+  const { gust, crest, phaseCos, phaseSin } = passage;
+  const { inside, low, high } = work;
+  let insideCount = 0;
+  let firstAfterPeak = 0;
+  // Times without a vortex are one level line for every phase.
+  let level = 0;
+  for (let i = 0; i < count; i++) {
+    if (crest[i]! > 0) {
+      if (i < peak) firstAfterPeak = insideCount + 1;
+      inside[insideCount++] = i;
+    } else if (gust[i]! > level) level = gust[i]!;
+  }
+  if (insideCount === 0) {
+    gusts.fill(gust[peak]!);
+    return false;
+  }
+  gusts.fill(level);
+  low.fill(level);
+  high.fill(level);
+  let leastLow = level;
+  let leastHigh = level;
+  let before = firstAfterPeak - 1;
+  let after = firstAfterPeak;
+  while (before >= 0 || after < insideCount) {
+    let i: number;
+    if (before < 0 || (after < insideCount && gust[inside[after]!]! >= gust[inside[before]!]!)) i = inside[after++]!;
+    else i = inside[before--]!;
+    const g = gust[i]!;
+    const p = crest[i]!;
+    // No phase can gain more than the crest itself.
+    if (g + WEAKEST * p <= leastLow && g + STRONGEST * p <= leastHigh) continue;
+    const scale = p / 1.5;
+    const cosNow = phaseCos[i]!;
+    const sinNow = phaseSin[i]!;
+    let changed = false;
+    for (let j = 0; j < HALF; j++) {
+      // Phases j and j + 12 are opposite: the cosine changes its sign.
+      const c = cosNow * START_COS[j]! + sinNow * START_SIN[j]!;
+      const even = scale * (c * c - 0.5);
+      const odd = scale * c;
+      const slope = even + odd;
+      if (g + WEAKEST * slope > low[j]! || g + STRONGEST * slope > high[j]!) {
+        raise(gusts, j, g, slope, low, high);
+        changed = true;
+      }
+      const opposite = even - odd;
+      if (g + WEAKEST * opposite > low[j + HALF]! || g + STRONGEST * opposite > high[j + HALF]!) {
+        raise(gusts, j + HALF, g, opposite, low, high);
+        changed = true;
+      }
+    }
+    if (!changed) continue;
+    leastLow = Infinity;
+    leastHigh = Infinity;
+    for (let j = 0; j < PHASE_COUNT; j++) {
+      if (low[j]! < leastLow) leastLow = low[j]!;
+      if (high[j]! < leastHigh) leastHigh = high[j]!;
+    }
+  }
+  return true;
+}
+
+/** Lets one line compete at every node of its phase, and makes it the reference when it is higher on the whole. */
+function raise(
+  gusts: Float64Array,
+  phase: number,
+  g: number,
+  slope: number,
+  low: Float64Array,
+  high: Float64Array,
+): void {
+  for (let n = 0, d = phase; d < DRAW_COUNT; n++, d += PHASE_COUNT) {
+    const value = g + NODES[n]! * slope;
+    if (value > gusts[d]!) gusts[d] = value;
+  }
+  const atWeakest = g + WEAKEST * slope;
+  const atStrongest = g + STRONGEST * slope;
+  if (atWeakest + atStrongest > low[phase]! + high[phase]!) {
+    low[phase] = atWeakest;
+    high[phase] = atStrongest;
+  }
+}

@@ -1,0 +1,285 @@
+import { EARTH_RADIUS } from '../constants.ts';
+import { radialShape } from '../ring/draws.ts';
+import { DRAG_LINE, DRAG_RANGE, roughnessOfDrag } from '../terrain/drag.ts';
+import { roughnessFactor } from '../terrain/roughness.ts';
+import { STATE_SIZE, type Storm } from '../track/storm.ts';
+import { radians } from '../units.ts';
+import { INNER_FACTOR, INNER_RADIUS, OUTER_FACTOR, OUTER_RADIUS } from '../winds/surface-factor.ts';
+import { PEAK_FACTOR, type Exposure } from './exposure.ts';
+import { DRAG_WINDS, EIGHTH_TURN, PER_SEA_FACTOR, PRESSURE_TERM, PRESSURE_TERM_RANGE } from './tables.ts';
+
+/** Working arrays for the passage of a storm over one site; made once, used for many sites. */
+export type Passage = {
+  /** States of the storm at which the site is looked at, ascending, shape (states,). */
+  readonly state: Int32Array;
+  /** Plain gust at each of them [m s⁻¹]. */
+  readonly gust: Float64Array;
+  /** Open-sea wind, and where it blows TO: eastward and northward part [m s⁻¹]. */
+  readonly seaU: Float64Array;
+  readonly seaV: Float64Array;
+  /** Gust over open-sea wind, and 10-min mean over open-sea wind (without hills) [1]. */
+  readonly factor: Float64Array;
+  readonly meanFactor: Float64Array;
+  /** Gust added by a vortex crest per unit of the drawn factor [m s⁻¹]; 0 outside the layer. */
+  readonly crest: Float64Array;
+  /** Cosine and sine of m (azimuth - pattern angle) [1]; only where crest > 0. */
+  readonly phaseCos: Float64Array;
+  readonly phaseSin: Float64Array;
+  /** Which outer times are refined around, shape (outer times,). */
+  readonly isNear: Uint8Array;
+};
+
+/**
+ * Makes the working arrays for a storm.
+ *
+ * @param storm The storm.
+ * @returns Arrays long enough for every state.
+ */
+export function makePassage(storm: Storm): Passage {
+  const n = storm.stateCount;
+  return {
+    state: new Int32Array(n),
+    gust: new Float64Array(n),
+    seaU: new Float64Array(n),
+    seaV: new Float64Array(n),
+    factor: new Float64Array(n),
+    meanFactor: new Float64Array(n),
+    crest: new Float64Array(n),
+    phaseCos: new Float64Array(n),
+    phaseSin: new Float64Array(n),
+    isNear: new Uint8Array(storm.outer.length),
+  };
+}
+
+/**
+ * Winds and gusts at one site at every time the chain looks at: outer times, and inner times next to outer ones at which
+ * the centre is near.
+ *
+ * Directions come from differences of unit vectors, so there is no trigonometry and no loss of digits near the centre;
+ * powers and arcs come from tables good to 1e-11.
+ *
+ * @param storm     The storm.
+ * @param latitude  Latitude of the site [deg].
+ * @param longitude Longitude of the site [deg].
+ * @param exposure  Ground around the site.
+ * @param passage   Receives the series.
+ * @returns Number of times written.
+ * @source The chain as footprint/wind-at.ts states it; METHODS of each step are in winds, terrain and gust.
+ */
+export function followPassage(
+  storm: Storm,
+  latitude: number,
+  longitude: number,
+  exposure: Exposure,
+  passage: Passage,
+): number {
+  const { states, outer } = storm;
+  const { state, isNear } = passage;
+  const phi = radians(latitude);
+  const lambda = radians(longitude);
+  const px = Math.cos(phi) * Math.cos(lambda);
+  const py = Math.cos(phi) * Math.sin(lambda);
+  const pz = Math.sin(phi);
+  const last = outer.length - 1;
+  for (let o = 0; o <= last; o++) {
+    const at = outer[o]! * STATE_SIZE;
+    const dx = px - states[at]!;
+    const dy = py - states[at + 1]!;
+    const dz = pz - states[at + 2]!;
+    isNear[o] = dx * dx + dy * dy + dz * dz < states[at + 19]! ? 1 : 0;
+  }
+  let count = 0;
+  for (let o = 0; o <= last; o++) {
+    const first = outer[o]!;
+    state[count++] = first;
+    if (o === last || (isNear[o] === 0 && isNear[o + 1] === 0)) continue;
+    const end = outer[o + 1]!;
+    for (let k = first + 1; k < end; k++) state[count++] = k;
+  }
+  evaluate(states, storm.wavenumber ?? 0, px, py, pz, exposure, passage, count);
+  return count;
+}
+
+const SEA_FACTOR_SLOPE = (OUTER_FACTOR - INNER_FACTOR) / (OUTER_RADIUS - INNER_RADIUS);
+const COS_25 = Math.cos(radians(25));
+const SIN_25 = Math.sin(radians(25));
+const TERM_START = PRESSURE_TERM_RANGE[0];
+const TERM_END = PRESSURE_TERM_RANGE[1];
+const TERM_PER_STEP = PRESSURE_TERM.perStep;
+const TERM_NODES = PRESSURE_TERM.nodes;
+const TURN_PER_STEP = EIGHTH_TURN.perStep;
+const TURN_NODES = EIGHTH_TURN.nodes;
+const DRAG_START = DRAG_WINDS[0];
+const DRAG_END = DRAG_WINDS[1];
+const DRAG_PER_STEP = PER_SEA_FACTOR.perStep;
+const DRAG_NODES = PER_SEA_FACTOR.nodes;
+const CALM_PER_FACTOR = DRAG_NODES[0]!;
+const STORM_PER_FACTOR = 1 / roughnessFactor(roughnessOfDrag(DRAG_RANGE[1]));
+// 1 / ln(10 / z0) of the sea is sqrt(Cd) / 0.4.
+const CALM_TURBULENCE = 2.5 * Math.sqrt(DRAG_RANGE[0]);
+const STORM_TURBULENCE = 2.5 * Math.sqrt(DRAG_RANGE[1]);
+const DRAG_FLOOR = DRAG_LINE[0];
+const DRAG_SLOPE = DRAG_LINE[1];
+const PEAK = PEAK_FACTOR;
+
+function evaluate(
+  states: Float64Array,
+  wavenumber: number,
+  px: number,
+  py: number,
+  pz: number,
+  exposure: Exposure,
+  passage: Passage,
+  count: number,
+): void {
+  const { state, gust, seaU, seaV, factor, meanFactor, crest, phaseCos, phaseSin } = passage;
+  const { isAtSea, isUniform, weights, landFactor, landTurbulence, topographicFactor } = exposure;
+  const uniformWeight = weights[0]!;
+  for (let i = 0; i < count; i++) {
+    const at = state[i]! * STATE_SIZE;
+    const dx = px - states[at]!;
+    const dy = py - states[at + 1]!;
+    const dz = pz - states[at + 2]!;
+    const east = dx * states[at + 3]! + dy * states[at + 4]!;
+    const north = dx * states[at + 5]! + dy * states[at + 6]! + dz * states[at + 7]!;
+    const chord2 = dx * dx + dy * dy + dz * dz;
+    const chord = Math.sqrt(chord2);
+    // Arc of a chord: 2 asin(chord / 2), by its series where that is exact to rounding.
+    const arc =
+      chord2 < 0.04
+        ? chord *
+          (1 +
+            chord2 *
+              (1 / 24 +
+                chord2 *
+                  (3 / 640 +
+                    chord2 *
+                      (5 / 7168 + chord2 * (35 / 294912 + chord2 * (63 / 2883584 + (chord2 * 231) / 54525952))))))
+        : 2 * Math.asin(Math.min(chord / 2, 1));
+    const tangent = Math.sqrt(east * east + north * north);
+    let r = EARTH_RADIUS * arc;
+    if (r < 1) r = 1;
+    // At the very centre, and at its antipode, the bearing is taken as north.
+    const sinBearing = tangent > 0 ? east / tangent : 0;
+    const cosBearing = tangent > 0 ? north / tangent : 1;
+
+    const y = states[at + 9]! * (states[at + 8]! - Math.log(r));
+    let term: number;
+    if (y > TERM_START && y < TERM_END) {
+      const place = (y - TERM_START) * TERM_PER_STEP;
+      const node = place | 0;
+      const s = place - node;
+      const a = TERM_NODES[2 * node]!;
+      const b = TERM_NODES[2 * node + 1]!;
+      const rise = TERM_NODES[2 * node + 2]! - a;
+      const excess = b + TERM_NODES[2 * node + 3]! - 2 * rise;
+      term = a + s * (b + s * (rise - b - excess + s * excess));
+    } else {
+      term = y < 0 ? Math.exp(y - Math.exp(y)) : 0;
+    }
+    const half = states[at + 11]! * r;
+    const gradient = Math.sqrt(states[at + 10]! * term + half * half) - half;
+    const reduction =
+      r <= INNER_RADIUS
+        ? INNER_FACTOR
+        : r >= OUTER_RADIUS
+          ? OUTER_FACTOR
+          : INNER_FACTOR + (r - INNER_RADIUS) * SEA_FACTOR_SLOPE;
+    const surface = reduction * gradient;
+
+    const x = r * states[at + 15]!;
+    let cosInflow = COS_25;
+    let sinInflow = SIN_25;
+    if (x < 1.2) {
+      const angle = (x < 1 ? 10 + 10 * x : 25 * x - 5) * (Math.PI / 180);
+      const a2 = angle * angle;
+      sinInflow = angle * (1 - (a2 / 6) * (1 - (a2 / 20) * (1 - (a2 / 42) * (1 - (a2 / 72) * (1 - a2 / 110)))));
+      cosInflow = 1 - (a2 / 2) * (1 - (a2 / 12) * (1 - (a2 / 30) * (1 - (a2 / 56) * (1 - (a2 / 90) * (1 - a2 / 132)))));
+    }
+    const sign = states[at + 12]!;
+    // Vortex wind blows TOWARDS bearing - sign (90 + inflow).
+    const u = surface * (-sign * cosBearing * cosInflow - sinBearing * sinInflow) + states[at + 13]!;
+    const v = surface * (sign * sinBearing * cosInflow - cosBearing * sinInflow) + states[at + 14]!;
+    const wind = Math.sqrt(u * u + v * v);
+
+    let perSea: number;
+    let seaTurbulence: number;
+    if (wind >= DRAG_END) {
+      perSea = STORM_PER_FACTOR;
+      seaTurbulence = STORM_TURBULENCE;
+    } else if (wind <= DRAG_START) {
+      perSea = CALM_PER_FACTOR;
+      seaTurbulence = CALM_TURBULENCE;
+    } else {
+      seaTurbulence = 2.5 * Math.sqrt(DRAG_FLOOR + DRAG_SLOPE * wind);
+      const place = (wind - DRAG_START) * DRAG_PER_STEP;
+      const node = place | 0;
+      const s = place - node;
+      const a = DRAG_NODES[2 * node]!;
+      const b = DRAG_NODES[2 * node + 1]!;
+      const rise = DRAG_NODES[2 * node + 2]! - a;
+      const excess = b + DRAG_NODES[2 * node + 3]! - 2 * rise;
+      perSea = a + s * (b + s * (rise - b - excess + s * excess));
+    }
+    let mean = 1;
+    let turbulence = seaTurbulence;
+    if (!isAtSea) {
+      let weight = uniformWeight;
+      if (!isUniform) {
+        // Direction the wind comes FROM, in eighths of a turn: octant and share by symmetry, arc from the table.
+        const fromEast = -u;
+        const fromNorth = -v;
+        const absEast = fromEast < 0 ? -fromEast : fromEast;
+        const absNorth = fromNorth < 0 ? -fromNorth : fromNorth;
+        const steep = absEast > absNorth;
+        const greater = steep ? absEast : absNorth;
+        const ratio = greater > 0 ? (steep ? absNorth : absEast) / greater : 0;
+        const place = ratio * TURN_PER_STEP;
+        const node = place | 0;
+        const s = place - node;
+        const a = TURN_NODES[2 * node]!;
+        const b = TURN_NODES[2 * node + 1]!;
+        const rise = TURN_NODES[2 * node + 2]! - a;
+        const excess = b + TURN_NODES[2 * node + 3]! - 2 * rise;
+        let eighths = a + s * (b + s * (rise - b - excess + s * excess));
+        if (steep) eighths = 2 - eighths;
+        if (fromNorth < 0) eighths = 4 - eighths;
+        if (fromEast < 0) eighths = 8 - eighths;
+        const sector = eighths | 0;
+        const share = eighths - sector;
+        weight = weights[sector & 7]! * (1 - share) + weights[(sector + 1) & 7]! * share;
+      }
+      mean = 1 + weight * (landFactor * perSea - 1);
+      turbulence = seaTurbulence + weight * (landTurbulence - seaTurbulence);
+    }
+    const toGust = mean * (1 + PEAK * turbulence) * topographicFactor;
+    gust[i] = wind * toGust;
+    seaU[i] = u;
+    seaV[i] = v;
+    factor[i] = toGust;
+    meanFactor[i] = mean;
+
+    let added = 0;
+    if (x < 2) {
+      const vortexWind = states[at + 16]!;
+      if (vortexWind > 0) {
+        added = toGust * vortexWind * radialShape(x);
+        // Azimuth positive in the cyclonic sense; m times it by repeated turning.
+        const c = sinBearing;
+        const d = sign * cosBearing;
+        let re = c;
+        let im = d;
+        for (let m = 1; m < wavenumber; m++) {
+          const next = re * c - im * d;
+          im = re * d + im * c;
+          re = next;
+        }
+        const turnCos = states[at + 17]!;
+        const turnSin = states[at + 18]!;
+        phaseCos[i] = re * turnCos + im * turnSin;
+        phaseSin[i] = im * turnCos - re * turnSin;
+      }
+    }
+    crest[i] = added;
+  }
+}

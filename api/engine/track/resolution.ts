@@ -1,0 +1,112 @@
+import { LEAST_PRESSURE_DEFICIT } from '../constants.ts';
+import type { LandIndex } from '../geo/land.ts';
+import { DEFAULT_EYE_RATIO, DEFAULT_RING_WIDTH } from '../ring/stability.ts';
+import { coriolis } from '../winds/coriolis.ts';
+import { fitVortex } from '../winds/vortex-fit.ts';
+import { requireTrack, type Anchor, type EngineNotice, type ResolvedFix, type TrackFix } from './fixes.ts';
+import { hoursInlandOf, type HoursInland } from './inland.ts';
+import { resolveIntensity, type IntensityFix } from './intensity.ts';
+import { requireOptions, type ChainOptions } from './options.ts';
+import { layVortices } from './vortex-layer.ts';
+
+/** A resolved track. */
+export type TrackResolution = {
+  readonly fixes: readonly ResolvedFix[];
+  readonly wavenumber: number | null;
+  readonly hoursInland: HoursInland;
+  readonly notices: readonly EngineNotice[];
+};
+
+/**
+ * Fills what a track leaves open, settles each fix's intensity and lays the vortex ring; says what was filled and by what.
+ *
+ * @param fixes   At least two fixes at strictly increasing times.
+ * @param options Choices of the chain.
+ * @param land    Land polygons for the hours inland, null when there are none to ask.
+ * @returns Resolved fixes, number of vortices (null = layer off), hours inland as a function of time, notices.
+ * @throws {DomainError} when the track or an option is outside its range.
+ * @source Order of this chain; relations are named in each fix's `filled`.
+ */
+export function resolveFixes(
+  fixes: readonly TrackFix[],
+  options: ChainOptions,
+  land: LandIndex | null = null,
+): TrackResolution {
+  requireTrack(fixes);
+  requireOptions(options);
+  const { fixes: settled, notices } = resolveIntensity(fixes, options.intensity);
+  const hoursInland = hoursInlandOf(fixes, land);
+  const inputs = settled.map((entry, i) => ({
+    maxWind: entry.maxWind,
+    speed: entry.speed,
+    rMax: entry.rMax,
+    ringWidth: fixes[i]!.ringWidthFraction ?? DEFAULT_RING_WIDTH,
+    eyeRatio: fixes[i]!.eyeVorticityRatio ?? DEFAULT_EYE_RATIO,
+    hoursInland: hoursInland(fixes[i]!.timeS),
+    anchor: anchorOf(entry, options),
+  }));
+  const layer = layVortices(inputs, options.mesovortices);
+  const resolved = settled.map((entry, i): ResolvedFix => {
+    const given = fixes[i]!;
+    const input = inputs[i]!;
+    const own = layer.fixes[i]!;
+    const deficit = Math.max(entry.ambientPressure - entry.centralPressure, LEAST_PRESSURE_DEFICIT);
+    return {
+      timeS: given.timeS,
+      latitude: given.latitude,
+      longitude: given.longitude,
+      centralPressurePa: entry.centralPressure,
+      ambientPressurePa: entry.ambientPressure,
+      maxWindAsGivenMs: given.maxWindMs,
+      windAveragingS: given.windAveragingS,
+      reportedMaxWindMs: entry.reportedMaxWind,
+      pressureImpliedMaxWindMs: entry.impliedMaxWind,
+      maxWindMs: entry.maxWind,
+      intensitySource: entry.source,
+      radiusOfMaxWindM: entry.rMax,
+      ringWidthFraction: input.ringWidth,
+      eyeVorticityRatio: input.eyeRatio,
+      hoursInland: input.hoursInland,
+      translationMs: entry.speed,
+      headingDeg: entry.heading,
+      anchor: input.anchor,
+      anchoredMaxWindMs: own.maxWind,
+      axisymmetricMaxWindMs: own.axisymmetricMax,
+      averageVorticityPerS: own.averageVorticity,
+      shapeB: fitVortex(own.maxWind, entry.speed, entry.rMax, coriolis(given.latitude), deficit).b,
+      amplitude: own.amplitude,
+      patternRadPerS: own.pattern,
+      filled: { ...entry.filled, ...filledRing(given, land) },
+      flags: entry.flags,
+    };
+  });
+  notices.push(anchorNotice(resolved, layer.wavenumber));
+  if (options.mesovortices && layer.wavenumber === null) {
+    notices.push({ code: 'vortex-layer-off', text: 'No ring of this storm grows vortices: enhanced equals plain.' });
+  }
+  return { fixes: resolved, wavenumber: layer.wavenumber, hoursInland, notices };
+}
+
+function anchorOf({ source }: IntensityFix, { anchor }: ChainOptions): Anchor {
+  if (anchor !== 'auto') return anchor;
+  return source === 'wind' ? 'peak' : 'mean';
+}
+
+function filledRing(given: TrackFix, land: LandIndex | null): Record<string, string> {
+  const filled: Record<string, string> = {};
+  if (given.ringWidthFraction === null) filled.ringWidthFraction = `default ${DEFAULT_RING_WIDTH}`;
+  if (given.eyeVorticityRatio === null) filled.eyeVorticityRatio = `default ${DEFAULT_EYE_RATIO}`;
+  if (given.hoursInland === null) filled.hoursInland = land ? 'land polygons' : 'none: 0';
+  return filled;
+}
+
+function anchorNotice(fixes: readonly ResolvedFix[], wavenumber: number | null): EngineNotice {
+  const peak = fixes.filter(({ anchor }) => anchor === 'peak').length;
+  const meaning = {
+    mean: 'Anchor "mean": the maximum wind is taken as the mean around the ring, vortex peaks exceed it.',
+    peak: 'Anchor "peak": the maximum wind is taken to hold vortex peaks already and is divided accordingly.',
+  };
+  const mixed = `Anchor "peak" at ${peak} of ${fixes.length} fixes (maximum wind divided), "mean" at the others.`;
+  const text = peak === 0 ? meaning.mean : peak === fixes.length ? meaning.peak : mixed;
+  return { code: 'anchor', text: wavenumber === null ? `${text} The vortex layer is off.` : text };
+}

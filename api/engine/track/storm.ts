@@ -1,0 +1,196 @@
+import { AIR_DENSITY, EARTH_RADIUS, LEAST_PRESSURE_DEFICIT, ONE_MINUTE_OVER_TEN } from '../constants.ts';
+import { unitVector } from '../geo/geodesy.ts';
+import type { LandIndex } from '../geo/land.ts';
+import { inlandFade } from '../ring/amplitude.ts';
+import { VORTEX_REACH } from '../ring/draws.ts';
+import { radians } from '../units.ts';
+import { motionWind } from '../winds/asymmetry.ts';
+import { coriolis, hemisphereSign } from '../winds/coriolis.ts';
+import { fitVortex } from '../winds/vortex-fit.ts';
+import type { EngineNotice, ResolvedFix, TrackFix } from './fixes.ts';
+import { motionAt } from './motion.ts';
+import type { ChainOptions } from './options.ts';
+import { legAt, positionAt } from './position.ts';
+import { resolveFixes } from './resolution.ts';
+import { timeGrid } from './time-grid.ts';
+
+/** Numbers per state in `Storm.states`; the offsets are in STATE. */
+export const STATE_SIZE = 28;
+/** Offsets of a state's quantities, in the order in which the kernel reads them. */
+export const STATE = {
+  /** Unit vector of the centre, and of east and north there [1]. */
+  x: 0,
+  y: 1,
+  z: 2,
+  eastX: 3,
+  eastY: 4,
+  northX: 5,
+  northY: 6,
+  northZ: 7,
+  /** ln of the radius of maximum wind [ln m]. */
+  logRMax: 8,
+  /** Holland B [1]. */
+  b: 9,
+  /** B deficit / density [m² s⁻²]. */
+  energy: 10,
+  /** Half the Coriolis parameter [s⁻¹]. */
+  halfF: 11,
+  /** 1 north, -1 south [1]. */
+  sign: 12,
+  /** Wind added by the motion, eastward and northward [m s⁻¹]. */
+  motionU: 13,
+  motionV: 14,
+  /** One over the radius of maximum wind [m⁻¹]. */
+  perRMax: 15,
+  /** Vortex amplitude times axisymmetric maximum, as a 10-min wind [m s⁻¹]. */
+  vortexWind: 16,
+  /** Cosine and sine of wavenumber times pattern angle [1]. */
+  patternCos: 17,
+  patternSin: 18,
+  /** Squared chord within which the neighbouring intervals are refined [1]. */
+  nearChord2: 19,
+  timeS: 20,
+  latitude: 21,
+  longitude: 22,
+  rMax: 23,
+  deficit: 24,
+  speed: 25,
+  heading: 26,
+  patternAngle: 27,
+} as const;
+
+/** A storm ready to be scored against sites: plain data that can be sent to another thread. */
+export type Storm = {
+  readonly fixes: readonly ResolvedFix[];
+  readonly options: ChainOptions;
+  readonly notices: readonly EngineNotice[];
+  /** Number of vortices on the ring, null when the layer is off. */
+  readonly wavenumber: number | null;
+  readonly stateCount: number;
+  /** States at all outer and inner times, in order of time, shape (stateCount, STATE_SIZE) row-major. */
+  readonly states: Float64Array;
+  /** Indices of the outer times among the states, shape (outer times,). */
+  readonly outer: Int32Array;
+};
+
+/** A pattern this fast needs the finest step near the centre [rad s⁻¹]. Product rule. */
+const FAST_PATTERN = 0.008;
+const FAST_STEP = 20;
+const LEAST_NEAR_RADIUS = 60_000;
+
+/**
+ * Resolves a track and lays out everything about the storm that does not depend on a site.
+ *
+ * @param fixes   At least two fixes at strictly increasing times.
+ * @param options Choices of the chain.
+ * @param land    Land polygons for the hours inland, null when there are none to ask.
+ * @returns The storm.
+ * @throws {DomainError} when the track or an option is outside its range, or the track has too many steps.
+ * @source Order of this chain.
+ */
+export function prepareStorm(fixes: readonly TrackFix[], options: ChainOptions, land: LandIndex | null): Storm {
+  const resolution = resolveFixes(fixes, options, land);
+  const { fixes: resolved, wavenumber } = resolution;
+  const isFast = resolved.some(({ patternRadPerS }) => (wavenumber ?? 0) * (patternRadPerS ?? 0) > FAST_PATTERN);
+  const grid = timeGrid(
+    resolved[0]!.timeS,
+    resolved[resolved.length - 1]!.timeS,
+    options.timeStepS,
+    isFast ? Math.min(options.innerTimeStepS, FAST_STEP) : options.innerTimeStepS,
+  );
+  const stateCount = grid.timeS.length;
+  const states = new Float64Array(stateCount * STATE_SIZE);
+  const angles = patternAngles(resolved);
+  for (let k = 0; k < stateCount; k++) {
+    const timeS = grid.timeS[k]!;
+    writeState(states, k * STATE_SIZE, resolved, timeS, resolution.hoursInland(timeS), wavenumber, angles);
+  }
+  return { fixes: resolved, options, notices: resolution.notices, wavenumber, stateCount, states, outer: grid.outer };
+}
+
+function writeState(
+  states: Float64Array,
+  at: number,
+  fixes: readonly ResolvedFix[],
+  timeS: number,
+  hoursInland: number,
+  wavenumber: number | null,
+  angles: readonly number[],
+): void {
+  const i = legAt(fixes, timeS);
+  const a = fixes[i]!;
+  const b = fixes[i + 1]!;
+  const share = (timeS - a.timeS) / (b.timeS - a.timeS);
+  const mix = (from: number, to: number): number => from + share * (to - from);
+  const place = positionAt(fixes, timeS);
+  const { speed, heading } = motionAt(fixes, timeS);
+  const sign = hemisphereSign(place.latitude);
+  const rMax = mix(a.radiusOfMaxWindM, b.radiusOfMaxWindM);
+  const ambient = mix(a.ambientPressurePa, b.ambientPressurePa);
+  const central = mix(a.centralPressurePa, b.centralPressurePa);
+  const vortex = fitVortex(
+    mix(a.anchoredMaxWindMs, b.anchoredMaxWindMs),
+    speed,
+    rMax,
+    coriolis(place.latitude),
+    Math.max(ambient - central, LEAST_PRESSURE_DEFICIT),
+  );
+  const wind = motionWind(speed, heading, sign);
+  const [x, y, z] = unitVector(place);
+  const lambda = radians(place.longitude);
+  const sinLambda = Math.sin(lambda);
+  const cosLambda = Math.cos(lambda);
+  const nearAngle = Math.min(Math.max(VORTEX_REACH * rMax, LEAST_NEAR_RADIUS) / EARTH_RADIUS, Math.PI);
+  const vortexMax = mix(a.axisymmetricMaxWindMs, b.axisymmetricMaxWindMs);
+  const amplitude = wavenumber === null ? 0 : mix(a.amplitude, b.amplitude) * inlandFade(hoursInland);
+  const patternAngle = wavenumber === null ? 0 : patternAngleAt(fixes, angles, i, timeS);
+  const turned = (wavenumber ?? 0) * patternAngle;
+  states[at + STATE.x] = x;
+  states[at + STATE.y] = y;
+  states[at + STATE.z] = z;
+  states[at + STATE.eastX] = -sinLambda;
+  states[at + STATE.eastY] = cosLambda;
+  states[at + STATE.northX] = -z * cosLambda;
+  states[at + STATE.northY] = -z * sinLambda;
+  states[at + STATE.northZ] = Math.cos(radians(place.latitude));
+  states[at + STATE.logRMax] = Math.log(rMax);
+  states[at + STATE.b] = vortex.b;
+  states[at + STATE.energy] = (vortex.b * vortex.deficit) / AIR_DENSITY;
+  states[at + STATE.halfF] = vortex.f / 2;
+  states[at + STATE.sign] = sign;
+  states[at + STATE.motionU] = wind.u;
+  states[at + STATE.motionV] = wind.v;
+  states[at + STATE.perRMax] = 1 / rMax;
+  states[at + STATE.vortexWind] = (amplitude * vortexMax) / ONE_MINUTE_OVER_TEN;
+  states[at + STATE.patternCos] = Math.cos(turned);
+  states[at + STATE.patternSin] = Math.sin(turned);
+  states[at + STATE.nearChord2] = 4 * Math.sin(nearAngle / 2) ** 2;
+  states[at + STATE.timeS] = timeS;
+  states[at + STATE.latitude] = place.latitude;
+  states[at + STATE.longitude] = place.longitude;
+  states[at + STATE.rMax] = rMax;
+  states[at + STATE.deficit] = vortex.deficit;
+  states[at + STATE.speed] = speed;
+  states[at + STATE.heading] = heading;
+  states[at + STATE.patternAngle] = patternAngle;
+}
+
+/** Angle turned by the pattern up to each fix [rad]: the exact integral of a rate that is linear between fixes. */
+function patternAngles(fixes: readonly ResolvedFix[]): number[] {
+  const angles = [0];
+  for (let i = 0; i + 1 < fixes.length; i++) {
+    const a = fixes[i]!;
+    const b = fixes[i + 1]!;
+    const mean = ((a.patternRadPerS ?? 0) + (b.patternRadPerS ?? 0)) / 2;
+    angles.push(angles[i]! + mean * (b.timeS - a.timeS));
+  }
+  return angles;
+}
+
+function patternAngleAt(fixes: readonly ResolvedFix[], angles: readonly number[], i: number, timeS: number): number {
+  const from = fixes[i]!.patternRadPerS ?? 0;
+  const to = fixes[i + 1]!.patternRadPerS ?? 0;
+  const passed = timeS - fixes[i]!.timeS;
+  const now = from + ((to - from) * passed) / (fixes[i + 1]!.timeS - fixes[i]!.timeS);
+  return angles[i]! + 0.5 * (from + now) * passed;
+}
