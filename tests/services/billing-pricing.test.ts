@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { priceRun, settleRun, type Tariff } from '../../api/features/billing/pricing.ts';
+import { priceRun, settleRun } from '../../api/features/billing/pricing.ts';
+import type { Tariff } from '../../api/ports/billing-desk.ts';
 
 const TARIFF: Tariff = {
   version: 1,

@@ -1,35 +1,8 @@
-/** A price list in force. Unit price and tax rate are exact decimals as text, money is minor units. */
-export type Tariff = {
-  version: number;
-  /** Price of one site–scenario in currency units, for example "0.004000". */
-  unitPrice: string;
-  minimumMinor: number;
-  taxLabel: string;
-  /** Share of the net, for example "0.070000". */
-  taxRate: string;
-  currency: string;
-  quoteHours: number;
-};
-
-export type Price = {
-  units: number;
-  minimumApplied: boolean;
-  netMinor: number;
-  taxMinor: number;
-  grossMinor: number;
-};
+import type { Outcome, Price, Tariff } from '../../ports/billing-desk.ts';
 
 export type PriceOptions = {
   /** A failure of ours waives the minimum for the whole run. */
   minimumWaived?: boolean;
-};
-
-/** How a run ended, as the price sees it. */
-export type Outcome = {
-  /** Site–scenarios within reach in tracks that were completed. */
-  units: number;
-  tracksCompleted: number;
-  tracksFailed: number;
 };
 
 const MINOR_PER_UNIT = 100n;

@@ -78,7 +78,7 @@ const span = (
 });
 const SPANS = [
   span('maxWindMs', 'maximum wind', 0, 110, (ms) => `${plain(ms)} m/s`),
-  span('radiusOfMaxWindM', 'radius of maximum wind', 3_000, 300_000, (m) => `${plain(m / 1000)} km`),
+  span('radiusOfMaxWindM', 'radius of maximum wind', 3_000, 1_000_000, (m) => `${plain(m / 1000)} km`),
   span('ringWidthFraction', 'ring width', 0.1, 0.45, (share) => plain(share, 3)),
   span('eyeVorticityRatio', 'eye vorticity ratio', 0, 0.6, (share) => plain(share, 3)),
   span('hoursInland', 'hours inland', 0, 240, (hours) => `${plain(hours)} h`),

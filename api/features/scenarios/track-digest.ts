@@ -1,0 +1,30 @@
+import { createHash } from 'node:crypto';
+import type { Track } from '#contract/scenarios.ts';
+
+/**
+ * Digest of what a track says: its fixes and declarations in a fixed order of fields.
+ *
+ * The name of the scenario isn't part of it, so the same track under another name is recognised.
+ */
+export const trackDigest = ({ fixes, declarations }: Track): string => {
+  const canonical = [
+    'track-1',
+    declarations.windAveragingS,
+    declarations.source,
+    declarations.asOf,
+    fixes.map((fix) => [
+      new Date(fix.time).toISOString(),
+      fix.latitude,
+      fix.longitude,
+      fix.centralPressureHpa,
+      fix.ambientPressureHpa,
+      fix.maxWindMs,
+      fix.radiusOfMaxWindM,
+      fix.radius64KtM,
+      fix.ringWidthFraction,
+      fix.eyeVorticityRatio,
+      fix.hoursInland,
+    ]),
+  ];
+  return createHash('sha256').update(JSON.stringify(canonical)).digest('hex');
+};
