@@ -26,21 +26,50 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
     likely: 'contract|contract no|certificate|cert no|slip',
     guess: 'policy',
   },
-  latitude: { sure: 'latitude|lat|lat dd|latitude dd|latitude degrees|lat deg|gps lat', likely: 'y|y coordinate|ycoord|lat y|latitud', guess: 'latitude' },
-  longitude: { sure: 'longitude|lon|long|lng|lon dd|longitude dd|longitude degrees|lon deg|gps lon|gps long', likely: 'x|x coordinate|xcoord|lon x|longitud', guess: 'longitude' },
+  latitude: {
+    sure: 'latitude|lat|lat dd|latitude dd|latitude degrees|lat deg|gps lat',
+    likely: 'y|y coordinate|ycoord|lat y|latitud',
+    guess: 'latitude',
+  },
+  longitude: {
+    sure: 'longitude|lon|long|lng|lon dd|longitude dd|longitude degrees|lon deg|gps lon|gps long',
+    likely: 'x|x coordinate|xcoord|lon x|longitud',
+    guess: 'longitude',
+  },
   location_quality: {
     sure: 'location quality|geocoding quality|geocode quality|geo quality|geo resolution|geocode resolution',
     likely: 'quality|geocode level|resolution|match level|geo match|geocode|accuracy|match type',
     guess: 'geoco',
   },
-  street: { sure: 'street|street address|address|address 1|address line 1|street name|addr|site address', likely: 'road|location address|addr1', guess: 'address' },
-  town: { sure: 'town|city|town city|city name', likely: 'municipality|locality|suburb|place|community', guess: 'city' },
-  region: { sure: 'region|state|state code|province|state province', likely: 'county|parish|prefecture|territory|district|area', guess: 'state' },
-  postcode: { sure: 'postcode|post code|postal code|zip|zip code|zipcode|zip5', likely: 'postal|pin code|pincode|plz', guess: 'zip' },
-  country: { sure: 'country|country code|country iso|iso country|country name', likely: 'nation|iso2|iso3|ctry|cntry', guess: 'country' },
+  street: {
+    sure: 'street|street address|address|address 1|address line 1|street name|addr|site address',
+    likely: 'road|location address|addr1',
+    guess: 'address',
+  },
+  town: {
+    sure: 'town|city|town city|city name',
+    likely: 'municipality|locality|suburb|place|community',
+    guess: 'city',
+  },
+  region: {
+    sure: 'region|state|state code|province|state province',
+    likely: 'county|parish|prefecture|territory|district|area',
+    guess: 'state',
+  },
+  postcode: {
+    sure: 'postcode|post code|postal code|zip|zip code|zipcode|zip5',
+    likely: 'postal|pin code|pincode|plz',
+    guess: 'zip',
+  },
+  country: {
+    sure: 'country|country code|country iso|iso country|country name',
+    likely: 'nation|iso2|iso3|ctry|cntry',
+    guess: 'country',
+  },
   building_value: {
     sure: 'building value|building|buildings|bldg|bldg value|building rc|building replacement cost|building sum insured|building si|bldg tiv|building tiv|building limit value|building replacement value',
-    likely: 'structure|structure value|real property|replacement cost|rcv|dwelling value|coverage a|cov a|property value|building amount|replacement value',
+    likely:
+      'structure|structure value|real property|replacement cost|rcv|dwelling value|coverage a|cov a|property value|building amount|replacement value',
     guess: 'building|bldg|structure',
   },
   other_structures_value: {
@@ -50,12 +79,14 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
   },
   contents_value: {
     sure: 'contents value|contents|content|contents sum insured|contents si|contents tiv|content value',
-    likely: 'personal property|bpp|stock|equipment|inventory|coverage c|cov c|machinery|plant and machinery|stock value',
+    likely:
+      'personal property|bpp|stock|equipment|inventory|coverage c|cov c|machinery|plant and machinery|stock value',
     guess: 'content',
   },
   time_element_value: {
     sure: 'time element value|time element|business interruption|business interruption value|bi|bi value|bi tiv|business income',
-    likely: 'loss of rent|rent|rental income|rents|ale|additional living expense|loss of use|coverage d|cov d|extra expense|bi ee|revenue',
+    likely:
+      'loss of rent|rent|rental income|rents|ale|additional living expense|loss of use|coverage d|cov d|extra expense|bi ee|revenue',
     guess: 'interruption|timeelement|income',
   },
   total_value: {
@@ -74,17 +105,42 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
     likely: 'use|usage|building use|property type|occupation|occ code|trade',
     guess: 'occupan',
   },
-  year_built: { sure: 'year built|yr built|yearbuilt|built|year of construction|construction year', likely: 'year|yr|age year|yob|date built', guess: 'yearb|yrblt' },
-  storeys: { sure: 'storeys|stories|number of storeys|number of stories|no of stories|no storeys|num stories|# stories|storys|no of storeys', likely: 'floors|number of floors|no of floors|num floors|height storeys|levels', guess: 'stories|storey' },
-  terrain: { sure: 'terrain|terrain class|exposure category|exposure class|terrain category|wind exposure', likely: 'roughness|surroundings|exposure|terrain type|surface', guess: 'terrain' },
-  deductible_kind: { sure: 'deductible kind|deductible type|ded type|deductible basis|ded basis|ded kind|wind ded type|deductible code', likely: 'ded code|wind deductible type|deductible unit', guess: 'dedtype|deductibletype' },
+  year_built: {
+    sure: 'year built|yr built|yearbuilt|built|year of construction|construction year',
+    likely: 'year|yr|age year|yob|date built',
+    guess: 'yearb|yrblt',
+  },
+  storeys: {
+    sure: 'storeys|stories|number of storeys|number of stories|no of stories|no storeys|num stories|# stories|storys|no of storeys',
+    likely: 'floors|number of floors|no of floors|num floors|height storeys|levels',
+    guess: 'stories|storey',
+  },
+  terrain: {
+    sure: 'terrain|terrain class|exposure category|exposure class|terrain category|wind exposure',
+    likely: 'roughness|surroundings|exposure|terrain type|surface',
+    guess: 'terrain',
+  },
+  deductible_kind: {
+    sure: 'deductible kind|deductible type|ded type|deductible basis|ded basis|ded kind|wind ded type|deductible code',
+    likely: 'ded code|wind deductible type|deductible unit',
+    guess: 'dedtype|deductibletype',
+  },
   deductible_value: {
     sure: 'deductible value|deductible|ded|wind deductible|wind ded|deductible amount|ded amount|ded value|hurricane deductible|named storm deductible|site deductible',
-    likely: 'excess|retention|wind storm deductible|windstorm deductible|hurricane ded|ns ded|location deductible|loc ded|ded amt',
+    likely:
+      'excess|retention|wind storm deductible|windstorm deductible|hurricane ded|ns ded|location deductible|loc ded|ded amt',
     guess: 'deductible',
   },
-  site_limit: { sure: 'site limit|limit|location limit|loc limit|limit of liability|site limit value', likely: 'policy limit per site|limit amount|sublimit|sub limit|loss limit', guess: 'limit' },
-  line_of_business: { sure: 'line of business|lob|business line|class of business', likely: 'line|segment|product|class|division', guess: 'lineofbus' },
+  site_limit: {
+    sure: 'site limit|limit|location limit|loc limit|limit of liability|site limit value',
+    likely: 'policy limit per site|limit amount|sublimit|sub limit|loss limit',
+    guess: 'limit',
+  },
+  line_of_business: {
+    sure: 'line of business|lob|business line|class of business',
+    likely: 'line|segment|product|class|division',
+    guess: 'lineofbus',
+  },
 };
 
 type Known = { field: SiteField; confidence: z.infer<typeof Confidence> };
@@ -108,7 +164,9 @@ function suggestionFor(header: string): Known | null {
   if (!whole) return null;
   const known = exact.get(whole);
   if (known) return known;
-  const stripped = bare(header.replace(/\([^)]*\)|\[[^\]]*\]/g, ' ').replace(/\b(?:usd|eur|gbp|aud|cad|us\$)\b|[$€£]/gi, ' '));
+  const stripped = bare(
+    header.replace(/\([^)]*\)|\[[^\]]*\]/g, ' ').replace(/\b(?:usd|eur|gbp|aud|cad|us\$)\b|[$€£]/gi, ' '),
+  );
   const withoutUnit = exact.get(stripped);
   if (withoutUnit) return { field: withoutUnit.field, confidence: 'likely' };
   const hint = hints.find(({ word }) => whole.includes(word));
@@ -135,7 +193,9 @@ export function suggestColumns(headers: readonly string[]): (Known | null)[] {
 }
 
 /** How many headers of a line we know outright or nearly; a line of two or more is a header row. */
-export const knownHeaders = (cells: readonly string[]): number => cells.filter((cell) => exact.has(bare(cell)) || suggestionFor(cell)?.confidence === 'likely').length;
+export const knownHeaders = (cells: readonly string[]): number =>
+  cells.filter((cell) => exact.has(bare(cell)) || suggestionFor(cell)?.confidence === 'likely').length;
 
 /** Whether a header says that its amounts stand in thousands. */
-export const saysThousands = (header: string): boolean => /(?:^|[^0-9,.])['’]?000s?\b|\(k\)|\bthousands?\b|\bin k\b|[$€£]k\b/i.test(header);
+export const saysThousands = (header: string): boolean =>
+  /(?:^|[^0-9,.])['’]?000s?\b|\(k\)|\bthousands?\b|\bin k\b|[$€£]k\b/i.test(header);

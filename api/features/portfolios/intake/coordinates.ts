@@ -1,14 +1,20 @@
 import { readDecimal, type DecimalSign } from './numbers.ts';
 
 export type Coordinate =
-  { kind: 'blank' } | { kind: 'unreadable' } | { kind: 'degrees'; degrees: number; decimals: number; sexagesimal: boolean };
+  | { kind: 'blank' }
+  | { kind: 'unreadable' }
+  | { kind: 'degrees'; degrees: number; decimals: number; sexagesimal: boolean };
 
 const PARTS =
   /^([NSEW])?\s*([-−+])?\s*(\d{1,3})\s*(?:°|º|d|deg|\s)\s*(\d{1,2}(?:[.,]\d+)?)\s*(?:['′’m]\s*|\s+|$)(?:(\d{1,2}(?:[.,]\d+)?)\s*(?:["″”s]|''|′′)?)?\s*([NSEW])?$/i;
 const LETTERED = /^([NSEW])?\s*([-−+]?\d+(?:[.,]\d+)?)\s*°?\s*([NSEW])?$/i;
 
 /** Reads decimal degrees, degrees with a hemisphere letter, or degrees, minutes and seconds; null letters and signs may not contradict. */
-export function readCoordinate(text: string | undefined, axis: 'latitude' | 'longitude', decimal: DecimalSign): Coordinate {
+export function readCoordinate(
+  text: string | undefined,
+  axis: 'latitude' | 'longitude',
+  decimal: DecimalSign,
+): Coordinate {
   const trimmed = (text ?? '').trim();
   if (/^(?:|-|n\/?a|null|none)$/i.test(trimmed)) return { kind: 'blank' };
   const plain = readDecimal(trimmed, decimal);
@@ -23,7 +29,9 @@ export function readCoordinate(text: string | undefined, axis: 'latitude' | 'lon
     if (value === null || letter === undefined) return { kind: 'unreadable' };
     const signed = withHemisphere(value, value < 0 || /^[-−]/.test(lettered[2]!), letter, axis);
     const decimals = /[.,](\d+)$/.exec(lettered[2]!)?.[1]?.length ?? 0;
-    return signed === null ? { kind: 'unreadable' } : { kind: 'degrees', degrees: signed, decimals, sexagesimal: false };
+    return signed === null
+      ? { kind: 'unreadable' }
+      : { kind: 'degrees', degrees: signed, decimals, sexagesimal: false };
   }
   const parts = PARTS.exec(trimmed);
   if (!parts) return { kind: 'unreadable' };
@@ -43,7 +51,12 @@ function oneLetter(before: string | undefined, after: string | undefined): strin
   return (before ?? after)?.toUpperCase() ?? null;
 }
 
-function withHemisphere(size: number, minus: boolean, letter: string | null, axis: 'latitude' | 'longitude'): number | null {
+function withHemisphere(
+  size: number,
+  minus: boolean,
+  letter: string | null,
+  axis: 'latitude' | 'longitude',
+): number | null {
   if (letter === null) return minus ? -Math.abs(size) : size;
   if (minus || !(axis === 'latitude' ? 'NS' : 'EW').includes(letter)) return null;
   return letter === 'S' || letter === 'W' ? -size : size;

@@ -145,7 +145,8 @@ for (const [code, alpha3, names, west, south, east, north] of COUNTRIES) {
 }
 
 /** The country a cell names by alpha-2, alpha-3 or name; null for blank and for countries not listed here. */
-export const countryNamed = (text: string | undefined): Country | null => byName.get(plain(text ?? '')) ?? null;
+export const countryNamed = (text: string | undefined): Country | null =>
+  text === undefined ? null : (byCode.get(text) ?? byName.get(plain(text)) ?? null);
 
 const inBox = (country: Country, latitude: number, longitude: number): boolean => {
   if (latitude < country.south - MARGIN_DEG || latitude > country.north + MARGIN_DEG) return false;
@@ -153,6 +154,12 @@ const inBox = (country: Country, latitude: number, longitude: number): boolean =
   const east = country.east + MARGIN_DEG;
   return west <= east ? longitude >= west && longitude <= east : longitude >= west || longitude <= east;
 };
+
+/** A country's name as it stands in a sentence. */
+export const inSentence = ({ name }: Country): string =>
+  /^(?:United|Bahamas|Philippines|Netherlands|Dominican|Maldives|Comoros|Seychelles|US |British|.* Islands)/.test(name)
+    ? `the ${name}`
+    : name;
 
 /** Whether a point can lie in a country or in the islands usually listed under it. */
 export const canLieIn = (country: Country, latitude: number, longitude: number): boolean =>

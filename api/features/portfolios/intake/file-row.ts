@@ -2,7 +2,9 @@ import type { z } from 'zod';
 import type { Fix, IntakeMessage, LocationQuality, SiteField, Terrain } from '#contract/portfolios.ts';
 import { readCoordinate, type Coordinate } from './coordinates.ts';
 import { countryNamed, type Country } from './countries.ts';
+import { slipOf, type Box, type Slip } from './home.ts';
 import { readAmount, type Amount, type DecimalSign } from './numbers.ts';
+import { readDeductible, readLimit, type Deductible } from './terms.ts';
 import { constructionNamed, occupancyNamed, qualityNamed, terrainNamed } from './words.ts';
 
 export type Quality = z.infer<typeof LocationQuality>;
@@ -28,14 +30,6 @@ export interface Correction {
   reason: string;
 }
 
-/** A box on the globe; longitudes run east from `west`, which may pass the date line. */
-export interface Box {
-  south: number;
-  north: number;
-  west: number;
-  east: number;
-}
-
 /** What the checks know of the file as a whole; kept with the edition so that a corrected row is judged the same way. */
 export interface FileFacts {
   currency: string;
@@ -58,7 +52,12 @@ export interface Context extends FileFacts {
   offshoreM: (latitude: number, longitude: number) => number;
 }
 
-export const VALUE_FIELDS = ['building_value', 'other_structures_value', 'contents_value', 'time_element_value'] as const;
+export const VALUE_FIELDS = [
+  'building_value',
+  'other_structures_value',
+  'contents_value',
+  'time_element_value',
+] as const;
 export type ValueField = (typeof VALUE_FIELDS)[number];
 
 /** A row as we read it, corrections applied: numbers where the file has words. */
@@ -78,12 +77,19 @@ export interface SiteRow extends FileRow {
   occupancy: string | null;
   terrain: TerrainClass | null;
   claimedQuality: Quality;
+  deductible: Deductible;
+  limit: { minor: number | null; readable: boolean };
+  /** What explains coordinates that can't be right as they stand. */
+  slip: Slip;
   corrections: readonly Correction[];
 }
 
 const scaled = (amount: Amount, scale: number): Amount =>
-  'minor' in amount ? { ...amount, minor: amount.minor * scale } : amount;
+  scale !== 1 && 'minor' in amount ? { ...amount, minor: amount.minor * scale } : amount;
 const counted = (amount: Amount): number => (amount.kind === 'amount' ? amount.minor : 0);
+
+/** The currency a row states, in capitals; empty when it states none. */
+export const currencyOf = (received: Received): string => received.currency?.trim().toUpperCase() ?? '';
 
 /** Minor units of the values that can be read and aren't negative; what a row counts for in every sum. */
 export function amountsOf(received: Received, facts: Pick<FileFacts, 'decimal' | 'scale' | 'currency'>) {
@@ -97,7 +103,7 @@ export function amountsOf(received: Received, facts: Pick<FileFacts, 'decimal' |
   const total = read('total_value');
   const totalOnly = counted(total) > 0 && VALUE_FIELDS.every((field) => values[field].kind === 'blank');
   if (totalOnly) values.building_value = total;
-  const stated = received.currency?.trim().toUpperCase() ?? '';
+  const stated = currencyOf(received);
   const otherCurrency = stated && stated !== facts.currency ? stated : null;
   const tivMinor = otherCurrency ? 0 : VALUE_FIELDS.reduce((sum, field) => sum + counted(values[field]), 0);
   return { values, total, totalOnly, otherCurrency, tivMinor };
@@ -123,17 +129,31 @@ export function readSite(row: FileRow, facts: FileFacts, corrections: readonly C
   const construction = received.construction === undefined ? null : constructionNamed(received.construction);
   const occupancy = received.occupancy === undefined ? null : occupancyNamed(received.occupancy);
   const terrain = received.terrain === undefined ? null : terrainNamed(received.terrain);
+  const { values, total, totalOnly, otherCurrency, tivMinor } = amountsOf(received, facts);
+  const country = countryNamed(received.country);
   return {
-    ...row,
-    ...amountsOf(received, facts),
+    row: row.row,
+    line: row.line,
+    received,
     ref,
-    country: countryNamed(received.country),
+    country,
     latitude,
     longitude,
+    values,
+    total,
+    totalOnly,
+    tivMinor,
+    otherCurrency,
     construction: construction === 'unknown' ? null : construction,
     occupancy: occupancy === 'unknown' ? null : occupancy,
     terrain: terrain === 'unknown' ? null : terrain,
     claimedQuality: (received.location_quality && qualityNamed(received.location_quality)) || 'unknown',
+    deductible: readDeductible(received, tivMinor, facts),
+    limit: readLimit(received, facts),
+    slip:
+      latitude.kind === 'degrees' && longitude.kind === 'degrees'
+        ? slipOf(facts.home, country, latitude.degrees, longitude.degrees)
+        : null,
     corrections,
   };
 }

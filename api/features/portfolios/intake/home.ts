@@ -1,5 +1,12 @@
 import { canLieIn, type Country } from './countries.ts';
-import type { Box } from './file-row.ts';
+
+/** A box on the globe; longitudes run east from `west`, which may pass the date line. */
+export interface Box {
+  south: number;
+  north: number;
+  west: number;
+  east: number;
+}
 
 const ROOM_DEG = 3;
 const FEWEST_POINTS = 4;
@@ -31,10 +38,15 @@ export function homeOf(latitudes: Float64Array, longitudes: Float64Array): Box |
 const inHome = (home: Box, latitude: number, longitude: number): boolean =>
   latitude >= home.south &&
   latitude <= home.north &&
-  ((((longitude - home.west) % 360) + 360) % 360) <= home.east - home.west;
+  (((longitude - home.west) % 360) + 360) % 360 <= home.east - home.west;
 
 /** Whether a site may lie at a point: in its country when that is known, else among the file's other sites. */
-export function plausible(home: Box | null, country: Country | null, latitude: number, longitude: number): boolean | null {
+export function plausible(
+  home: Box | null,
+  country: Country | null,
+  latitude: number,
+  longitude: number,
+): boolean | null {
   if (Math.abs(latitude) > 90 || Math.abs(longitude) > 180) return false;
   if (country) return canLieIn(country, latitude, longitude);
   return home ? inHome(home, latitude, longitude) : null;
@@ -54,6 +66,7 @@ export function slipOf(home: Box | null, country: Country | null, latitude: numb
   if (fits(latitude, -longitude)) return 'sign lost';
   if (fits(longitude, latitude) || fits(longitude, -latitude)) return 'swapped';
   // With nothing to compare with, a latitude beyond the pole that would do as a longitude is still a swap.
-  if (!country && !home && Math.abs(latitude) > 90 && Math.abs(latitude) <= 180 && Math.abs(longitude) <= 60) return 'swapped';
+  if (!country && !home && Math.abs(latitude) > 90 && Math.abs(latitude) <= 180 && Math.abs(longitude) <= 60)
+    return 'swapped';
   return null;
 }

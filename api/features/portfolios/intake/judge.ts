@@ -94,7 +94,8 @@ export interface JudgedRow {
 
 const corrected = (row: SiteRow, { kind, code, reason }: Correction): Message => {
   const was = `${row.received.latitude ?? ''} / ${row.received.longitude ?? ''}`;
-  const now = row.latitude.kind === 'degrees' && row.longitude.kind === 'degrees'
+  const now =
+    row.latitude.kind === 'degrees' && row.longitude.kind === 'degrees'
       ? `${degreesText(row.latitude.degrees)} / ${degreesText(row.longitude.degrees)}`
       : was;
   const what = {
@@ -119,7 +120,8 @@ export function judgeRow(
   surveyed: readonly Surveyed[],
   corrections: readonly Correction[],
 ): JudgedRow {
-  const lifted = (code: string) => corrections.some((correction) => correction.kind === 'keep_all' && correction.code === code);
+  const lifted = (code: string) =>
+    corrections.some((correction) => correction.kind === 'keep_all' && correction.code === code);
   const site = readSite(row, file, corrections);
   const messages: Message[] = [];
   for (const { code, field, received, text } of surveyed) {
@@ -136,10 +138,13 @@ export function judgeRow(
     for (const correction of corrections) if (correction.kind !== 'exclude') messages.push(corrected(site, correction));
   }
   const shown = aside.length > 0 ? aside : excluded ? [exclusion(site, excluded, messages)] : messages;
-  const decisive = (['set_aside', 'hold', 'note'] as const).find((severity) => shown.some((message) => message.severity === severity));
+  const decisive = (['set_aside', 'hold', 'note'] as const).find((severity) =>
+    shown.some((message) => message.severity === severity),
+  );
   const state = decisive ? STATE_OF[decisive] : 'ready';
   const point = pointOf(site);
-  const assumed = state === 'ready' || state === 'notes' ? ASSUMABLE.filter((attribute) => site[attribute] === null) : [];
+  const assumed =
+    state === 'ready' || state === 'notes' ? ASSUMABLE.filter((attribute) => site[attribute] === null) : [];
   const isTotal = aside.some(({ code }) => code === 'FILE-07');
   return {
     row: row.row,
@@ -152,7 +157,10 @@ export function judgeRow(
     messages: shown,
     codes: [...new Set(shown.filter(({ severity }) => severity === decisive).map(({ code }) => code))],
     corrected: corrections.length > 0,
-    quality: qualityOf(site, messages.some(({ code }) => code === sharedPoint.code)),
+    quality: qualityOf(
+      site,
+      messages.some(({ code }) => code === sharedPoint.code),
+    ),
     assumed,
   };
 }
@@ -173,7 +181,8 @@ export const competesForReference = (surveyed: readonly Surveyed[], corrections:
   !corrections.some(({ kind, code }) => kind === 'exclude' || (kind === 'keep_all' && code === 'SAME-01')) &&
   !surveyed.some(
     ({ code }) =>
-      ruleOf(code)!.severity === 'set_aside' && !corrections.some((correction) => correction.kind === 'keep_all' && correction.code === code),
+      ruleOf(code)!.severity === 'set_aside' &&
+      !corrections.some((correction) => correction.kind === 'keep_all' && correction.code === code),
   );
 
 export const REFERENCE_RULE = sharedReference.code;

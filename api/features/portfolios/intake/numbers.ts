@@ -2,13 +2,12 @@
 export type DecimalSign = 'point' | 'comma';
 
 export type Amount =
-  | { kind: 'blank' }
-  | { kind: 'amount'; minor: number }
-  | { kind: 'negative'; minor: number }
-  | { kind: 'unreadable' };
+  { kind: 'blank' } | { kind: 'amount'; minor: number } | { kind: 'negative'; minor: number } | { kind: 'unreadable' };
 
 /** A single amount above this is a slip; the sum of a full file stays an exact integer well below 2^53. */
 const LARGEST_MINOR = 10n ** 15n;
+/** Whole numbers short enough to be exact either way: the usual case, read without detours. */
+const PLAIN = /^\d{1,12}$/;
 const BLANK = /^(?:-|–|—|n\/?a|nil|none|null)?$/i;
 const CURRENCY = /^(?:[A-Z]{2,3}\s?)?[$€£₱₹]|^[A-Z]{3}(?=[\s\d(])|(?<=[\d)\s])(?:[A-Z]{3}|[$€£₱₹])$/g;
 const PATTERN = {
@@ -21,7 +20,9 @@ const PATTERN = {
  * More than two decimals round half up. Words and suffixes ("1.2m", "12k", "1e6") are refused rather than guessed.
  */
 export function readAmount(text: string | undefined, decimal: DecimalSign = 'point'): Amount {
-  const trimmed = (text ?? '').trim();
+  if (text === undefined) return { kind: 'blank' };
+  const trimmed = text.trim();
+  if (PLAIN.test(trimmed)) return { kind: 'amount', minor: Number(trimmed) * 100 };
   if (BLANK.test(trimmed)) return { kind: 'blank' };
   let digits = trimmed.replace(CURRENCY, '').trim();
   let negative = false;
@@ -40,7 +41,9 @@ export function readAmount(text: string | undefined, decimal: DecimalSign = 'poi
   const cents = BigInt(whole || '0') * 100n + BigInt(fraction.slice(0, 2).padEnd(2, '0'));
   const minor = fraction.length > 2 && fraction[2]! >= '5' ? cents + 1n : cents;
   if (minor > LARGEST_MINOR) return { kind: 'unreadable' };
-  return negative && minor > 0n ? { kind: 'negative', minor: -Number(minor) } : { kind: 'amount', minor: Number(minor) };
+  return negative && minor > 0n
+    ? { kind: 'negative', minor: -Number(minor) }
+    : { kind: 'amount', minor: Number(minor) };
 }
 
 /** A plain decimal number that isn't money, such as 2.5 or a percentage without its sign; null when it isn't one. */

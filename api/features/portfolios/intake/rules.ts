@@ -60,7 +60,8 @@ export const FILE_RULES: readonly FileRule[] = [
 ];
 
 const byCode = new Map<string, Rule>();
-for (const rule of [...ROW_RULES, ...SURVEY_RULES, ...FILE_RULES]) if (!byCode.has(rule.code)) byCode.set(rule.code, rule);
+for (const rule of [...ROW_RULES, ...SURVEY_RULES, ...FILE_RULES])
+  if (!byCode.has(rule.code)) byCode.set(rule.code, rule);
 
 /** The rule of a code; the row rule where rows and file share one. */
 export const ruleOf = (code: string): Rule | null => byCode.get(code) ?? null;

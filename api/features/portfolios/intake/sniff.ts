@@ -5,7 +5,8 @@ const DELIMITERS: readonly Delimiter[] = [',', ';', '\t', '|'];
 const HEADER_LINES = 20;
 
 const starts = (bytes: Uint8Array, ...signature: number[]) => signature.every((byte, i) => bytes[i] === byte);
-const ascii = (bytes: Uint8Array) => Buffer.from(bytes.buffer, bytes.byteOffset, Math.min(bytes.length, 4096)).toString('latin1');
+const ascii = (bytes: Uint8Array) =>
+  Buffer.from(bytes.buffer, bytes.byteOffset, Math.min(bytes.length, 4096)).toString('latin1');
 
 /** What a file is when it isn't text, in words; null when it may be text. */
 export function notText(head: Uint8Array): string | null {
@@ -57,8 +58,8 @@ function cellCounts(text: string, delimiter: string, lines: number): number[] {
 }
 
 /** The delimiter that cuts most of the first lines into the same number of cells, more cells preferred. */
-export function sniffDelimiter(text: string): Delimiter {
-  let best: Delimiter = ',';
+export function sniffDelimiter(text: string): { delimiter: Delimiter; columns: number } {
+  let best: { delimiter: Delimiter; columns: number } = { delimiter: ',', columns: 1 };
   let bestScore = 0;
   // A last line without its end would be counted short.
   const whole = text.endsWith('\n') || text.endsWith('\r') ? text : `${text}\n`;
@@ -67,7 +68,7 @@ export function sniffDelimiter(text: string): Delimiter {
     for (const count of cellCounts(whole, delimiter, 100)) if (count > 1) times.set(count, (times.get(count) ?? 0) + 1);
     for (const [cells, lines] of times) {
       const score = lines * (1 + Math.log2(cells));
-      if (score > bestScore) [best, bestScore] = [delimiter, score];
+      if (score > bestScore) [best, bestScore] = [{ delimiter, columns: cells }, score];
     }
   }
   return best;
@@ -79,7 +80,10 @@ const numeric = (cell: string) => /^[-−+$€£(]?\s*\d[\d.,\s]*%?\)?$/.test(ce
  * Position of the line with the column names among the first twenty: the line with most headers we know, else the
  * first line of several different words that a line with numbers follows. Null when there is none.
  */
-export function findHeader(lines: readonly (readonly string[])[], known: (cells: readonly string[]) => number): number | null {
+export function findHeader(
+  lines: readonly (readonly string[])[],
+  known: (cells: readonly string[]) => number,
+): number | null {
   const first = lines.slice(0, HEADER_LINES);
   let best = -1;
   let most = 1;

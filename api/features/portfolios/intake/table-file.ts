@@ -101,15 +101,23 @@ const isBlank = (record: readonly string[]) => record.every((cell) => cell.trim(
 class RecordReader {
   private readonly parser: Parser;
   private failure: Error | null = null;
-  private line = 0;
+  /** Starts before the first line, as the parser is given a line of ours first. */
+  private line = -1;
 
-  constructor(delimiter: Delimiter, private readonly take: (record: string[], line: number) => void) {
+  constructor(
+    delimiter: Delimiter,
+    columns: number,
+    private readonly take: (record: string[], line: number) => void,
+  ) {
     this.parser = parserFor(delimiter);
+    // The parser builds an error for each record unlike its first, at thirty times the cost of reading it. Title lines
+    // above the table are short, so it gets a line of the usual width first.
+    this.parser.write(`${delimiter.repeat(columns - 1)}\n`);
     this.parser.on('readable', () => {
       let record: string[] | null;
       while (!this.failure && (record = this.parser.read() as string[] | null) !== null) {
         try {
-          this.take(record, ++this.line);
+          if (++this.line > 0) this.take(record, this.line);
         } catch (error) {
           this.failure = error as Error;
         }
@@ -129,7 +137,10 @@ class RecordReader {
   async end(): Promise<number> {
     if (!this.failure) {
       await new Promise<void>((resolve) => {
-        this.parser.once('end', resolve).once('error', () => resolve()).once('close', resolve);
+        this.parser
+          .once('end', resolve)
+          .once('error', () => resolve())
+          .once('close', resolve);
         this.parser.end();
       });
     }
@@ -175,7 +186,10 @@ export async function scanTable(
     }
     await keep(chunk);
   }
-  if (bytes === 0) throw unreadable('This file is empty. There is nothing to read. Choose the file that holds the sites and upload again.');
+  if (bytes === 0)
+    throw unreadable(
+      'This file is empty. There is nothing to read. Choose the file that holds the sites and upload again.',
+    );
   if (!scan) {
     const all = Buffer.concat(head);
     scan = new HeadScan(all, limits);
@@ -191,12 +205,17 @@ class HeadScan {
   private readonly reader: RecordReader;
   private readonly first: string[][] = [];
 
-  constructor(head: Uint8Array, private readonly limits: Limits) {
+  constructor(
+    head: Uint8Array,
+    private readonly limits: Limits,
+  ) {
     const kind = notText(head);
     if (kind) {
       throw unreadable(
         `This file is ${kind}, not text, whatever its name says. ${
-          kind.includes('Excel') ? 'Save the sheet with the sites as CSV (UTF-8) and upload that.' : 'Upload the schedule as CSV: one line a site, column names on top.'
+          kind.includes('Excel')
+            ? 'Save the sheet with the sites as CSV (UTF-8) and upload that.'
+            : 'Upload the schedule as CSV: one line a site, column names on top.'
         }`,
       );
     }
@@ -204,8 +223,9 @@ class HeadScan {
     this.decoder = new Decoder(marked ?? 'utf-8', marked !== null);
     if (!marked?.startsWith('utf-16')) refuseNul(head);
     const text = new TextDecoder(marked ?? 'utf-8').decode(head);
-    this.delimiter = sniffDelimiter(text);
-    this.reader = new RecordReader(this.delimiter, (record, line) => this.take(record, line));
+    const sniffed = sniffDelimiter(text);
+    this.delimiter = sniffed.delimiter;
+    this.reader = new RecordReader(this.delimiter, sniffed.columns, (record, line) => this.take(record, line));
   }
 
   async write(chunk: Uint8Array): Promise<void> {
@@ -248,7 +268,10 @@ class HeadScan {
       );
     }
     const data = first.slice(at + 1).filter((record) => !isBlank(record));
-    if (data.length === 0) throw unreadable('This file holds column names and no rows. There is nothing to score. Choose the file that holds the sites.');
+    if (data.length === 0)
+      throw unreadable(
+        'This file holds column names and no rows. There is nothing to score. Choose the file that holds the sites.',
+      );
     const headers = first[at]!.map((cell, index) => cell.replace(/^\ufeff/, '').trim() || `Column ${index + 1}`);
     const samples = headers.map((_, index) =>
       data.flatMap((record) => (record[index]?.trim() ? [record[index].trim()] : [])).slice(0, SAMPLES),
@@ -275,10 +298,11 @@ function refuseNul(head: Uint8Array): void {
 export async function readTable(
   chunks: AsyncIterable<Uint8Array>,
   style: TableStyle,
+  columns: number,
   take: (record: string[], line: number) => void,
 ): Promise<number> {
   const decoder = new TextDecoder(style.encoding);
-  const reader = new RecordReader(style.delimiter, take);
+  const reader = new RecordReader(style.delimiter, columns, take);
   for await (const chunk of chunks) await reader.write(decoder.decode(chunk, { stream: true }));
   await reader.write(decoder.decode());
   return reader.end();

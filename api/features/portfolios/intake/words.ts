@@ -17,7 +17,16 @@ function wordList<Class extends string>(list: Readonly<Record<Class, string>>): 
     classes.set(bare(name), name);
     for (const word of words.split('|')) if (word) classes.set(bare(word), name);
   }
-  return (text) => classes.get(bare(text)) ?? null;
+  const read = new Map<string, Class | null>();
+  return (text) => {
+    let named = read.get(text);
+    if (named === undefined) {
+      named = classes.get(bare(text)) ?? null;
+      // Schedules use few words many times; a column of free text isn't worth remembering.
+      if (read.size < 2000) read.set(text, named);
+    }
+    return named;
+  };
 }
 
 export const constructionNamed = wordList({

@@ -62,7 +62,8 @@ export const yearImpossible = rowRule({
   check: (row, file) => {
     const received = row.received.year_built?.trim() ?? '';
     if (!received || /^(?:0|unknown|n\/?a|-)$/i.test(received) || yearBuiltOf(row, file.year) !== null) return null;
-    const wrong = /^\d{4}$/.test(received) && Number(received) > file.year + 1 ? 'is in the future' : 'is not a year from 1700 on';
+    const wrong =
+      /^\d{4}$/.test(received) && Number(received) > file.year + 1 ? 'is in the future' : 'is not a year from 1700 on';
     return {
       field: 'year_built',
       received,

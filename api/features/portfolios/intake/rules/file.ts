@@ -28,8 +28,12 @@ export const notASite = surveyRule({
     const all = { rows: 0, sums: new Map<string, number>() };
     const ofSites = (row: FileRow) => {
       const { values, total, totalOnly } = amounts(row);
-      const fields = totalOnly ? ([['total_value', total]] as const) : [...VALUE_FIELDS.map((field) => [field, values[field]] as const), ['total_value', total] as const];
-      return fields.flatMap(([field, amount]) => (amount.kind === 'amount' && amount.minor > 0 ? [[field, amount.minor] as const] : []));
+      const fields = totalOnly
+        ? ([['total_value', total]] as const)
+        : [...VALUE_FIELDS.map((field) => [field, values[field]] as const), ['total_value', total] as const];
+      return fields.flatMap(([field, amount]) =>
+        amount.kind === 'amount' && amount.minor > 0 ? [[field, amount.minor] as const] : [],
+      );
     };
     rows.forEach((row, index) => {
       const text = lineText(row);
@@ -93,7 +97,12 @@ export const thousands = fileRule({
 });
 
 /** Whether the totals a person expects and those read agree; null when none were given. */
-export function controlTies({ expectedRows, expectedTivMinor, rowsRead, tivReadMinor }: Pick<Totals, 'expectedRows' | 'expectedTivMinor' | 'rowsRead' | 'tivReadMinor'>): boolean | null {
+export function controlTies({
+  expectedRows,
+  expectedTivMinor,
+  rowsRead,
+  tivReadMinor,
+}: Pick<Totals, 'expectedRows' | 'expectedTivMinor' | 'rowsRead' | 'tivReadMinor'>): boolean | null {
   if (expectedRows === null && expectedTivMinor === null) return null;
   const rowsTie = expectedRows === null || expectedRows === rowsRead;
   const tivTies =
@@ -146,7 +155,10 @@ export const currencies = fileRule({
   judge: ({ otherCurrencies, facts }) =>
     otherCurrencies.length === 0
       ? null
-      : `The file holds ${otherCurrencies.length === 1 ? 'two currencies' : 'several currencies'}, ${[facts.currency, ...otherCurrencies].join(
+      : `The file holds ${otherCurrencies.length === 1 ? 'two currencies' : 'several currencies'}, ${[
+          facts.currency,
+          ...otherCurrencies,
+        ].join(
           ' and ',
         )}. Rows in ${otherCurrencies.join(' and ')} are held: we don't convert, and totals never mix currencies. Upload them as a portfolio of their own.`,
 });
@@ -174,6 +186,16 @@ const missing = (code: 'BLDG-01' | 'BLDG-06' | 'BLDG-07', attribute: string, nam
     },
   });
 
-export const constructionShare = missing('BLDG-01', 'construction', 'Construction', "We will use the 'unknown' blend, marked as assumed.");
-export const occupancyShare = missing('BLDG-06', 'occupancy', 'Occupancy', 'We treat it as unknown, marked as assumed.');
+export const constructionShare = missing(
+  'BLDG-01',
+  'construction',
+  'Construction',
+  "We will use the 'unknown' blend, marked as assumed.",
+);
+export const occupancyShare = missing(
+  'BLDG-06',
+  'occupancy',
+  'Occupancy',
+  'We treat it as unknown, marked as assumed.',
+);
 export const terrainShare = missing('BLDG-07', 'terrain', 'Terrain', 'We assumed open terrain, marked as assumed.');

@@ -1,7 +1,7 @@
-import type { Quality, SiteRow } from '../file-row.ts';
+import type { Context, Quality, SiteRow } from '../file-row.ts';
 import { hasCorrection, pointOf } from '../file-row.ts';
 import { degreesText } from '../coordinates.ts';
-import { plausible, slipOf } from '../home.ts';
+import { canLieIn, inSentence } from '../countries.ts';
 import { countText, receivedText, rowsText } from '../numbers.ts';
 import { rowRule, surveyRule, type Finding } from '../rule.ts';
 
@@ -10,7 +10,16 @@ const OFFSHORE_NOTED_M = 2_000;
 const OFFSHORE_HELD_M = 5_000;
 const SHARED_POINT_SITES = 5;
 
-const QUALITY_ORDER: readonly Quality[] = ['building', 'parcel', 'placed_by_hand', 'street', 'postcode', 'town', 'region', 'unknown'];
+const QUALITY_ORDER: readonly Quality[] = [
+  'building',
+  'parcel',
+  'placed_by_hand',
+  'street',
+  'postcode',
+  'town',
+  'region',
+  'unknown',
+];
 const worse = (a: Quality, b: Quality): Quality => (QUALITY_ORDER.indexOf(a) >= QUALITY_ORDER.indexOf(b) ? a : b);
 const qualityText = (quality: Quality) => quality.replaceAll('_', ' ');
 
@@ -21,10 +30,6 @@ const pairReceived = ({ received }: SiteRow) => `${received.latitude ?? ''} / ${
 const degreesOf = ({ latitude, longitude }: SiteRow): [number, number] | null =>
   latitude.kind === 'degrees' && longitude.kind === 'degrees' ? [latitude.degrees, longitude.degrees] : null;
 
-const slip = (row: SiteRow, home: Parameters<typeof slipOf>[0]) => {
-  const pair = degreesOf(row);
-  return pair && slipOf(home, row.country, ...pair);
-};
 const isNull = (row: SiteRow) => {
   const pair = degreesOf(row);
   return pair !== null && pair[0] === 0 && pair[1] === 0;
@@ -59,7 +64,11 @@ export const noCoordinates = rowRule({
           field: row.latitude.kind === 'blank' ? 'latitude' : 'longitude',
           received: null,
           text: `Row ${row.row}: no ${
-            row.latitude.kind !== 'blank' ? 'longitude' : row.longitude.kind !== 'blank' ? 'latitude' : 'latitude or longitude'
+            row.latitude.kind !== 'blank'
+              ? 'longitude'
+              : row.longitude.kind !== 'blank'
+                ? 'latitude'
+                : 'latitude or longitude'
           }. The site can't be scored. Add coordinates, place it on the map, or exclude it with a reason.`,
         }
       : null,
@@ -71,9 +80,9 @@ export const swapped = rowRule({
   title: 'Latitude and longitude look swapped',
   fix: { kind: 'swap_coordinates', label: (rows) => `Swap ${rowsText(rows)}` },
   check: (row, file) => {
-    if (slip(row, file.home) !== 'swapped') return null;
+    if (row.slip !== 'swapped') return null;
     const where = row.country
-      ? `they fall in ${row.country.name} like the rest of this file`
+      ? `they fall in ${inSentence(row.country)} like the rest of this file`
       : file.home
         ? 'they fall among the other sites of this file'
         : 'they are a point on the globe';
@@ -91,9 +100,12 @@ export const signLost = rowRule({
   code: 'PLACE-03',
   severity: 'hold',
   title: 'Longitude has the wrong sign',
-  fix: { kind: 'negate_longitude', label: (rows) => (rows === 1 ? 'Change 1 sign' : `Change ${countText(rows)} signs`) },
+  fix: {
+    kind: 'negate_longitude',
+    label: (rows) => (rows === 1 ? 'Change 1 sign' : `Change ${countText(rows)} signs`),
+  },
   check: (row, file) => {
-    if (slip(row, file.home) !== 'sign lost') return null;
+    if (row.slip !== 'sign lost') return null;
     const longitude = row.longitude.kind === 'degrees' ? row.longitude.degrees : 0;
     const side = longitude > 0 ? 'east' : 'west';
     const against = row.country
@@ -158,10 +170,10 @@ export const metres = rowRule({
 });
 
 /** Metres off the coast when the row stands as a usable point; null where another rule already doubts the point. */
-const offshoreOf = (row: SiteRow, file: { home: Parameters<typeof slipOf>[0]; offshoreM: (a: number, b: number) => number }) => {
+const offshoreOf = (row: SiteRow, { offshoreM }: Pick<Context, 'offshoreM'>) => {
   const point = pointOf(row);
-  if (!point || Math.abs(point[0]) > 60 || isNull(row) || slip(row, file.home)) return null;
-  const metresOff = file.offshoreM(...point);
+  if (!point || Math.abs(point[0]) > 60 || isNull(row) || row.slip) return null;
+  const metresOff = offshoreM(...point);
   return metresOff > OFFSHORE_NOTED_M ? metresOff : null;
 };
 const kilometres = (metresOff: number) =>
@@ -202,14 +214,14 @@ export const otherCountry = rowRule({
   code: 'PLACE-08',
   severity: 'note',
   title: 'Coordinates and country disagree',
-  check: (row, file) => {
+  check: (row) => {
     const point = pointOf(row);
-    if (!point || !row.country || isNull(row) || slip(row, file.home)) return null;
-    if (plausible(null, row.country, ...point) !== false) return null;
+    if (!point || !row.country || isNull(row) || row.slip) return null;
+    if (canLieIn(row.country, ...point)) return null;
     return {
       field: 'country',
       received: row.received.country ?? null,
-      text: `Row ${row.row}: the coordinates are outside ${row.country.name}; the country says ${row.received.country?.trim()}. We kept the coordinates. Check the address.`,
+      text: `Row ${row.row}: the coordinates are outside ${inSentence(row.country)}; the country says ${row.received.country?.trim()}. We kept the coordinates. Check the address.`,
     };
   },
 });
@@ -221,7 +233,11 @@ export const coarse = rowRule({
   check: (row) => {
     const decimals = decimalsOf(row);
     if (decimals === null || decimals > 2 || isNull(row) || looksMetric(row)) return null;
-    const precise = ['no decimals is accurate to about 100 km', 'one decimal is accurate to about 10 km', 'two decimals is accurate to about 1 km'];
+    const precise = [
+      'no decimals is accurate to about 100 km',
+      'one decimal is accurate to about 10 km',
+      'two decimals is accurate to about 1 km',
+    ];
     const lowered = worse(row.claimedQuality, ceilingOf(decimals));
     const outcome =
       lowered === row.claimedQuality
@@ -236,8 +252,11 @@ export const unusable = rowRule({
   severity: 'hold',
   title: 'Coordinates can’t be used as they stand',
   fix: { kind: 'exclude', label: (rows) => `Exclude ${rowsText(rows)}` },
-  check: (row, file) => {
-    for (const [field, limit] of [['latitude', 60], ['longitude', 180]] as const) {
+  check: (row) => {
+    for (const [field, limit] of [
+      ['latitude', 60],
+      ['longitude', 180],
+    ] as const) {
       const coordinate = row[field];
       const received = row.received[field] ?? '';
       if (coordinate.kind === 'unreadable') {
@@ -249,7 +268,8 @@ export const unusable = rowRule({
           }.`,
         };
       }
-      if (coordinate.kind !== 'degrees' || Math.abs(coordinate.degrees) <= limit || looksMetric(row) || slip(row, file.home)) continue;
+      if (coordinate.kind !== 'degrees' || Math.abs(coordinate.degrees) <= limit || looksMetric(row) || row.slip)
+        continue;
       return {
         field,
         received,
@@ -267,7 +287,8 @@ export const sharedPoint = surveyRule({
   survey: (rows, { aside, repeats }) => {
     const byPoint = new Map<string, number[]>();
     rows.forEach(({ received }, index) => {
-      if (aside.has(index) || repeats.has(index) || !received.latitude || !received.longitude || !received.street) return;
+      if (aside.has(index) || repeats.has(index) || !received.latitude || !received.longitude || !received.street)
+        return;
       const point = `${received.latitude.trim()} ${received.longitude.trim()}`;
       const sharing = byPoint.get(point);
       if (sharing) sharing.push(index);

@@ -5,9 +5,9 @@ import { rowRule, surveyRule, type Finding } from '../rule.ts';
 
 /** Fingerprint of all mapped cells of a row; blanks and outer spaces don't tell rows apart. */
 const contentOf = ({ received }: FileRow, facts: FileFacts): string => {
-  const hash = createHash('sha256');
-  for (const field of facts.mapped) hash.update(`${received[field]?.trim() ?? ''}\u0000`);
-  return hash.digest('base64');
+  let text = '';
+  for (const field of facts.mapped) text += `${received[field]?.trim() ?? ''}\u0000`;
+  return createHash('sha256').update(text).digest('base64');
 };
 
 const isBlank = (row: FileRow) => Object.keys(row.received).length === 0;
@@ -89,7 +89,10 @@ export const sharedReference = surveyRule({
     });
     const found = new Map<number, Finding>();
     for (const [ref, sharing] of byRef) {
-      const finding = conflictOf(ref, sharing.map((index) => rows[index]!.row));
+      const finding = conflictOf(
+        ref,
+        sharing.map((index) => rows[index]!.row),
+      );
       if (finding) for (const index of sharing) found.set(index, finding);
     }
     return found;
@@ -107,7 +110,9 @@ export const probableRepeat = surveyRule({
       const { latitude, longitude, policy_ref: policy, site_ref: ref } = row.received;
       if (!latitude || !longitude || aside.has(index) || repeats.has(index)) return;
       const { values } = amountsOf(row.received, facts);
-      const amounts = VALUE_FIELDS.map((field) => ('minor' in values[field] ? values[field].minor : values[field].kind));
+      const amounts = VALUE_FIELDS.map((field) =>
+        'minor' in values[field] ? values[field].minor : values[field].kind,
+      );
       const key = [fiveDecimals(latitude), fiveDecimals(longitude), policy?.trim() ?? '', ...amounts].join(' ');
       const first = firsts.get(key);
       if (first === undefined) {

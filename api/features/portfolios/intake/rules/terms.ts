@@ -1,48 +1,6 @@
-import type { FileFacts, SiteRow } from '../file-row.ts';
-import { readAmount, readDecimal, receivedText, shareOf } from '../numbers.ts';
+import type { SiteRow } from '../file-row.ts';
+import { receivedText } from '../numbers.ts';
 import { rowRule } from '../rule.ts';
-import { deductibleKindNamed } from '../words.ts';
-
-/** Below this a bare number may as well be a percentage. */
-const SURELY_MONEY = 100;
-
-export type Deductible =
-  | { kind: 'none' }
-  | { kind: 'applied'; minor: number }
-  /** Not applied, and why: no unit, a percentage of something we don't hold, or not a number. */
-  | { kind: 'no unit' | 'no basis' | 'unreadable' };
-
-/** The deductible a row asks for, in minor units where it is an amount or a percentage of the site's own value. */
-export function deductibleOf(row: SiteRow, facts: FileFacts): Deductible {
-  const value = row.received.deductible_value?.trim() ?? '';
-  const kindText = row.received.deductible_kind?.trim() ?? '';
-  const kind = kindText === '' ? null : deductibleKindNamed(kindText);
-  if (kind === 'none' || /^(?:|-|0+(?:[.,]0+)?\s*%?|n\/?a|none|nil)$/i.test(value)) return { kind: 'none' };
-  const signed = /%\s*$/.test(value);
-  const number = signed ? readDecimal(value.replace(/\s*%\s*$/, ''), facts.decimal) : null;
-  if (signed && (number === null || number < 0 || number > 100)) return { kind: 'unreadable' };
-  if (kind === 'percent of policy value' || kind === 'percent of limit') return { kind: 'no basis' };
-  if (kind === 'percent of site value') {
-    if (number !== null) return { kind: 'applied', minor: shareOf(row.tivMinor, number) };
-    const bare = readDecimal(value, facts.decimal);
-    if (bare === null || bare < 0 || bare > 100) return { kind: 'unreadable' };
-    // 0.02 may be 2 % as a fraction or two hundredths of a percent.
-    return bare <= 1 ? { kind: 'no unit' } : { kind: 'applied', minor: shareOf(row.tivMinor, bare) };
-  }
-  if (number !== null || kind === 'percent') return { kind: 'no basis' };
-  const amount = readAmount(value, facts.decimal);
-  if (amount.kind !== 'amount') return { kind: 'unreadable' };
-  if (kind === null && amount.minor < SURELY_MONEY * 100) return { kind: 'no unit' };
-  return { kind: 'applied', minor: amount.minor * facts.scale };
-}
-
-/** The site's limit in minor units; null when none is given or it can't be read. */
-export function limitOf(row: SiteRow, facts: FileFacts): { minor: number | null; readable: boolean } {
-  const amount = readAmount(row.received.site_limit, facts.decimal);
-  if (amount.kind === 'blank') return { minor: null, readable: true };
-  if (amount.kind !== 'amount') return { minor: null, readable: false };
-  return { minor: amount.minor === 0 ? null : amount.minor * facts.scale, readable: true };
-}
 
 const received = (row: SiteRow) => row.received.deductible_value ?? null;
 
@@ -51,7 +9,7 @@ export const deductibleUnit = rowRule({
   severity: 'note',
   title: 'Deductible has no unit',
   check: (row, file) =>
-    deductibleOf(row, file).kind === 'no unit'
+    row.deductible.kind === 'no unit'
       ? {
           field: 'deductible_value',
           received: received(row),
@@ -64,8 +22,8 @@ export const deductibleBasis = rowRule({
   code: 'TERM-02',
   severity: 'note',
   title: 'Percentage deductible without a usable basis',
-  check: (row, file) =>
-    deductibleOf(row, file).kind === 'no basis'
+  check: (row) =>
+    row.deductible.kind === 'no basis'
       ? {
           field: 'deductible_kind',
           received: row.received.deductible_kind ?? received(row),
@@ -78,8 +36,8 @@ export const deductibleUnreadable = rowRule({
   code: 'TERM-05',
   severity: 'note',
   title: 'Deductible can’t be read',
-  check: (row, file) =>
-    deductibleOf(row, file).kind === 'unreadable'
+  check: (row) =>
+    row.deductible.kind === 'unreadable'
       ? {
           field: 'deductible_value',
           received: received(row),
@@ -92,8 +50,8 @@ export const limitUnreadable = rowRule({
   code: 'TERM-06',
   severity: 'note',
   title: 'Limit can’t be read',
-  check: (row, file) =>
-    limitOf(row, file).readable
+  check: (row) =>
+    row.limit.readable
       ? null
       : {
           field: 'site_limit',

@@ -20,7 +20,9 @@ export const nothingToScore = rowRule({
   title: 'Every value is zero or blank',
   fix: excluding,
   check: (row) =>
-    VALUE_FIELDS.every((field) => row.values[field].kind === 'blank' || ('minor' in row.values[field] && row.values[field].minor === 0)) &&
+    VALUE_FIELDS.every(
+      (field) => row.values[field].kind === 'blank' || ('minor' in row.values[field] && row.values[field].minor === 0),
+    ) &&
     row.total.kind !== 'unreadable' &&
     row.total.kind !== 'negative'
       ? {
