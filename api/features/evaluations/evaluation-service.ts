@@ -1,0 +1,234 @@
+import type { EvaluationReply, EvaluationRequest } from '#contract/evaluations.ts';
+import { RESULT_NOTICES } from '#contract/notices.ts';
+import { DomainError } from '#engine/errors.ts';
+import {
+  eventSummary,
+  SITE_BELOW_FLOOR,
+  SITE_OUT_OF_REACH,
+  scoreSites,
+  type SiteBatch,
+  type SiteScores,
+} from '#engine/footprint/site-peaks.ts';
+import { staysInEye } from '#engine/footprint/site-series.ts';
+import { fetchBySector, isLand, type LandIndex } from '#engine/geo/land.ts';
+import { REFERENCE_CURVE } from '#engine/loss/damage-curve.ts';
+import { quantisedLoss } from '#engine/loss/draw-losses.ts';
+import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
+import type { ResolvedFix, TrackFix } from '#engine/track/fixes.ts';
+import { prepareStorm, type Storm } from '#engine/track/storm.ts';
+import { PA_PER_HPA } from '#engine/units.ts';
+import { AppError } from '../../errors.ts';
+
+const OPEN_COUNTRY = 0.03;
+const WIDE_RANGE = 1.3;
+
+type Notice = EvaluationReply['notices'][number];
+type Site = EvaluationRequest['sites'][number];
+type EvaluatedSite = EvaluationReply['sites'][number];
+
+const EXPLORATORY: Notice = {
+  code: 'exploratory',
+  text: 'Exploratory: the reference damage curve, no signed calibration, stored nowhere.',
+};
+
+/** Scores a handful of sites under a track at once; nothing is stored and nothing is charged. */
+export class EvaluationService {
+  constructor(
+    private readonly land: () => LandIndex,
+    private readonly engineVersion: () => string,
+  ) {}
+
+  /** The whole chain for one request; a result that can't be right refuses the request instead of being clipped. */
+  evaluate(request: EvaluationRequest): EvaluationReply {
+    const ground = request.sites.map((site) => this.groundOf(site));
+    const { storm, scores } = this.compute(request, ground);
+    return {
+      engineVersion: this.engineVersion(),
+      notices: noticesOf(request, storm, scores),
+      storm: { wavenumber: storm.wavenumber, fixes: storm.fixes.map(evaluatedFix) },
+      sites: request.sites.map((site, i) => evaluatedSite(site, ground[i]!.filled, scores, i)),
+      event: eventOf(request.sites, scores),
+    };
+  }
+
+  private compute(request: EvaluationRequest, ground: readonly Ground[]): { storm: Storm; scores: SiteScores } {
+    const { intensity, anchor, mesovortices, timeStepS, innerTimeStepS } = request.options;
+    const asksForLand = request.track.some(({ hoursInland }) => hoursInland === null);
+    try {
+      const storm = prepareStorm(
+        request.track.map(engineFix),
+        { intensity, anchor, mesovortices, timeStepS, innerTimeStepS },
+        asksForLand ? this.land() : null,
+      );
+      return { storm, scores: scoreSites(storm, batchOf(request.sites, ground), REFERENCE_CURVE) };
+    } catch (error) {
+      if (!(error instanceof DomainError)) throw error;
+      throw new AppError('invalid_request', `No result: ${error.message}.`, { cause: error });
+    }
+  }
+
+  /** What the request leaves open about the ground comes from the land polygons. */
+  private groundOf(site: Site): Ground {
+    const filled: Record<string, string> = {};
+    let roughness = site.roughnessLengthM;
+    if (roughness === undefined) {
+      const onLand = isLand(this.land(), site.latitude, site.longitude);
+      roughness = onLand ? OPEN_COUNTRY : null;
+      filled.roughnessLengthM = onLand ? 'open country, 0.03 m, assumed' : 'at sea: outside the land polygons';
+    }
+    if (roughness === null) return { roughness: NaN, fetch: new Float64Array(SECTOR_COUNT), filled };
+    if (site.fetchM !== null) return { roughness, fetch: Float64Array.from(site.fetchM), filled };
+    filled.fetchM = 'land polygons';
+    const fetch = fetchBySector(this.land(), site.latitude, site.longitude, new Float64Array(SECTOR_COUNT));
+    return { roughness, fetch, filled };
+  }
+}
+
+type Ground = { roughness: number; fetch: Float64Array; filled: Record<string, string> };
+
+const pa = (hPa: number | null) => (hPa === null ? null : hPa * PA_PER_HPA);
+
+const engineFix = (fix: EvaluationRequest['track'][number]): TrackFix => ({
+  timeS: Date.parse(fix.time) / 1000,
+  latitude: fix.latitude,
+  longitude: fix.longitude,
+  centralPressurePa: pa(fix.centralPressureHpa),
+  ambientPressurePa: pa(fix.ambientPressureHpa),
+  maxWindMs: fix.maxWindMs,
+  windAveragingS: fix.windAveragingSeconds ?? 60,
+  radiusOfMaxWindM: fix.radiusOfMaxWindM,
+  radius64KtM: fix.radius64KtM,
+  ringWidthFraction: fix.ringWidthFraction,
+  eyeVorticityRatio: fix.eyeVorticityRatio,
+  hoursInland: fix.hoursInland,
+});
+
+const batchOf = (sites: readonly Site[], ground: readonly Ground[]): SiteBatch => {
+  const column = (pick: (site: Site, i: number) => number) => Float64Array.from(sites, pick);
+  const fetchM = new Float64Array(SECTOR_COUNT * sites.length);
+  ground.forEach(({ fetch }, i) => fetchM.set(fetch, SECTOR_COUNT * i));
+  return {
+    count: sites.length,
+    latitude: column(({ latitude }) => latitude),
+    longitude: column(({ longitude }) => longitude),
+    roughnessM: column((_, i) => ground[i]!.roughness),
+    fetchM,
+    topographicFactor: column(({ topographicFactor }) => topographicFactor ?? 1),
+    value: column(({ value }) => value ?? NaN),
+    deductible: column(({ deductible }) => deductible ?? 0),
+    limit: column(({ limit }) => limit ?? Infinity),
+  };
+};
+
+const isoOf = (timeS: number) => new Date(Math.round(timeS * 1000)).toISOString();
+
+const evaluatedFix = (fix: ResolvedFix): EvaluationReply['storm']['fixes'][number] => ({
+  time: isoOf(fix.timeS),
+  latitude: fix.latitude,
+  longitude: fix.longitude,
+  centralPressureHpa: fix.centralPressurePa / PA_PER_HPA,
+  ambientPressureHpa: fix.ambientPressurePa / PA_PER_HPA,
+  reportedMaxWindMs: fix.reportedMaxWindMs,
+  pressureImpliedMaxWindMs: fix.pressureImpliedMaxWindMs,
+  maxWindMs: fix.maxWindMs,
+  anchoredMaxWindMs: fix.anchoredMaxWindMs,
+  axisymmetricMaxWindMs: fix.axisymmetricMaxWindMs,
+  intensitySource: fix.intensitySource,
+  radiusOfMaxWindM: fix.radiusOfMaxWindM,
+  shapeB: fix.shapeB,
+  ringWidthFraction: fix.ringWidthFraction,
+  eyeVorticityRatio: fix.eyeVorticityRatio,
+  hoursInland: fix.hoursInland,
+  translationMs: fix.translationMs,
+  headingDeg: fix.headingDeg,
+  filled: { ...fix.filled },
+  anchor: fix.anchor,
+  amplitude: fix.amplitude,
+  patternRadPerS: fix.patternRadPerS,
+  flags: [...fix.flags],
+});
+
+const evaluatedSite = (
+  { siteRef, value }: Site,
+  filled: Record<string, string>,
+  scores: SiteScores,
+  i: number,
+): EvaluatedSite => {
+  if (scores.reach[i] === SITE_OUT_OF_REACH) {
+    return { siteRef, reach: 'out-of-reach', filled, plain: null, enhanced: null, loss: null };
+  }
+  return {
+    siteRef,
+    reach: scores.reach[i] === SITE_BELOW_FLOOR ? 'below-floor' : 'scored',
+    filled,
+    plain: {
+      gustMs: scores.plainGust[i]!,
+      meanMs: scores.plainMean[i]!,
+      seaWindMs: scores.plainSeaWind[i]!,
+      directionDeg: scores.plainDirection[i]!,
+      time: isoOf(scores.plainTimeS[i]!),
+      secondsAbove25Ms: scores.secondsAbove25[i]!,
+      secondsAbove33Ms: scores.secondsAbove33[i]!,
+    },
+    enhanced: {
+      meanMs: scores.enhancedMean[i]!,
+      p5Ms: scores.p5[i]!,
+      p50Ms: scores.p50[i]!,
+      p90Ms: scores.p90[i]!,
+      p95Ms: scores.p95[i]!,
+      p99Ms: scores.p99[i]!,
+    },
+    loss:
+      value === null
+        ? null
+        : {
+            groundUpPlain: scores.groundUpPlain[i]!,
+            grossPlain: scores.grossPlain[i]!,
+            groundUpMean: scores.groundUpMean[i]!,
+            grossMean: scores.grossMean[i]!,
+          },
+  };
+};
+
+const eventOf = (sites: readonly Site[], scores: SiteScores): EvaluationReply['event'] => {
+  if (sites.every(({ value }) => value === null)) return null;
+  const { mean, p5, p50, p95 } = eventSummary(scores.eventGross);
+  // Rounded like the draws, so that the sum is exact and the order of sites does not matter.
+  const grossPlain = scores.grossPlain.reduce(
+    (sum, gross) => sum + (Number.isNaN(gross) ? 0 : quantisedLoss(gross)),
+    0,
+  );
+  return { grossPlain, grossMean: mean, grossP5: p5, grossP50: p50, grossP95: p95 };
+};
+
+const noticesOf = (request: EvaluationRequest, storm: Storm, scores: SiteScores): Notice[] => {
+  const notices: Notice[] = [EXPLORATORY, ...storm.notices];
+  if (request.track.some((fix) => fix.maxWindMs !== null && fix.windAveragingSeconds === null)) {
+    notices.push({
+      code: 'averaging-assumed',
+      text: 'Maximum winds without an averaging period are taken as 1-min winds.',
+    });
+  }
+  const named = (pick: (i: number) => boolean) =>
+    request.sites.flatMap(({ siteRef }, i) => (pick(i) ? [siteRef] : [])).join(', ');
+  const far = named((i) => scores.reach[i] === SITE_OUT_OF_REACH);
+  if (far) notices.push({ code: 'out-of-reach', text: `More than 1000 km from the track, not scored: ${far}.` });
+  const wide = named((i) => scores.p99[i]! > WIDE_RANGE * scores.plainGust[i]!);
+  if (wide) {
+    notices.push({
+      code: 'wide-vortex-range',
+      text: `The 99th percentile exceeds 1.3 times the plain gust, more than observations we know of show: ${wide}.`,
+    });
+  }
+  const inEye = named((i) => {
+    const { latitude, longitude } = request.sites[i]!;
+    return staysInEye(storm, { latitude, longitude });
+  });
+  if (inEye) {
+    notices.push({
+      code: 'inside-eye',
+      text: `Always within half the radius of maximum wind; enhanced over plain means nothing there: ${inEye}.`,
+    });
+  }
+  return [...notices, ...RESULT_NOTICES.map(({ code, text }) => ({ code, text }))];
+};
