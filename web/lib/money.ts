@@ -38,15 +38,25 @@ export const shortMoney = (minor: number, currency: string): string => {
   return [currency, decimal(value, word === '' ? 0 : decimalsFor(value)), word].filter(Boolean).join(' ');
 };
 
+const rangeWith = (low: number, high: number, decimals: number) =>
+  range(decimal(low, decimals), decimal(high, decimals));
+
+/** Three figures at the high end, and at least two at the low end: "4.1–12.6", "0.41–12.60". */
+const figures = (low: number, high: number): string => {
+  const atHigh = decimalsFor(high);
+  const enough = Math.abs(low) * 10 ** atHigh >= 9.5 || low === 0;
+  return rangeWith(low, high, enough ? atHigh : 2);
+};
+
 /** Both ends on one scale, for the largest text of a page. { amount: "186–412", scale: "million" } */
 export const moneyRangeParts = (lowMinor: number, highMinor: number, currency: string) => {
   const per = minorPerUnit(currency);
   const { divisor, word } = scaleOf(Math.max(Math.abs(lowMinor), Math.abs(highMinor)) / per);
-  const text = (minor: number) => {
-    const value = minor / per / divisor;
-    return decimal(value, word === '' ? 0 : decimalsFor(value));
-  };
-  return { currency, amount: range(text(lowMinor), text(highMinor)), scale: word };
+  const amount =
+    word === ''
+      ? rangeWith(lowMinor / per, highMinor / per, 0)
+      : figures(lowMinor / per / divisor, highMinor / per / divisor);
+  return { currency, amount, scale: word };
 };
 
 /** "USD 186–412 million" */
@@ -58,11 +68,8 @@ export const moneyRange = (lowMinor: number, highMinor: number, currency: string
 /** For columns whose header says "million": "4,812.6". */
 export const millions = (minor: number, currency: string, decimals = 1): string =>
   decimal(minor / minorPerUnit(currency) / 1e6, decimals);
-/** For columns whose header says "million": "4.1–12.6", three figures each. */
+/** For columns whose header says "million": "4.1–12.6", three figures at the high end. */
 export const millionsRange = (lowMinor: number, highMinor: number, currency: string): string => {
-  const text = (minor: number) => {
-    const value = minor / minorPerUnit(currency) / 1e6;
-    return decimal(value, decimalsFor(value));
-  };
-  return range(text(lowMinor), text(highMinor));
+  const per = minorPerUnit(currency) * 1e6;
+  return figures(lowMinor / per, highMinor / per);
 };

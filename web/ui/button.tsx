@@ -87,10 +87,19 @@ export function Button({
     </button>
   );
   if (!blocked) return button;
+  if (reasonPlacement === 'none')
+    return (
+      <>
+        {button}
+        <span id={reasonId} className="sr-only">
+          {disabledReason}
+        </span>
+      </>
+    );
   return (
     <span className={classNames('inline-flex flex-col gap-1', className?.includes('w-full') && 'w-full')}>
       {button}
-      <span id={reasonId} className={reasonPlacement === 'none' ? 'sr-only' : 'max-w-72 text-12 text-ink-2'}>
+      <span id={reasonId} className="max-w-72 text-12 text-ink-2">
         {disabledReason}
       </span>
     </span>

@@ -13,7 +13,7 @@ interface DialogProps {
 /** Names the object and the effect; only for spending, sealing, signing, withdrawing and removing, and short forms. */
 export function Dialog({ open, onClose, title, children, actions }: DialogProps) {
   return (
-    <HeadlessDialog open={open} onClose={onClose} className="relative z-40">
+    <HeadlessDialog open={open} onClose={onClose} className="relative z-40 outline-none">
       <DialogBackdrop className="fixed inset-0 bg-scrim" />
       <div className="fixed inset-0 grid place-items-center overflow-y-auto p-3.5 max-rail:place-items-end">
         <DialogPanel className="w-full max-w-120 rounded-3 border border-rule-strong bg-sheet shadow-3">

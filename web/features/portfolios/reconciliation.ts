@@ -1,18 +1,25 @@
 import { Archive, CircleCheck, Hand, StickyNote } from 'lucide-react';
 import type { Reconciliation } from '#contract/portfolios.ts';
-import { exactAmount, minorPerUnit, millions } from '../../lib/money.ts';
+import { exactAmount, minorPerUnit } from '../../lib/money.ts';
 import { count, counted, decimal, percent } from '../../lib/numbers.ts';
 import type { Share, SumTerm } from '../../ui/sum-row.tsx';
 
-/** TIV under a term: in millions, or in whole units when that would read 0.0. */
-export const tivText = (tivMinor: number, currency: string): string => {
-  const units = tivMinor / minorPerUnit(currency);
-  return units === 0 || units >= 100_000 ? `${millions(tivMinor, currency)} m` : decimal(units, 0);
+/** One scale for all TIV figures of an edition, so that they can be compared and added by eye. */
+export const tivScale = (
+  totalMinor: number,
+  currency: string,
+): { unit: string; text: (tivMinor: number) => string } => {
+  const per = minorPerUnit(currency);
+  const total = totalMinor / per;
+  if (total >= 1e7) return { unit: 'm', text: (minor) => decimal(minor / per / 1e6, 1) };
+  if (total >= 1e5) return { unit: 'k', text: (minor) => decimal(minor / per / 1e3, 1) };
+  return { unit: '', text: (minor) => decimal(minor / per, 0) };
 };
 
 /** file rows = ready + with notes + held + set aside, each with its TIV. */
 export const equationOf = (sum: Reconciliation, currency: string): { total: SumTerm; terms: SumTerm[] } => {
-  const tiv = (minor: number) => `TIV ${tivText(minor, currency)}`;
+  const scale = tivScale(siteTiv(sum), currency);
+  const tiv = (minor: number) => `TIV ${scale.text(minor)} ${scale.unit}`.trimEnd();
   return {
     total: { label: 'File rows', value: count(sum.fileRows), note: 'less header line' },
     terms: [
@@ -48,9 +55,9 @@ export const tivShares = (sum: Reconciliation): Share[] => {
 
 export const tivSentence = (sum: Reconciliation, currency: string): string => {
   const all = siteTiv(sum);
-  if (all === 0) return `TIV, ${currency}: no value read.`;
+  if (all === 0) return `No value read in ${currency}.`;
   const share = (minor: number) => percent(minor / all);
-  return `TIV, ${currency} million: ${share(sum.ready.tivMinor)} ready, ${share(sum.notes.tivMinor)} with notes, ${share(sum.held.tivMinor)} held`;
+  return `By TIV: ${share(sum.ready.tivMinor)} ready, ${share(sum.notes.tivMinor)} with notes, ${share(sum.held.tivMinor)} held`;
 };
 
 export interface ControlVerdict {

@@ -9,7 +9,7 @@ export function StandingNote({ text = STANDING_NOTE, className }: { text?: strin
   return (
     <footer
       className={classNames(
-        'flex items-center gap-2.25 border-t border-rule-strong bg-panel px-6 py-1.5 text-13 leading-snug max-rail:px-3.5 max-rail:text-12',
+        'flex items-center gap-2.25 border-t border-rule-strong bg-panel px-6 py-1.5 text-13 leading-snug max-rail:min-h-11.5 max-rail:px-3.5 max-rail:text-12',
         className,
       )}
     >

@@ -53,7 +53,7 @@ export function TabBar({ items, more, person, organisation, onSignOut }: TabBarP
         <Menu size={20} strokeWidth={1.75} className={inMore ? 'text-rail-mark' : undefined} aria-hidden />
         More
       </button>
-      <Dialog open={open} onClose={setOpen} className="relative z-40">
+      <Dialog open={open} onClose={setOpen} className="relative z-40 outline-none">
         <DialogBackdrop className="fixed inset-0 bg-scrim" />
         <DialogPanel className="fixed inset-x-0 bottom-0 rounded-t-3 bg-sheet pb-3 shadow-3">
           <DialogTitle className="px-4 pt-4 pb-2 leading-tight">

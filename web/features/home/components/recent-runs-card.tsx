@@ -2,13 +2,15 @@ import { Link, useNavigate } from 'react-router-dom';
 import type { RunSummary } from '#contract/runs.ts';
 import { ApiError } from '../../../api/api-error.ts';
 import { clockOrDay } from '../../../lib/dates.ts';
-import { exactAmount, moneyRange, moneyRangeParts, shortMoney } from '../../../lib/money.ts';
+import { exactAmount, moneyRangeParts, shortMoney } from '../../../lib/money.ts';
 import { paths } from '../../../paths.ts';
 import { Card } from '../../../ui/card.tsx';
 import { ProblemNotice } from '../../../ui/problem.tsx';
 import { ProgressBar } from '../../../ui/progress-bar.tsx';
 import { EmptyRow, SkeletonRows, Table, Td, Th, Tr } from '../../../ui/table.tsx';
-import { decadeLabel, logScaleFor, type LogScale } from '../log-scale.ts';
+import { percentOf, type Axis } from '../../../ui/charts/axis.ts';
+import { RangeBar } from '../../../ui/charts/range-bar.tsx';
+import { decadeLabel, grossAxis } from '../gross-axis.ts';
 import { RunStateChip } from './run-state-chip.tsx';
 
 const SHOWN = 8;
@@ -26,7 +28,7 @@ interface RecentRunsCardProps {
 export function RecentRunsCard({ runs, loading, error, onRetry, now, withResults }: RecentRunsCardProps) {
   const navigate = useNavigate();
   const shown = runs.slice(0, SHOWN);
-  const scale = withResults ? logScaleFor(shown) : null;
+  const axis = withResults ? grossAxis(shown) : null;
   const columns = withResults ? 6 : 5;
   return (
     <Card
@@ -58,7 +60,11 @@ export function RecentRunsCard({ runs, loading, error, onRetry, now, withResults
               {withResults ? (
                 <>
                   <Th priority={2} className="w-[29%]">
-                    {scale ? <AxisLabels scale={scale} /> : <span className="sr-only">Range</span>}
+                    {axis ? (
+                      <AxisLabels axis={axis} currency={shown[0]?.currency ?? 'USD'} />
+                    ) : (
+                      <span className="sr-only">Range</span>
+                    )}
                   </Th>
                   <Th numeric>Gross, 5–95 %</Th>
                 </>
@@ -95,7 +101,7 @@ export function RecentRunsCard({ runs, loading, error, onRetry, now, withResults
             ) : (
               shown.map((run) => (
                 <Tr key={run.id} onClick={withResults ? () => void navigate(paths.run(run.id)) : undefined}>
-                  <Td priority={2} className="h-11.5 whitespace-nowrap">
+                  <Td priority={2} className="h-11.5! whitespace-nowrap">
                     {withResults ? (
                       <Link
                         to={paths.run(run.id)}
@@ -108,7 +114,7 @@ export function RecentRunsCard({ runs, loading, error, onRetry, now, withResults
                       run.number
                     )}
                   </Td>
-                  <Td className="h-11.5 max-w-56 leading-tight max-md:pl-4">
+                  <Td className="h-11.5! max-w-56 leading-tight max-md:pl-4">
                     <b className="block truncate">{run.portfolioName}</b>
                     <span className="block truncate text-12 text-ink-2">
                       {run.scenarioNames.length > 1
@@ -119,7 +125,7 @@ export function RecentRunsCard({ runs, loading, error, onRetry, now, withResults
                   {withResults ? (
                     <>
                       <Td priority={2}>
-                        <RunRange run={run} scale={scale} />
+                        <RunRange run={run} axis={axis} />
                       </Td>
                       <Td numeric className="font-bold whitespace-nowrap max-rail:text-13">
                         <GrossText run={run} />
@@ -171,63 +177,38 @@ function GrossText({ run }: { run: RunSummary }) {
 
 const SHORT_SCALES: Record<string, string> = { thousand: 'k', million: 'm', billion: 'bn' };
 
-function AxisLabels({ scale }: { scale: LogScale }) {
-  const decades = Array.from({ length: scale.to - scale.from + 1 }, (_, index) => scale.from + index);
+function AxisLabels({ axis, currency }: { axis: Axis; currency: string }) {
   return (
     <span className="flex justify-between" aria-label="Gross on a log axis">
-      {decades.map((power) => (
-        <span key={power} className="flex w-0 justify-center first:justify-start last:justify-end">
-          {decadeLabel(power)}
+      {axis.ticks.map((tick) => (
+        <span key={tick} className="flex w-0 justify-center first:justify-start last:justify-end">
+          {decadeLabel(tick, currency)}
         </span>
       ))}
     </span>
   );
 }
 
-/** Ribbon and thread on the shared log axis; progress while there is no result. */
-function RunRange({ run, scale }: { run: RunSummary; scale: LogScale | null }) {
+/** Ribbon and dot on the shared log axis; progress while there is no result. */
+function RunRange({ run, axis }: { run: RunSummary; axis: Axis | null }) {
   if (run.state === 'waiting' || run.state === 'working')
     return <ProgressBar label={`Run ${run.number}`} done={run.scenariosDone} total={run.scenariosTotal} />;
-  if (!scale || (!run.gross && run.grossPlainMinor === null)) return null;
-  const at = (minor: number) => `${100 * scale.at(minor)}%`;
-  const { gross, grossPlainMinor } = run;
+  if (!axis || (!run.gross && run.grossPlainMinor === null)) return null;
   return (
-    <span
-      className="relative block h-8.5"
-      role="img"
-      aria-label={[
-        gross &&
-          `enhanced ${moneyRange(gross.p5, gross.p95, run.currency)}, central ${shortMoney(gross.p50, run.currency)}`,
-        grossPlainMinor !== null && `plain ${shortMoney(grossPlainMinor, run.currency)}`,
-      ]
-        .filter(Boolean)
-        .join('; ')}
-    >
-      {Array.from({ length: scale.to - scale.from + 1 }, (_, index) => (
+    <span className="relative block">
+      {axis.ticks.map((tick) => (
         <span
-          key={index}
-          className="absolute inset-y-1.5 w-px bg-rule-strong"
-          style={{ left: `${(100 * index) / (scale.to - scale.from)}%` }}
+          key={tick}
+          className="absolute inset-y-0 w-px bg-rule-strong"
+          style={{ left: percentOf(axis.at(tick)) }}
         />
       ))}
-      {gross && (
-        <>
-          <span
-            className="absolute top-[calc(50%-7px)] h-2.5 min-w-1 border-x-2 border-ribbon bg-ribbon-soft"
-            style={{ left: at(gross.p5), right: `${100 - 100 * scale.at(gross.p95)}%` }}
-          />
-          <span
-            className="absolute top-[calc(50%-10px)] h-4 w-0.75 -translate-x-1/2 bg-ribbon"
-            style={{ left: at(gross.p50) }}
-          />
-        </>
-      )}
-      {grossPlainMinor !== null && grossPlainMinor > 0 && (
-        <span
-          className="absolute top-[calc(50%+5px)] size-1.75 -translate-x-1/2 rounded-pill border-[1.5px] border-thread bg-sheet"
-          style={{ left: at(grossPlainMinor) }}
-        />
-      )}
+      <RangeBar
+        axis={axis}
+        enhanced={run.gross}
+        plain={run.grossPlainMinor}
+        format={(minor) => shortMoney(minor, run.currency)}
+      />
     </span>
   );
 }

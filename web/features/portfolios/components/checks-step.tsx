@@ -11,7 +11,7 @@ import { ProblemNotice } from '../../../ui/problem.tsx';
 import { Skeleton } from '../../../ui/skeleton.tsx';
 import { Table, Td, Th, Tr } from '../../../ui/table.tsx';
 import { messagesQuery } from '../edition-queries.ts';
-import { tivText } from '../reconciliation.ts';
+import { siteTiv, tivScale } from '../reconciliation.ts';
 import { EquationCard } from './equation-card.tsx';
 import { FixPreview } from './fix-preview.tsx';
 
@@ -50,6 +50,7 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
   const messages = useQuery(messagesQuery(edition.id));
   const preview = useRef<HTMLDivElement>(null);
   if (!edition.reconciliation) return null;
+  const scale = tivScale(siteTiv(edition.reconciliation), edition.currency);
   const groups = messages.data?.groups ?? [];
   const sections = sectionsOf(groups, edition);
   const inOrder = sections.flatMap((section) => section.groups);
@@ -107,15 +108,15 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
           </p>
         </Card>
       ) : (
-        <div className="grid min-h-0 flex-1 items-start gap-4 wide:grid-cols-[minmax(0,1fr)_minmax(0,0.94fr)] wide:items-stretch">
-          <Card padded={false} className="min-h-0 overflow-y-auto">
+        <div className="grid flex-1 items-start gap-4 wide:min-h-0 wide:grid-cols-[minmax(0,1fr)_minmax(0,0.94fr)] wide:items-stretch">
+          <Card padded={false} className="wide:min-h-0 wide:overflow-y-auto">
             <Table label="Messages by kind">
               <thead>
                 <tr>
                   <Th>Kind of message</Th>
                   <Th numeric>Rows</Th>
                   <Th numeric priority={2}>
-                    TIV, {edition.currency}
+                    TIV, {edition.currency} {scale.unit}
                   </Th>
                   <Th numeric>
                     <span className="sr-only">Fix on offer</span>
@@ -137,7 +138,7 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
                     <GroupRow
                       key={group.code}
                       group={group}
-                      currency={edition.currency}
+                      tiv={scale.text(group.tivMinor)}
                       selected={group.code === open.code}
                       onChoose={() => onChoose(group.code)}
                     />
@@ -157,12 +158,12 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
 
 interface GroupRowProps {
   group: MessageGroup;
-  currency: string;
+  tiv: string;
   selected: boolean;
   onChoose: () => void;
 }
 
-function GroupRow({ group, currency, selected, onChoose }: GroupRowProps) {
+function GroupRow({ group, tiv, selected, onChoose }: GroupRowProps) {
   return (
     <Tr selected={selected} onClick={onChoose}>
       <Td>
@@ -181,7 +182,7 @@ function GroupRow({ group, currency, selected, onChoose }: GroupRowProps) {
         {count(group.rows)}
       </Td>
       <Td numeric priority={2}>
-        {tivText(group.tivMinor, currency)}
+        {tiv}
       </Td>
       <Td numeric className="text-13 font-bold whitespace-nowrap text-link">
         {group.fix?.label ?? <span className="font-normal text-ink-2">See rows</span>}

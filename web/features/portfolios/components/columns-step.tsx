@@ -74,7 +74,7 @@ export function ColumnsStep({ edition, canWrite, onMapped }: ColumnsStepProps) {
           <span>Column and first values</span>
           <span>Our field</span>
         </div>
-        <ul aria-label="Columns of the file">
+        <ul aria-label="Columns of the file" className="max-rail:mt-2 max-rail:border-t max-rail:border-rule">
           {edition.columns.map((column) => (
             <ColumnRow
               key={column.index}
@@ -128,9 +128,6 @@ export function ColumnsStep({ edition, canWrite, onMapped }: ColumnsStepProps) {
             />
           </div>
         </Card>
-        <Card title="Our fields" aside="by need">
-          <FieldsByNeed mapped={mapped} claimed={new Set(claims.keys())} />
-        </Card>
         <div className="flex flex-col gap-2.5 max-rail:sticky max-rail:-bottom-3.5 max-rail:-mx-3.5 max-rail:border-t max-rail:border-rule-strong max-rail:bg-sheet max-rail:p-3.5">
           {[...claims.values()].map((sentence) => (
             <Message key={sentence} tone="error" live={submitted}>
@@ -162,6 +159,9 @@ export function ColumnsStep({ edition, canWrite, onMapped }: ColumnsStepProps) {
             Use this mapping
           </Button>
         </div>
+        <Card title="Our fields" aside="by need">
+          <FieldsByNeed mapped={mapped} claimed={new Set(claims.keys())} />
+        </Card>
       </div>
     </form>
   );

@@ -25,7 +25,9 @@ export function EditionList({ portfolio }: { portfolio: Portfolio }) {
             <Th>State</Th>
             <Th priority={2}>Values as at</Th>
             <Th numeric>Sites</Th>
-            <Th numeric>TIV, {portfolio.currency} m</Th>
+            <Th numeric priority={2}>
+              TIV, {portfolio.currency} m
+            </Th>
             <Th numeric priority={2}>
               Held
             </Th>
@@ -43,7 +45,7 @@ export function EditionList({ portfolio }: { portfolio: Portfolio }) {
               const sum = edition.reconciliation;
               return (
                 <Tr key={edition.id} onClick={() => void navigate(paths.edition(edition.id))}>
-                  <Td className="h-11">
+                  <Td className="h-11!">
                     <Link
                       to={paths.edition(edition.id)}
                       className="font-bold text-ink no-underline hover:underline"
@@ -60,7 +62,9 @@ export function EditionList({ portfolio }: { portfolio: Portfolio }) {
                   </Td>
                   <Td priority={2}>{edition.asAt ? day(edition.asAt) : '–'}</Td>
                   <Td numeric>{sum ? count(siteRows(sum)) : '–'}</Td>
-                  <Td numeric>{sum ? millions(siteTiv(sum), portfolio.currency) : '–'}</Td>
+                  <Td numeric priority={2}>
+                    {sum ? millions(siteTiv(sum), portfolio.currency) : '–'}
+                  </Td>
                   <Td
                     numeric
                     priority={2}

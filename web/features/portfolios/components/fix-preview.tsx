@@ -62,10 +62,10 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
         </>
       }
       aside={`${counted(group.rows, 'row')}, ${shortMoney(group.tivMinor, edition.currency)}`}
-      className="flex max-h-full flex-col overflow-hidden"
+      className="flex flex-col overflow-hidden wide:max-h-full"
     >
       {first && <p className="px-4 pt-1 text-13 text-ink-2">{first.text}</p>}
-      <div className="mt-2.5 min-h-0 flex-1 overflow-y-auto border-t border-rule">
+      <div className="mt-2.5 flex-1 overflow-y-auto border-t border-rule max-wide:max-h-120 wide:min-h-0">
         {rows.isError ? (
           <ProblemNotice
             title="The rows weren’t read"

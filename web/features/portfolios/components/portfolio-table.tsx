@@ -38,7 +38,7 @@ export function PortfolioTable({ portfolios, loading, more, failedMore }: Portfo
               Ready, notes, held by TIV
             </Th>
             <Th numeric>Held</Th>
-            <Th>In work</Th>
+            <Th priority={2}>In work</Th>
           </tr>
         </thead>
         <tbody>
@@ -51,7 +51,7 @@ export function PortfolioTable({ portfolios, loading, more, failedMore }: Portfo
               const chip = draft && stateChip(draft);
               return (
                 <Tr key={portfolio.id} onClick={() => void navigate(paths.portfolio(portfolio.id))}>
-                  <Td className="h-12">
+                  <Td className="h-13!">
                     <Link
                       to={paths.portfolio(portfolio.id)}
                       className="font-bold text-ink no-underline hover:underline"
@@ -59,8 +59,13 @@ export function PortfolioTable({ portfolios, loading, more, failedMore }: Portfo
                     >
                       {portfolio.name}
                     </Link>
-                    <span className="block text-12 text-ink-2 md:hidden">
+                    <span className="flex flex-wrap items-center gap-x-2 gap-y-1 pb-1 text-12 text-ink-2 md:hidden">
                       {current ? `Edition ${current.number}` : 'No sealed edition'}
+                      {chip && (
+                        <Chip tone={chip.tone} icon={chip.icon}>
+                          {chip.text}
+                        </Chip>
+                      )}
                     </span>
                   </Td>
                   <Td priority={2} className="whitespace-nowrap">
@@ -95,7 +100,7 @@ export function PortfolioTable({ portfolios, loading, more, failedMore }: Portfo
                   <Td numeric className={sum && sum.held.rows > 0 ? 'font-bold text-caution' : 'text-ink-2'}>
                     {sum ? count(sum.held.rows) : '–'}
                   </Td>
-                  <Td className="whitespace-nowrap">
+                  <Td priority={2} className="whitespace-nowrap">
                     {draft && chip ? (
                       <Link
                         to={paths.edition(draft.id)}

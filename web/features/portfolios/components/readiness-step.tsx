@@ -3,7 +3,7 @@ import { useQuery } from '@tanstack/react-query';
 import { CircleCheck, Info, TriangleAlert } from 'lucide-react';
 import type { Edition } from '#contract/portfolios.ts';
 import { classNames } from '../../../lib/class-names.ts';
-import { clock, day } from '../../../lib/dates.ts';
+import { clock, shortDay } from '../../../lib/dates.ts';
 import { exactAmount, shortMoney } from '../../../lib/money.ts';
 import { count, counted, percent } from '../../../lib/numbers.ts';
 import { Button } from '../../../ui/button.tsx';
@@ -13,7 +13,7 @@ import { Message } from '../../../ui/message.tsx';
 import { Table, Td, Th, Tr } from '../../../ui/table.tsx';
 import { messagesQuery, useUndoFix } from '../edition-queries.ts';
 import { attributeName, POOR_QUALITIES, QUALITY_NAMES } from '../field-names.ts';
-import { controlVerdict, scoredRows, scoredTiv, tivSentence, tivText } from '../reconciliation.ts';
+import { controlVerdict, scoredRows, scoredTiv, tivSentence, tivScale, siteTiv } from '../reconciliation.ts';
 import { EquationCard } from './equation-card.tsx';
 import { SealCard } from './seal-card.tsx';
 
@@ -72,7 +72,9 @@ interface Bar {
   poor?: boolean;
 }
 
+/** Lengths are relative to the longest bar; the percentages are absolute. */
 function Bars({ bars, tone }: { bars: readonly Bar[]; tone: string }) {
+  const longest = Math.max(...bars.map(({ share }) => share), 1e-9);
   return (
     <ul className="flex flex-col px-4 pt-2">
       {bars.map(({ name, share, sites, poor }) => (
@@ -84,7 +86,7 @@ function Bars({ bars, tone }: { bars: readonly Bar[]; tone: string }) {
           <span className="h-2.5 rounded-[1px] bg-well" aria-hidden>
             <span
               className={classNames('block h-full rounded-[1px]', poor ? 'bg-ceiling' : tone)}
-              style={{ width: `${Math.min(100, share * 100)}%`, minWidth: share > 0 ? 2 : 0 }}
+              style={{ width: `${(100 * share) / longest}%`, minWidth: share > 0 ? 2 : 0 }}
             />
           </span>
           <b className="text-right">{percent(share)}</b>
@@ -237,6 +239,7 @@ function HeldCard({ edition }: { edition: Edition }) {
   const { reconciliation, currency } = edition;
   const held = (data?.groups ?? []).filter(({ severity }) => severity === 'hold');
   if (!reconciliation) return null;
+  const scale = tivScale(siteTiv(reconciliation), currency);
   if (reconciliation.held.rows === 0)
     return (
       <Card title="Held, goes forward unscored">
@@ -264,7 +267,7 @@ function HeldCard({ edition }: { edition: Edition }) {
                 {count(group.rows)}
               </Td>
               <Td numeric className="h-8.25! text-13 whitespace-nowrap">
-                {tivText(group.tivMinor, currency)}
+                {scale.text(group.tivMinor)} {scale.unit}
               </Td>
             </Tr>
           ))}
@@ -303,16 +306,25 @@ function CorrectionsCard({ edition, canWrite }: { edition: Edition; canWrite: bo
     >
       <ul className="mt-1.5 px-4 pb-2 text-13">
         {edition.fixes.map((fix) => (
-          <li key={fix.id} className="flex items-center gap-3 border-t border-rule py-1.75 first:border-t-0">
-            <span className="min-w-0 flex-1">
+          <li
+            key={fix.id}
+            className="grid grid-cols-[minmax(0,1fr)_auto] items-center gap-x-3 border-t border-rule py-1.75 first:border-t-0"
+          >
+            <span>
               {CORRECTION_NAMES[fix.kind]} <span className="text-12 text-ink-2">{fix.code}</span>
-              <span className="block text-12 text-ink-2">
-                “{fix.reason}” {fix.by}, {day(fix.at)} {clock(fix.at)} UTC
-              </span>
             </span>
-            <span className="whitespace-nowrap text-ink-2">{counted(fix.rows, 'row')}</span>
+            <span className="text-right whitespace-nowrap text-ink-2">{counted(fix.rows, 'row')}</span>
+            <span className="text-12 text-ink-2">
+              “{fix.reason}” {fix.by}, {shortDay(fix.at)} {clock(fix.at)} UTC
+            </span>
             {canWrite && fix.id === last && (
-              <Button size="small" variant="quiet" pending={undo.isPending} onClick={() => undo.mutate(undefined)}>
+              <Button
+                size="small"
+                variant="quiet"
+                className="-mr-2"
+                pending={undo.isPending}
+                onClick={() => undo.mutate(undefined)}
+              >
                 Undo
               </Button>
             )}

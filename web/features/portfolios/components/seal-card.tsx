@@ -10,6 +10,7 @@ import {
   type LucideIcon,
 } from 'lucide-react';
 import type { Edition } from '#contract/portfolios.ts';
+import { day } from '../../../lib/dates.ts';
 import { shortMoney } from '../../../lib/money.ts';
 import { counted, percent } from '../../../lib/numbers.ts';
 import { Button } from '../../../ui/button.tsx';
@@ -71,7 +72,7 @@ export function SealCard({ edition, canWrite, onSealed }: SealCardProps) {
     <form
       noValidate
       aria-labelledby={titleId}
-      className="flex flex-col rounded-3 border border-rule-strong bg-sheet px-4.5 pt-3.5 pb-4.5 shadow-2 print:hidden"
+      className="flex flex-col rounded-3 border border-rule-strong bg-sheet px-4.5 pt-3.5 pb-4.5 shadow-2 wide:sticky wide:top-0 wide:min-h-158 wide:self-start print:hidden"
       onSubmit={(event) => {
         event.preventDefault();
         submit();
@@ -88,6 +89,7 @@ export function SealCard({ edition, canWrite, onSealed }: SealCardProps) {
         label="Values as at"
         aside="printed on every result"
         type="date"
+        hint={asAt === '' ? undefined : day(asAt)}
         max={today()}
         value={asAt}
         onChange={(event) => setAsAt(event.target.value)}
@@ -135,8 +137,8 @@ export function SealCard({ edition, canWrite, onSealed }: SealCardProps) {
         <ul className="text-13">
           <Effect icon={Lock}>
             Fixes the {counted(sum.fileRows, 'row')}
-            {edition.fixes.length > 0 && ` and the ${counted(edition.fixes.length, 'correction')}`}. A later change
-            makes edition {edition.number + 1}.
+            {edition.fixes.length > 0 && ` and ${counted(edition.fixes.length, 'correction')}`}. A later change makes
+            edition {edition.number + 1}.
           </Effect>
           <Effect icon={Layers}>
             Makes edition {edition.number} the current one. Earlier editions and their runs stay readable.
@@ -147,7 +149,7 @@ export function SealCard({ edition, canWrite, onSealed }: SealCardProps) {
           <Effect icon={CircleDollarSign}>Costs nothing. A run is quoted before it starts.</Effect>
         </ul>
       </div>
-      <div className="mt-auto pt-4 max-rail:fixed max-rail:inset-x-0 max-rail:bottom-[calc(3.625rem+2rem)] max-rail:z-10 max-rail:flex max-rail:items-center max-rail:gap-2.5 max-rail:border-t max-rail:border-rule-strong max-rail:bg-sheet max-rail:px-3.5 max-rail:py-2.25">
+      <div className="mt-auto pt-4 max-rail:fixed max-rail:inset-x-0 max-rail:bottom-[calc(3.625rem+2.875rem)] max-rail:z-10 max-rail:flex max-rail:items-center max-rail:gap-2.5 max-rail:border-t max-rail:border-rule-strong max-rail:bg-sheet max-rail:px-3.5 max-rail:py-2.25">
         {seal.isError ? (
           <Message tone="error" className="mb-2.5 max-rail:mb-0 max-rail:flex-1">
             {seal.error.message}

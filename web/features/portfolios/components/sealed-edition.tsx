@@ -8,7 +8,7 @@ export function SealedEdition({ edition }: { edition: Edition }) {
   const [search, setSearch] = useSearchParams();
   const wanted = search.get('rows');
   return (
-    <div className="flex min-h-0 flex-1 flex-col gap-3.5">
+    <div className="flex flex-col gap-3.5 wide:min-h-0 wide:flex-1">
       {edition.reconciliation && (
         <EquationCard
           reconciliation={edition.reconciliation}

@@ -44,7 +44,7 @@ export function SitesPanel({ edition, filter, onFilter }: SitesPanelProps) {
     set_aside: sum?.setAside.rows ?? 0,
   };
   return (
-    <Card padded={false} className="flex min-h-0 flex-col">
+    <Card padded={false} className="flex flex-col wide:min-h-0">
       <div className="flex flex-wrap items-center gap-2.5 border-b border-rule px-4 py-2.5">
         <h2 className="text-15">Rows of the file</h2>
         <div className="ml-auto max-w-full overflow-x-auto">
@@ -68,7 +68,7 @@ export function SitesPanel({ edition, filter, onFilter }: SitesPanelProps) {
           className="m-4"
         />
       ) : (
-        <div className="min-h-0 flex-1 overflow-y-auto">
+        <div className="flex-1 wide:min-h-0 wide:overflow-y-auto">
           {rows.isFetchNextPageError && (
             <TableBanner onRetry={() => void rows.fetchNextPage()}>The next rows didn’t load.</TableBanner>
           )}
