@@ -86,9 +86,9 @@ export class LedgerStore {
     orgId: string,
     runId: string,
   ): Promise<{ reservedMinor: number; known: boolean; settled: boolean }> {
-    const rows = await tx<{ kind: Movement['kind']; amount_minor: string }>('ledger_entries')
+    const rows = await tx('ledger_entries')
       .where({ org_id: orgId, run_id: runId, account: 'reserved' })
-      .select('kind', 'amount_minor');
+      .select<{ kind: Movement['kind']; amount_minor: string }[]>('kind', 'amount_minor');
     return {
       reservedMinor: rows.reduce((sum, row) => sum + toMinor(row.amount_minor), 0),
       known: rows.length > 0,

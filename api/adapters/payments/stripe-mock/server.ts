@@ -31,8 +31,10 @@ type ApiError = { type: string; message: string; code?: string; param?: string }
 
 const folder = (path: string) => fileURLToPath(new URL(path, import.meta.url));
 const text = (value: Form[string]): string | null => (typeof value === 'string' ? value : null);
-const form = (value: Form[string]): Form =>
-  typeof value === 'object' && !Array.isArray(value) ? value : Array.isArray(value) ? ({ ...value } as Form) : {};
+const form = (value: Form[string]): Form => {
+  if (Array.isArray(value)) return Object.fromEntries(value.map((cell, index) => [String(index), cell]));
+  return typeof value === 'object' ? value : {};
+};
 const metadataOf = (value: Form[string]): Metadata =>
   Object.fromEntries(
     Object.entries(form(value)).flatMap(([key, cell]) => (typeof cell === 'string' ? [[key, cell]] : [])),
@@ -95,7 +97,7 @@ export const createStripeMock = (settings: StripeMockSettings): StripeMock => {
 
   const app = express();
   app.disable('x-powered-by');
-  app.use((req, res, next) => {
+  app.use((_req, res, next) => {
     res.set({
       'request-id': `req_${randomBytes(8).toString('hex')}`,
       'content-security-policy': "default-src 'none'; style-src 'self'; font-src 'self'; base-uri 'none'",

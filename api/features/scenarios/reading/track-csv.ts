@@ -5,6 +5,7 @@ import type { Averaging, Fix } from '#contract/scenarios.ts';
 import { METRES_PER_NAUTICAL_MILE, MS_PER_KMH, MS_PER_KNOT, MS_PER_MPH, PA_PER_HPA } from '#engine/units.ts';
 import { coordinate, decimal, isMissing, pickStorm, quoted, type StormText } from './storm-text.ts';
 
+type Line = { cells: string[]; line: number };
 type Seconds = z.infer<typeof Averaging>;
 type NumberField = Exclude<keyof Fix, 'time' | 'latitude' | 'longitude' | 'radius64KtM'>;
 type Column = { field: NumberField; factor: number; conversion: string | null };
@@ -98,9 +99,9 @@ export const readTrackCsv = (text: string, asked?: string): StormText => {
   const delimiter = [',', ';', '\t'].reduce((best, mark) =>
     header.split(mark).length > header.split(best).length ? mark : best,
   );
-  let records: { cells: string[]; line: number }[];
+  let records: Line[];
   try {
-    records = parse(text, {
+    const parsed: unknown = parse(text, {
       bom: true,
       delimiter,
       comment: '#',
@@ -109,7 +110,12 @@ export const readTrackCsv = (text: string, asked?: string): StormText => {
       skip_empty_lines: true,
       relax_column_count: true,
       info: true,
-    }).map(({ record, info }: { record: string[]; info: { lines: number } }) => ({ cells: record, line: info.lines }));
+    });
+    // The parser's types don't know its `info` option, which wraps each record with its line number.
+    records = (parsed as { record: string[]; info: { lines: number } }[]).map(({ record, info }) => ({
+      cells: record,
+      line: info.lines,
+    }));
   } catch (error) {
     faults.push({ path: 'text', message: `The text isn’t a readable table: ${(error as Error).message}.` });
     return nothing;

@@ -1,0 +1,68 @@
+import type { Track } from '#contract/scenarios.ts';
+import { toInstantOrNull } from '../../db/mapping.ts';
+import type { Tx } from '../../transact.ts';
+import { averagingConversion } from './track-rules.ts';
+
+/** A version as a run needs it: what is computed, and what the run slip says about it. */
+export type RunTrack = {
+  id: string;
+  scenarioId: string;
+  name: string;
+  number: number;
+  track: Track;
+  digest: string;
+  /** What happens to the winds on their way to 1 min, in words. */
+  conversion: string;
+  asOf: string | null;
+  /** Continuous longitudes, [longitude, latitude] each half hour. */
+  path: [number, number][];
+};
+
+type Row = {
+  id: string;
+  scenario_id: string;
+  name: string;
+  number: number;
+  track: Track;
+  digest: string;
+  as_of: Date | null;
+  path: [number, number][];
+};
+
+/** Answers runs: which tracks are these versions? */
+export class ScenarioReader {
+  /** In the order asked for; versions of other organisations and unknown ones are left out. */
+  async versions(tx: Tx, orgId: string, ids: readonly string[]): Promise<RunTrack[]> {
+    const rows = await tx('scenario_versions as version')
+      .join('scenarios', 'scenarios.id', 'version.scenario_id')
+      .where('version.org_id', orgId)
+      .whereIn('version.id', [...ids])
+      .select<Row[]>(
+        'version.id',
+        'version.scenario_id',
+        'scenarios.name',
+        'version.number',
+        'version.track',
+        'version.digest',
+        'version.as_of',
+        tx.raw(`version.resolution -> 'path' as path`),
+      );
+    const found = new Map(
+      rows.map((row): [string, RunTrack] => [
+        row.id,
+        {
+          id: row.id,
+          scenarioId: row.scenario_id,
+          name: row.name,
+          number: row.number,
+          track: row.track,
+          digest: row.digest,
+          conversion: averagingConversion(row.track),
+          asOf: toInstantOrNull(row.as_of),
+          path: row.path,
+        },
+      ]),
+    );
+    return ids.flatMap((id) => found.get(id) ?? []);
+  }
+}
