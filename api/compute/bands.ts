@@ -4,8 +4,8 @@ import type { FootprintGrid } from '#engine/footprint/grid.ts';
 
 /** Lower edges of the gust bands [m/s]: the fourteen steps of the legend, the last one open upwards. */
 export const GUST_LEVELS: readonly number[] = Array.from({ length: 14 }, (_, k) => 20 + 5 * k);
-/** Lower edges of the difference bands [m/s]: eleven steps symmetric about the one from -0.25 to 0.25. */
-export const DIFFERENCE_LEVELS: readonly number[] = Array.from({ length: 11 }, (_, k) => -2.75 + 0.5 * k);
+/** Lower edges of the difference bands [m/s]: eleven steps of 1 m/s, symmetric about the one from -0.5 to 0.5. */
+export const DIFFERENCE_LEVELS: readonly number[] = Array.from({ length: 11 }, (_, k) => -5.5 + k);
 
 /** Below every level, yet finite, so that contours of different levels never share a point where the field breaks off. */
 const NOTHING = -1e9;
