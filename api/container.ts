@@ -1,0 +1,164 @@
+import { fileURLToPath } from 'node:url';
+import type { Router } from 'express';
+import type { Knex } from 'knex';
+import pino, { type Logger } from 'pino';
+import { PostgresBlobs } from './adapters/blobs/postgres-blobs.ts';
+import { listLetters } from './adapters/mail/sink/letters.ts';
+import { SmtpMail } from './adapters/mail/smtp-mail.ts';
+import { StripePayments } from './adapters/payments/stripe.ts';
+import type { AppParts } from './app.ts';
+import { landIndex } from './compute/land.ts';
+import type { Config } from './config.ts';
+import { createDatabase } from './db/database.ts';
+import { AuditLog } from './features/audit/audit-log.ts';
+import { BillingService } from './features/billing/billing-service.ts';
+import { billingRoutes } from './features/billing/billing-routes.ts';
+import { ChargesReader } from './features/billing/charges-reader.ts';
+import { LedgerService } from './features/billing/ledger-service.ts';
+import { LedgerStore } from './features/billing/ledger-store.ts';
+import { PaymentSettlement } from './features/billing/payment-settlement.ts';
+import { PaymentStore } from './features/billing/payment-store.ts';
+import { TariffStore } from './features/billing/tariff-store.ts';
+import { paymentWebhookRoutes } from './features/billing/webhook-routes.ts';
+import { calibrationRoutes } from './features/calibrations/calibration-routes.ts';
+import { CalibrationService } from './features/calibrations/calibration-service.ts';
+import { CalibrationStore } from './features/calibrations/calibration-store.ts';
+import { curveRoutes } from './features/curves/curve-routes.ts';
+import { CurveService } from './features/curves/curve-service.ts';
+import { CurveStore } from './features/curves/curve-store.ts';
+import { scenarioRoutes } from './features/scenarios/scenario-routes.ts';
+import { ScenarioService } from './features/scenarios/scenario-service.ts';
+import { ScenarioStore } from './features/scenarios/scenario-store.ts';
+import { AccessClaims, TOKEN_ALGORITHM, TOKEN_ISSUER } from './features/session/access-token.ts';
+import { sessionRoutes } from './features/session/session-routes.ts';
+import { SessionService } from './features/session/session-service.ts';
+import { SessionStore } from './features/session/session-store.ts';
+import { signInCheck } from './http/auth.ts';
+import { SessionCookies } from './http/cookies.ts';
+import { csrfCheck } from './http/csrf.ts';
+import { createOnce } from './http/idempotency.ts';
+import { DEFAULT_LIMITS, limitSignIn, type Limits } from './http/limits.ts';
+import { mailPage } from './http/pages.ts';
+import { Outbox } from './jobs/outbox.ts';
+import { Queue } from './jobs/queue.ts';
+import type { Blobs } from './ports/blobs.ts';
+import { systemClock, type Clock } from './ports/clock.ts';
+import { randomIds, type Ids } from './ports/ids.ts';
+import type { Mail } from './ports/mail.ts';
+import type { Payments } from './ports/payments.ts';
+import { createTransact, type Transact } from './transact.ts';
+
+/** What tests put in the place of the real thing. */
+export interface Overrides {
+  clock?: Clock;
+  ids?: Ids;
+  mail?: Mail;
+  blobs?: Blobs;
+  payments?: Payments;
+  limits?: Limits;
+  log?: Logger;
+}
+
+export interface Container {
+  config: Config;
+  log: Logger;
+  database: Knex;
+  transact: Transact;
+  queue: Queue;
+  clock: Clock;
+  ids: Ids;
+  mail: Mail;
+  blobs: Blobs;
+  audit: AuditLog;
+  outbox: Outbox;
+  appParts: AppParts;
+  close(): Promise<void>;
+}
+
+const SECRET_PATHS = [
+  'password',
+  '*.password',
+  'token',
+  '*.token',
+  '*.refreshToken',
+  '*.accessToken',
+  'headers',
+  '*.headers',
+];
+
+const createLog = (level: string): Logger =>
+  pino({ level, base: { service: 'gustloom' }, redact: { paths: SECRET_PATHS, censor: '[kept back]' } });
+
+/** The composition root: builds everything once, hands each part what it needs. `role` says which process it is for. */
+export const createContainer = (config: Config, role: 'api' | 'worker', overrides: Overrides = {}): Container => {
+  const log = overrides.log ?? createLog(config.logLevel);
+  const clock = overrides.clock ?? systemClock;
+  const ids = overrides.ids ?? randomIds;
+  const mail = overrides.mail ?? new SmtpMail(config.mail.smtpUrl, config.mail.from);
+  const limits = overrides.limits ?? DEFAULT_LIMITS;
+  const isProduction = config.environment === 'production';
+
+  const database = createDatabase(config.databaseUrl);
+  const transact = createTransact(database);
+  const queue = new Queue({ databaseUrl: config.databaseUrl, log, supervise: role === 'worker' });
+  const blobs = overrides.blobs ?? new PostgresBlobs(transact);
+  const audit = new AuditLog(clock, ids);
+  const outbox = new Outbox(queue, clock, ids);
+
+  const cookies = new SessionCookies(isProduction);
+  const sessions = new SessionService(transact, new SessionStore(database), audit, clock, ids, config);
+
+  // Scenarios, curves, calibrations
+  const scenarios = new ScenarioService(transact, new ScenarioStore(), landIndex, { clock, ids, audit });
+  const curves = new CurveService(transact, new CurveStore());
+  const calibrations = new CalibrationService(transact, new CalibrationStore());
+
+  // Billing; the ledger is what runs reserve and settle with
+  const payments = overrides.payments ?? new StripePayments(config.stripe);
+  const billingStores = { ledger: new LedgerStore(), payments: new PaymentStore(), charges: new ChargesReader() };
+  const ledger = new LedgerService(billingStores.ledger, new TariffStore(), clock, ids);
+  const settlement = new PaymentSettlement(transact, billingStores.payments, ledger, payments, clock, audit);
+  const billing = new BillingService(transact, ledger, billingStores, payments, settlement, {
+    ...{ clock, ids },
+    publicUrl: config.publicUrl,
+  });
+
+  const routers: Router[] = [
+    sessionRoutes(sessions, cookies, limitSignIn(limits)),
+    scenarioRoutes(scenarios),
+    curveRoutes(curves),
+    calibrationRoutes(calibrations),
+    billingRoutes(billing),
+  ];
+  const rawRouters: Router[] = [paymentWebhookRoutes(settlement)];
+  const { sinkFolder } = config.mail;
+  const devRouters: Router[] = !isProduction && sinkFolder ? [mailPage(() => listLetters(sinkFolder))] : [];
+
+  return {
+    ...{ config, log, database, transact, queue, clock, ids, mail, blobs, audit, outbox },
+    appParts: {
+      ...{ log, limits, isProduction, routers, rawRouters, devRouters },
+      publicUrl: config.publicUrl,
+      trustedProxies: config.trustedProxies,
+      signInCheck: signInCheck(
+        { secret: config.tokenSecret, issuer: TOKEN_ISSUER, algorithm: TOKEN_ALGORITHM },
+        async (claims) => {
+          const known = AccessClaims.safeParse(claims);
+          return known.success ? sessions.identify(known.data) : null;
+        },
+      ),
+      csrfCheck: csrfCheck((sessionId) => sessions.csrfTokenFor(sessionId)),
+      once: createOnce(transact, clock),
+      isHealthy: () =>
+        database.raw('select 1').then(
+          () => true,
+          () => false,
+        ),
+      webFolder: fileURLToPath(new URL('../dist/web', import.meta.url)),
+    },
+    close: async () => {
+      await queue.stop();
+      await database.destroy();
+    },
+  };
+};

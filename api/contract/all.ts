@@ -1,0 +1,20 @@
+import * as billing from './billing.ts';
+import type { Endpoint } from './endpoint.ts';
+import * as models from './models.ts';
+import * as portfolios from './portfolios.ts';
+import * as runs from './runs.ts';
+import * as scenarios from './scenarios.ts';
+import * as session from './session.ts';
+
+const isEndpoint = (value: unknown): value is Endpoint =>
+  typeof value === 'object' &&
+  value !== null &&
+  'id' in value &&
+  'method' in value &&
+  'path' in value &&
+  'access' in value;
+
+/** Every operation of the API; a new contract file is added to this list. */
+export const ALL_ENDPOINTS: readonly Endpoint[] = [session, portfolios, scenarios, models, runs, billing].flatMap(
+  (file) => Object.values<unknown>(file).filter(isEndpoint),
+);

@@ -1,0 +1,36 @@
+import { AppError } from '../errors.ts';
+
+type CursorPart = string | number;
+
+/** Where a list's next page starts, as an opaque word. */
+export const encodeCursor = (...parts: CursorPart[]): string =>
+  Buffer.from(JSON.stringify(parts)).toString('base64url');
+
+/** The parts of a cursor we gave out; anything else is refused, never guessed at. */
+export const decodeCursor = (cursor: string, length: number): CursorPart[] => {
+  try {
+    const parts: unknown = JSON.parse(Buffer.from(cursor, 'base64url').toString('utf8'));
+    if (
+      Array.isArray(parts) &&
+      parts.length === length &&
+      parts.every((part) => typeof part === 'string' || typeof part === 'number')
+    )
+      return parts as CursorPart[];
+  } catch {
+    // Refused below, like any other word that isn't ours.
+  }
+  throw new AppError('invalid_request', 'This list can’t be continued from there. Load it again from its start.', {
+    faults: [{ path: 'query.cursor', message: 'The cursor isn’t one of ours.' }],
+  });
+};
+
+/** Cuts rows read with `limit + 1` into a page. */
+export const pageFrom = <Row>(
+  rows: Row[],
+  limit: number,
+  cursorOf: (row: Row) => string,
+): { items: Row[]; nextCursor: string | null } => {
+  const items = rows.slice(0, limit);
+  const last = items.at(-1);
+  return { items, nextCursor: rows.length > limit && last !== undefined ? cursorOf(last) : null };
+};

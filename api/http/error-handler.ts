@@ -1,0 +1,59 @@
+import type { ErrorRequestHandler, RequestHandler } from 'express';
+import type { Logger } from 'pino';
+import type { ErrorCode } from '#contract/errors.ts';
+import { AppError } from '../errors.ts';
+import { toProblem } from './problem.ts';
+
+/** What Express and its parsers throw, in our words. Their own messages may name files of the server. */
+const BODY_FAULTS: Record<string, [ErrorCode, string]> = {
+  'entity.parse.failed': ['invalid_request', 'The body isn’t valid JSON.'],
+  'entity.too.large': ['file_too_large', 'The request is larger than this address takes.'],
+  'encoding.unsupported': ['invalid_request', 'The body’s encoding isn’t supported; send UTF-8.'],
+  'charset.unsupported': ['invalid_request', 'The body’s character set isn’t supported; send UTF-8.'],
+  'request.size.invalid': ['invalid_request', 'The body is shorter or longer than announced.'],
+  'request.aborted': ['invalid_request', 'The request ended before its body did.'],
+};
+
+const fromMiddleware = (error: unknown): AppError | null => {
+  if (typeof error !== 'object' || error === null) return null;
+  const { type, status, code } = error as { type?: string; status?: number; code?: string };
+  if (code === 'LIMIT_FILE_SIZE')
+    return new AppError('file_too_large', 'The file is larger than this address takes. Split it and upload the parts.');
+  if (code?.startsWith('LIMIT_')) return new AppError('invalid_request', 'Send one file in the field “file”.');
+  const known = type === undefined ? undefined : BODY_FAULTS[type];
+  if (known) return new AppError(known[0], known[1], { cause: error });
+  if (error instanceof URIError || (status !== undefined && status >= 400 && status < 500))
+    return new AppError(status === 404 ? 'not_found' : 'invalid_request', 'The request couldn’t be read.', {
+      cause: error,
+    });
+  return null;
+};
+
+/** Nothing answered at this address. */
+export const noSuchAddress: RequestHandler = () => {
+  throw new AppError('not_found', 'There is nothing at this address.');
+};
+
+/** The one place where errors become replies: problem details for what a caller can act on, `internal` for defects. */
+export const errorHandler =
+  (log: Logger): ErrorRequestHandler =>
+  (error: unknown, req, res, _next) => {
+    const known = error instanceof AppError ? error : fromMiddleware(error);
+    const requestId = req.requestId ?? '';
+    if (!known) log.error({ err: error, requestId, method: req.method, path: req.path }, 'request failed');
+    if (res.headersSent) {
+      // A reply already under way can only be cut off, so that nobody takes half of it for the whole.
+      res.destroy();
+      return;
+    }
+    const problem = known
+      ? toProblem(known.code, known.message, requestId, known.faults)
+      : toProblem(
+          'internal',
+          `The request couldn’t be carried out. Try again; if it stays, tell us the number ${requestId}.`,
+          requestId,
+        );
+    if (known?.retryAfterS != null) res.set('Retry-After', String(Math.ceil(known.retryAfterS)));
+    res.removeHeader('Content-Disposition');
+    res.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
+  };

@@ -1,0 +1,20 @@
+import { readConfig } from './config.ts';
+import { createContainer } from './container.ts';
+import { registerOutboxJobs } from './jobs/outbox.ts';
+import { Reaper } from './jobs/reaper.ts';
+import { whenAskedToStop } from './stopping.ts';
+
+const config = readConfig(process.env);
+const container = createContainer(config, 'worker');
+const { queue, transact, mail, clock, log } = container;
+await queue.start();
+await registerOutboxJobs(queue, { transact, mail, clock });
+
+const reaper = new Reaper(config.databaseUrl, log);
+reaper.start();
+process.send?.('ready');
+
+whenAskedToStop(log, async () => {
+  await reaper.stop();
+  await container.close();
+});
