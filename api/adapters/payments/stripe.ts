@@ -5,8 +5,8 @@ import type { Checkout, CheckoutRequest, PaymentEvent, Payments, PaymentState } 
 export type StripeSettings = {
   secretKey: string;
   webhookSecret: string;
-  /** Base address of a local stand-in; left out, the SDK talks to Stripe itself. */
-  apiUrl?: string | undefined;
+  /** Base address of a local stand-in; null, the SDK talks to Stripe itself. */
+  apiUrl: string | null;
 };
 
 const OPEN: PaymentState = { outcome: 'open', reason: null, amountMinor: null, currency: null };
