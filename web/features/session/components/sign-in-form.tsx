@@ -67,7 +67,7 @@ export function SignInForm({ onSignedIn }: { onSignedIn: (session: Session) => v
           />
           <button
             type="button"
-            aria-pressed={shown}
+            aria-label={shown ? 'Hide password' : 'Show password'}
             onClick={() => setShown(!shown)}
             className="absolute top-6.5 right-2 flex h-9 items-center gap-1.5 rounded-1 bg-sheet px-1.5 text-13 font-bold text-link"
           >
@@ -77,7 +77,6 @@ export function SignInForm({ onSignedIn }: { onSignedIn: (session: Session) => v
               <Eye size={16} strokeWidth={1.75} aria-hidden />
             )}
             {shown ? 'Hide' : 'Show'}
-            <span className="sr-only"> password</span>
           </button>
         </div>
         <Button
