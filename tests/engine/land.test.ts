@@ -233,6 +233,7 @@ describe('land anywhere on the sphere', () => {
       expect(isLand(cap, -69.9, longitude)).toBe(false);
       expect(fetches(cap, -89.9, longitude)).toEqual([1e5, 1e5, 1e5, 1e5, 1e5, 1e5, 1e5, 1e5]);
       expect(fetches(cap, -70.5, longitude)[0]).toBeCloseTo(0.5 * DEGREE, 0);
+      expect(fetches(cap, -70.5, longitude)[2]).toBe(1e5);
       expect(distanceToLandM(cap, -69.9, longitude)).toBeCloseTo(0.1 * DEGREE, -1);
       expect(distanceToLandM(cap, -89.9, longitude)).toBe(-Infinity);
     }

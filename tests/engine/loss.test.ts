@@ -270,7 +270,7 @@ describe('losses of all draws', () => {
   const spread = (low: number, high: number) =>
     Float64Array.from({ length: 264 }, (_, d) => low + ((high - low) * ((d * 97) % 264)) / 263);
 
-  it('agree with the direct form to 1e-9', () => {
+  it('agree with the direct form to 2e-10', () => {
     const span = fc.tuple(between(20, 90), between(0, 45));
     const policy = fc.oneof(
       fc.tuple(between(0, 5e4), between(1e5, 1.2e6)),
@@ -285,7 +285,7 @@ describe('losses of all draws', () => {
           const mu = meanDamage(curve, gust);
           const direct = expectedGross(mu, 1e6, deductible, limit);
           expect(groundUp[d]).toBe(mu * 1e6);
-          expect(Math.abs(gross[d]! - direct)).toBeLessThanOrEqual(1e-9 * direct);
+          expect(Math.abs(gross[d]! - direct)).toBeLessThanOrEqual(2e-10 * direct);
         });
       }),
       { numRuns: 300 },
@@ -323,17 +323,24 @@ describe('losses of all draws', () => {
 
   it('rounded to 1/1024, add up to the same total in any order and grouping', () => {
     fc.assert(
-      fc.property(fc.array(between(0, 1e7), { minLength: 2, maxLength: 200 }), fc.nat(), (losses, seed) => {
-        const rounded = losses.map(quantisedLoss);
-        rounded.forEach((loss, k) => expect(Math.abs(loss - losses[k]!)).toBeLessThanOrEqual(LOSS_QUANTUM / 2));
-        const sum = (list: number[]) => list.reduce((a, b) => a + b, 0);
-        const shuffled = rounded
-          .map((loss, k) => ({ loss, key: (k * 7919 + seed) % 211 }))
-          .sort((a, b) => a.key - b.key);
-        const cut = seed % rounded.length;
-        expect(sum(shuffled.map(({ loss }) => loss))).toBe(sum(rounded));
-        expect(sum(rounded.slice(cut)) + sum(rounded.slice(0, cut))).toBe(sum(rounded));
-      }),
+      fc.property(
+        fc.array(
+          between(0, 1e6).map((v) => v * Math.PI),
+          { minLength: 2, maxLength: 200 },
+        ),
+        fc.nat(),
+        (losses, seed) => {
+          const rounded = losses.map(quantisedLoss);
+          rounded.forEach((loss, k) => expect(Math.abs(loss - losses[k]!)).toBeLessThanOrEqual(LOSS_QUANTUM / 2));
+          const sum = (list: number[]) => list.reduce((a, b) => a + b, 0);
+          const shuffled = rounded
+            .map((loss, k) => ({ loss, key: (k * 7919 + seed) % 211 }))
+            .sort((a, b) => a.key - b.key);
+          const cut = seed % rounded.length;
+          expect(sum(shuffled.map(({ loss }) => loss))).toBe(sum(rounded));
+          expect(sum(rounded.slice(cut)) + sum(rounded.slice(0, cut))).toBe(sum(rounded));
+        },
+      ),
     );
   });
 });

@@ -12,9 +12,6 @@ export type Area = { readonly west: number; readonly south: number; readonly eas
 export type StrongWindArea = Area & {
   /** True when the storm may reach the gust floor outside the rectangle too. */
   readonly isPartial: boolean;
-  /** First and last position in Storm.outer between which the floor can be reached inside the rectangle. */
-  readonly firstOuter: number;
-  readonly lastOuter: number;
 };
 
 // Peak 3-s gust over the 10-min mean at sea near the floor; over land the mean falls by more than the factor rises.
@@ -29,20 +26,19 @@ const SPACING_S = 1800;
  * storm reaches it, else everywhere or, where that exceeds `mostArea`, near land. What still exceeds it is cut down to the
  * part around the strongest wind.
  *
- * @param storm    The storm.
+ * @param circles  Circles from floorCircles.
  * @param land     Land polygons.
  * @param focus    Rectangle of interest [deg], null for none.
  * @param mostArea Greatest area wanted [deg²], above 0.
  * @returns The rectangle; null when the storm never reaches the floor.
- * @source Circles of the floor around the centre: symmetric vortex plus the whole motion wind.
+ * @source Product rule.
  */
 export function strongWindArea(
-  storm: Storm,
+  circles: readonly FloorCircle[],
   land: LandIndex,
   focus: Area | null,
   mostArea: number,
 ): StrongWindArea | null {
-  const circles = floorCircles(storm);
   if (circles.length === 0) return null;
   const wide = focus && grown(focus, FOCUS_MARGIN_DEG);
   const near = wide
@@ -75,29 +71,48 @@ export function strongWindArea(
       canGrow = true;
     }
   }
-  const meeting = circles.filter((circle) => common(circle.area, area));
-  return {
-    ...area,
-    isPartial: circles.some((circle) => size(hull(area, circle.area)) > size(area)),
-    firstOuter: meeting[0]!.previous,
-    lastOuter: meeting[meeting.length - 1]!.next,
-  };
+  return { ...area, isPartial: circles.some((circle) => size(hull(area, circle.area)) > size(area)) };
 }
 
-type Circle = {
-  latitude: number;
-  longitude: number;
-  radius: number;
-  wind: number;
-  area: Area;
+/**
+ * The times between which the storm can reach the floor inside a rectangle.
+ *
+ * @param circles Circles from floorCircles.
+ * @param area    The rectangle [deg].
+ * @returns First and last position in Storm.outer; null when it never does.
+ * @source Circles that meet the rectangle, and one more on either side.
+ */
+export function outerTimesOver(circles: readonly FloorCircle[], area: Area): [number, number] | null {
+  const meeting = circles.filter((circle) => common(circle.area, area));
+  return meeting.length === 0 ? null : [meeting[0]!.previous, meeting[meeting.length - 1]!.next];
+}
+
+/** Circle around the centre at one time, within which the plain gust can reach the floor. */
+export type FloorCircle = {
+  /** [deg] */
+  readonly latitude: number;
+  /** [deg], continuous along the track. */
+  readonly longitude: number;
+  /** [m] */
+  readonly radius: number;
+  /** Strongest 10-min mean over the sea [m s⁻¹]. */
+  readonly wind: number;
+  /** Rectangle around the circle. */
+  readonly area: Area;
   /** Positions in Storm.outer of the times looked at before and after this one. */
-  previous: number;
-  next: number;
+  readonly previous: number;
+  readonly next: number;
 };
 
-/** Circles around the centre within which the gust can reach the floor, in order of time, longitudes continuous. */
-function floorCircles(storm: Storm): Circle[] {
-  const circles: Circle[] = [];
+/**
+ * Circles around the centre within which the gust can reach the floor, every half hour.
+ *
+ * @param storm The storm.
+ * @returns Circles in order of time; none where the storm is too weak.
+ * @source Symmetric vortex plus the whole motion wind, times a gust factor that is not exceeded near the floor.
+ */
+export function floorCircles(storm: Storm): FloorCircle[] {
+  const circles: FloorCircle[] = [];
   const times = timesLookedAt(storm);
   let lastLongitude: number | null = null;
   times.forEach((position, k) => {
@@ -153,7 +168,7 @@ function timesLookedAt(storm: Storm): number[] {
   return positions;
 }
 
-function reachesLand({ latitude, longitude, radius }: Circle, land: LandIndex): boolean {
+function reachesLand({ latitude, longitude, radius }: FloorCircle, land: LandIndex): boolean {
   return distanceToLandM(land, latitude, longitude, radius) < radius;
 }
 

@@ -18,7 +18,7 @@ export const FETCH_SECTORS = [0, 45, 90, 135, 180, 225, 270, 315] as const;
 
 /** Coast segments sorted into cells of a quarter degree; plain data that can be sent to another thread. */
 export type LandIndex = {
-  /** West end, south end, east end, north end: x0 in [-180, 180), x1 continuous with it [deg], shape (n, 4). */
+  /** Longitude and latitude of both ends, longitudes in any turn but continuous [deg], shape (n, 4). */
   readonly segments: Float64Array;
   /** 1 where a segment only closes a ring along a pole and is no coast, shape (n,). */
   readonly artificial: Uint8Array;
@@ -60,10 +60,9 @@ export function buildLandIndex(rings: readonly Float64Array[]): LandIndex {
       if (!(Math.abs(y0) <= 90)) throw new DomainError('ring latitude', y0, 'in [-90, 90]');
       if (!(polar || Math.abs(x1 - x0) <= 180))
         throw new DomainError('ring step', `${x0} to ${x1}`, 'at most 180 degrees');
-      const shift = 360 * Math.floor((x0 + 180) / 360);
-      segments[4 * at] = x0 - shift;
+      segments[4 * at] = x0;
       segments[4 * at + 1] = y0;
-      segments[4 * at + 2] = x1 - shift;
+      segments[4 * at + 2] = x1;
       segments[4 * at + 3] = y1;
       artificial[at] = polar ? 1 : 0;
       at++;
