@@ -7,5 +7,6 @@
  */
 export function inflowAngle(x: number): number {
   if (x < 1) return 10 * (1 + x);
-  return x < 1.2 ? 20 + 25 * (x - 1) : 25 + 0 * x;
+  if (x < 1.2) return 20 + 25 * (x - 1);
+  return x >= 1.2 ? 25 : NaN;
 }

@@ -1,0 +1,5 @@
+import fc from 'fast-check';
+
+/** Uniform over the range: fc.double spreads over bit patterns and rarely visits the top of it. */
+export const between = (min: number, max: number): fc.Arbitrary<number> =>
+  fc.nat(1e6).map((i) => min + ((max - min) * i) / 1e6);
