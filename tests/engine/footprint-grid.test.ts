@@ -103,15 +103,19 @@ describe('footprint grid', () => {
   });
 
   it('holds everything that reaches the floor', () => {
+    const east = grid.west + (grid.nx - 1) * grid.stepDeg;
+    const north = grid.south + (grid.ny - 1) * grid.stepDeg;
     const around = [];
-    for (let latitude = 12; latitude <= 36; latitude += 0.5) {
-      for (let longitude = 168; longitude <= 193; longitude += 0.5) {
-        const isInside =
-          longitude >= grid.west &&
-          longitude <= grid.west + (grid.nx - 1) * grid.stepDeg &&
-          latitude >= grid.south &&
-          latitude <= grid.south + (grid.ny - 1) * grid.stepDeg;
-        if (!isInside) around.push({ latitude, longitude });
+    // Closely spaced just outside, loosely farther off.
+    for (const [margin, step] of [
+      [0.8, 0.08],
+      [8, 0.8],
+    ] as const) {
+      for (let latitude = grid.south - margin; latitude <= north + margin; latitude += step) {
+        for (let longitude = grid.west - margin; longitude <= east + margin; longitude += step) {
+          const isInside = longitude >= grid.west && longitude <= east && latitude >= grid.south && latitude <= north;
+          if (!isInside) around.push({ latitude, longitude });
+        }
       }
     }
     expect(around.length).toBeGreaterThan(1000);
