@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import type { z } from 'zod';
 import type { ErrorCode, Fault, Problem } from '#contract/errors.ts';
 
 const TITLES: Record<ErrorCode, { status: number; title: string }> = {
