@@ -26,6 +26,18 @@ import { CalibrationStore } from './features/calibrations/calibration-store.ts';
 import { curveRoutes } from './features/curves/curve-routes.ts';
 import { CurveService } from './features/curves/curve-service.ts';
 import { CurveStore } from './features/curves/curve-store.ts';
+import { CheckJob } from './features/portfolios/check-job.ts';
+import { EditionService } from './features/portfolios/edition-service.ts';
+import { EditionStore } from './features/portfolios/edition-store.ts';
+import { FixService } from './features/portfolios/fix-service.ts';
+import { IntakeStore } from './features/portfolios/intake-store.ts';
+import { offshoreFrom } from './features/portfolios/offshore.ts';
+import { portfolioRoutes } from './features/portfolios/portfolio-routes.ts';
+import { PortfolioService } from './features/portfolios/portfolio-service.ts';
+import { PortfolioStore } from './features/portfolios/portfolio-store.ts';
+import { SealService } from './features/portfolios/seal-service.ts';
+import { SiteStore } from './features/portfolios/site-store.ts';
+import { UploadService } from './features/portfolios/upload-service.ts';
 import { scenarioRoutes } from './features/scenarios/scenario-routes.ts';
 import { ScenarioService } from './features/scenarios/scenario-service.ts';
 import { ScenarioStore } from './features/scenarios/scenario-store.ts';
@@ -71,6 +83,7 @@ export interface Container {
   blobs: Blobs;
   audit: AuditLog;
   outbox: Outbox;
+  checkJob: CheckJob;
   appParts: AppParts;
   close(): Promise<void>;
 }
@@ -108,6 +121,21 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
   const cookies = new SessionCookies(isProduction);
   const sessions = new SessionService(transact, new SessionStore(database), audit, clock, ids, config);
 
+  // Portfolios
+  const portfolioParts = {
+    ...{ transact, blobs, audit, clock, ids },
+    ...{ portfolios: new PortfolioStore(), editions: new EditionStore(), intake: new IntakeStore() },
+    ...{ sites: new SiteStore(), jobs: queue, offshoreM: offshoreFrom(landIndex) },
+  };
+  const portfolioServices = {
+    portfolios: new PortfolioService(portfolioParts),
+    uploads: new UploadService(portfolioParts),
+    editions: new EditionService(portfolioParts),
+    fixes: new FixService(portfolioParts),
+    seals: new SealService(portfolioParts),
+  };
+  const checkJob = new CheckJob(portfolioParts);
+
   // Scenarios, curves, calibrations
   const scenarios = new ScenarioService(transact, new ScenarioStore(), landIndex, { clock, ids, audit });
   const curves = new CurveService(transact, new CurveStore());
@@ -125,6 +153,7 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
 
   const routers: Router[] = [
     sessionRoutes(sessions, cookies, limitSignIn(limits)),
+    portfolioRoutes(portfolioServices),
     scenarioRoutes(scenarios),
     curveRoutes(curves),
     calibrationRoutes(calibrations),
@@ -135,7 +164,7 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
   const devRouters: Router[] = !isProduction && sinkFolder ? [mailPage(() => listLetters(sinkFolder))] : [];
 
   return {
-    ...{ config, log, database, transact, queue, clock, ids, mail, blobs, audit, outbox },
+    ...{ config, log, database, transact, queue, clock, ids, mail, blobs, audit, outbox, checkJob },
     appParts: {
       ...{ log, limits, isProduction, routers, rawRouters, devRouters },
       publicUrl: config.publicUrl,

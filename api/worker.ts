@@ -1,14 +1,16 @@
 import { readConfig } from './config.ts';
 import { createContainer } from './container.ts';
+import { registerPortfolioJobs } from './features/portfolios/check-job.ts';
 import { registerOutboxJobs } from './jobs/outbox.ts';
 import { Reaper } from './jobs/reaper.ts';
 import { whenAskedToStop } from './stopping.ts';
 
 const config = readConfig(process.env);
 const container = createContainer(config, 'worker');
-const { queue, transact, mail, clock, log } = container;
+const { queue, transact, mail, clock, log, checkJob } = container;
 await queue.start();
 await registerOutboxJobs(queue, { transact, mail, clock });
+await registerPortfolioJobs(queue, checkJob);
 
 const reaper = new Reaper(config.databaseUrl, log);
 reaper.start();

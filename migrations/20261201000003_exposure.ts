@@ -8,6 +8,17 @@ const tenant = (table: string) => `
     with check (org_id = nullif(current_setting('app.org_id', true), '')::uuid);
   grant select, insert, update, delete on ${table} to gustloom_app;`;
 
+const frozenWhenSealed = (table: string) => `
+  create trigger ${table}_sealed_insert after insert on ${table}
+    referencing new table as touched for each statement execute function refuse_change_in_sealed();
+  create trigger ${table}_sealed_update after update on ${table}
+    referencing old table as touched for each statement execute function refuse_change_in_sealed();
+  create trigger ${table}_sealed_delete after delete on ${table}
+    referencing old table as touched for each statement execute function refuse_change_in_sealed();
+  create trigger ${table}_stay before update on ${table} for each row
+    when (old.edition_id is distinct from new.edition_id or old.org_id is distinct from new.org_id)
+    execute function refuse_move();`;
+
 export async function up(knex: Knex): Promise<void> {
   await knex.raw(`
     create table files (
@@ -46,7 +57,11 @@ export async function up(knex: Knex): Promise<void> {
       file_id uuid not null references files (id),
       style jsonb not null,
       columns jsonb not null,
+      header_digest text not null,
       control jsonb not null default '{}',
+      answers jsonb,
+      survey jsonb,
+      check_no integer not null default 0,
       progress_done integer,
       progress_total integer,
       problem text,
@@ -66,10 +81,13 @@ export async function up(knex: Knex): Promise<void> {
       constraint editions_number_per_portfolio unique (portfolio_id, number),
       constraint editions_sealed_whole check (state <> 'sealed' or (sealed_at is not null and digest is not null and as_at is not null))
     );
+    create index editions_by_header on editions (org_id, header_digest, updated_at desc);
+    create index editions_by_file on editions (file_id);
     create table intake_rows (
       org_id uuid not null,
       edition_id uuid not null references editions (id) on delete cascade,
       file_row integer not null,
+      line text not null check (line in ('site', 'blank', 'preamble', 'total')),
       state text not null check (state in ('ready', 'notes', 'held', 'set_aside')),
       site_ref text,
       latitude double precision,
@@ -79,10 +97,15 @@ export async function up(knex: Knex): Promise<void> {
       messages jsonb not null,
       codes text[] not null,
       corrected boolean not null default false,
+      quality text not null,
+      assumed text[] not null,
+      surveyed jsonb not null default '[]',
+      corrections jsonb not null default '[]',
       primary key (edition_id, file_row)
     );
     create index intake_rows_by_state on intake_rows (edition_id, state, file_row);
     create index intake_rows_by_code on intake_rows using gin (codes);
+    create index intake_rows_by_ref on intake_rows (edition_id, site_ref);
     create table fixes (
       id uuid primary key,
       org_id uuid not null,
@@ -128,7 +151,8 @@ export async function up(knex: Knex): Promise<void> {
       limit_minor bigint,
       state text not null check (state in ('ready', 'notes')),
       assumed text[] not null,
-      primary key (edition_id, site_no)
+      primary key (edition_id, site_no),
+      constraint sites_ref_once unique (edition_id, site_ref)
     );
     create index sites_by_point on sites using gist (point);
     create function refuse_sealed_change() returns trigger language plpgsql as $$
@@ -137,15 +161,18 @@ export async function up(knex: Knex): Promise<void> {
       return case when tg_op = 'DELETE' then old else new end;
     end $$;
     create trigger editions_sealed before update or delete on editions for each row execute function refuse_sealed_change();
-    create function refuse_sealed_site_change() returns trigger language plpgsql as $$
-    declare touched uuid := case when tg_op = 'DELETE' then old.edition_id else new.edition_id end;
+    -- By statement, so that sealing a hundred thousand sites asks once and not for each of them.
+    create function refuse_change_in_sealed() returns trigger language plpgsql as $$
+    declare sealed uuid;
     begin
-      if exists (select from editions where editions.id = touched and editions.state = 'sealed') then
-        raise exception 'edition % is sealed', touched using errcode = 'check_violation';
-      end if;
-      return case when tg_op = 'DELETE' then old else new end;
+      select editions.id into sealed from editions
+      where editions.state = 'sealed' and editions.id in (select touched.edition_id from touched) limit 1;
+      if found then raise exception 'edition % is sealed', sealed using errcode = 'check_violation'; end if;
+      return null;
     end $$;
-    create trigger sites_sealed before update or delete on sites for each row execute function refuse_sealed_site_change();
+    create function refuse_move() returns trigger language plpgsql as $$
+    begin raise exception 'rows stay in their edition' using errcode = 'check_violation'; end $$;
+    ${['intake_rows', 'fixes', 'sites'].map(frozenWhenSealed).join('')}
     ${['files', 'file_chunks', 'portfolios', 'editions', 'intake_rows', 'fixes', 'sites'].map(tenant).join('')}
   `);
 }
@@ -154,6 +181,7 @@ export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
     drop table sites, fixes, intake_rows, editions, portfolios, file_chunks, files cascade;
     drop function refuse_sealed_change();
-    drop function refuse_sealed_site_change();
+    drop function refuse_change_in_sealed();
+    drop function refuse_move();
   `);
 }

@@ -108,7 +108,13 @@ export const Edition = z.object({
   currency: Currency,
   asAt: Day.nullable(),
   file: z.object({ name: z.string(), bytes: z.int(), digest: Digest, uploadedAt: Instant, uploadedBy: z.string() }),
-  style: z.object({ delimiter: z.string(), encoding: z.string(), headerRow: z.int() }),
+  style: z.object({
+    delimiter: z.string(),
+    encoding: z.string(),
+    headerRow: z.int(),
+    /** Sign that parts the decimals, known once the rows are read. */
+    decimal: z.enum(['point', 'comma']).optional(),
+  }),
   columns: z.array(Column),
   /** Lines read so far and in all, while checking. */
   progress: z.object({ done: z.int(), total: z.int().nullable() }).nullable(),
@@ -126,6 +132,8 @@ export const Edition = z.object({
     z.object({ id: Id, kind: Fix, code: z.string(), rows: z.int(), reason: z.string(), by: z.string(), at: Instant }),
   ),
   heldReason: z.string().nullable(),
+  /** Why control totals that don't tie were accepted. */
+  controlReason: z.string().nullable().optional(),
   sealedAt: Instant.nullable(),
   sealedBy: z.string().nullable(),
   digest: Digest.nullable(),
@@ -164,10 +172,14 @@ export const Mapping = z.object({
   currency: Currency,
   expectedRows: z.int().min(0).nullable().default(null),
   expectedTivMinor: Minor.min(0).nullable().default(null),
+  /** Answer to FILE-03; null lets the cells decide where they can be read one way only. */
+  decimal: z.enum(['point', 'comma']).nullable().default(null),
+  /** Answer to FILE-05; nothing is multiplied unless a person says that the amounts stand in thousands. */
+  valuesIn: z.enum(['units', 'thousands']).nullable().default(null),
 });
 export type Mapping = z.infer<typeof Mapping>;
 
-/** One line of the file as the checks see it. `row` is the line's number in the file, the header being line 1. */
+/** One line of the file as the checks see it. `row` is the line's number in the file, its first line being 1. */
 export const IntakeRow = z.object({
   row: z.int(),
   state: RowState,
@@ -199,7 +211,9 @@ export const SealRequest = z.object({
 
 /** Columnar points for the map: one entry a row with coordinates. */
 export const SitePoints = z.object({
+  /** Number of the site in the edition, or that it will have; 0 for rows that aren't scored. */
   siteNo: z.array(z.int()),
+  row: z.array(z.int()),
   ref: z.array(z.string()),
   latitude: z.array(z.number()),
   longitude: z.array(z.number()),

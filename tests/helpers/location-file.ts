@@ -236,8 +236,8 @@ function soundRow(
   land: ReturnType<typeof landIndex>,
 ): Row {
   const place = TOWNS[i % TOWNS.length]!;
-  let latitude = place.latitude;
-  let longitude = place.longitude;
+  let latitude: number = place.latitude;
+  let longitude: number = place.longitude;
   for (let tries = 0; tries < 20; tries++) {
     const [dy, dx] = [(random() - 0.5) * 0.16, (random() - 0.5) * 0.16];
     if (!isLand(land, place.latitude + dy, place.longitude + dx)) continue;

@@ -262,39 +262,42 @@ export function fileMessages(
   });
 }
 
-/** Judges every row of a prepared file in order, handing each on, and sums up. */
-export function judgeFile(
-  rows: readonly FileRow[],
-  prepared: PreparedCheck,
-  answers: Answers,
-  thousandsHeader: string | null,
-  take: (judged: JudgedRow, row: FileRow, surveyed: readonly Surveyed[]) => void,
-): { tally: Tally; survey: FileSurvey } {
-  const tallier = new Tallier();
-  const currencies = new Set<string>();
-  rows.forEach((row, index) => {
-    const surveyed = prepared.surveyed.get(index) ?? [];
-    const judged = judgeRow(row, prepared.context, surveyed, []);
+/** Sums up a file while its rows are judged in order. */
+export class FileSummary {
+  private readonly tallier = new Tallier();
+  private readonly currencies = new Set<string>();
+
+  constructor(
+    private readonly prepared: PreparedCheck,
+    private readonly answers: Answers,
+    private readonly thousandsHeader: string | null,
+  ) {}
+
+  /** Judges the row at a position of the prepared file and counts it. */
+  judge(row: FileRow, index: number): { judged: JudgedRow; surveyed: readonly Surveyed[] } {
+    const surveyed = this.prepared.surveyed.get(index) ?? [];
+    const judged = judgeRow(row, this.prepared.context, surveyed, []);
     const currency = row.received.currency && judged.state === 'held' ? currencyOf(row.received) : null;
-    if (currency && currency !== answers.currency) currencies.add(currency.slice(0, 10));
-    tallier.add(judged);
-    take(judged, row, surveyed);
-  });
-  const tally = tallier.tally();
-  const { fileRows, tivMinor, setAside } = tally.reconciliation;
-  const { offshoreM: _coast, ...facts } = prepared.context;
-  return {
-    tally,
-    survey: {
+    if (currency && currency !== this.answers.currency) this.currencies.add(currency.slice(0, 10));
+    this.tallier.add(judged);
+    return { judged, surveyed };
+  }
+
+  finish(): { tally: Tally; survey: FileSurvey; messages: Message[] } {
+    const tally = this.tallier.tally();
+    const { fileRows, tivMinor, setAside } = tally.reconciliation;
+    const { offshoreM: _coast, ...facts } = this.prepared.context;
+    const survey: FileSurvey = {
       facts,
-      decimal: prepared.decimal,
-      decimalAnswered: answers.decimal !== null,
-      smallValues: prepared.smallValues,
-      thousandsHeader,
-      scaleAnswered: answers.scale !== null,
-      otherCurrencies: [...currencies].slice(0, 5),
+      decimal: this.prepared.decimal,
+      decimalAnswered: this.answers.decimal !== null,
+      smallValues: this.prepared.smallValues,
+      thousandsHeader: this.thousandsHeader,
+      scaleAnswered: this.answers.scale !== null,
+      otherCurrencies: [...this.currencies].slice(0, 5),
       rowsRead: fileRows - setAside.rows,
       tivReadMinor: tivMinor - setAside.tivMinor,
-    },
-  };
+    };
+    return { tally, survey, messages: fileMessages(survey, tally, this.answers) };
+  }
 }

@@ -1,5 +1,4 @@
 import type { RowState, SiteField } from '#contract/portfolios.ts';
-import { degreesText } from './coordinates.ts';
 import {
   amountsOf,
   pointOf,
@@ -10,7 +9,6 @@ import {
   type FileRow,
   type Message,
   type Quality,
-  type SiteRow,
 } from './file-row.ts';
 import { homeOf, slipOf } from './home.ts';
 import { readCoordinate } from './coordinates.ts';
@@ -19,7 +17,7 @@ import type { Finding, SurveyRule } from './rule.ts';
 import { ROW_RULES, SURVEY_RULES, ruleOf } from './rules.ts';
 import { notASite } from './rules/file.ts';
 import { qualityOf, sharedPoint } from './rules/place.ts';
-import { exactRepeats, sharedReference } from './rules/repeats.ts';
+import { conflictOf, exactRepeats, sharedReference } from './rules/repeats.ts';
 
 /** What is read off a file before its rows can be judged. */
 export function factsOf(rows: readonly FileRow[], known: Omit<FileFacts, 'home' | 'swapped' | 'signLost'>): FileFacts {
@@ -92,21 +90,6 @@ export interface JudgedRow {
   assumed: string[];
 }
 
-const corrected = (row: SiteRow, { kind, code, reason }: Correction): Message => {
-  const was = `${row.received.latitude ?? ''} / ${row.received.longitude ?? ''}`;
-  const now =
-    row.latitude.kind === 'degrees' && row.longitude.kind === 'degrees'
-      ? `${degreesText(row.latitude.degrees)} / ${degreesText(row.longitude.degrees)}`
-      : was;
-  const what = {
-    swap_coordinates: `latitude and longitude swapped, ${was} as received, now ${now}`,
-    negate_longitude: `sign of the longitude changed, ${was} as received, now ${now}`,
-    keep_all: code === 'PLACE-07' ? 'confirmed at sea' : `put back${code === 'SAME-01' ? ` as ${row.ref}` : ''}`,
-    exclude: 'excluded',
-  }[kind];
-  return { code, severity: 'note', field: null, received: was, text: `Row ${row.row}: ${what}. Reason: ${reason}` };
-};
-
 /** Orders a row's fate: what sets it aside counts before what holds it, and that before notes. */
 const STATE_OF = { set_aside: 'set_aside', hold: 'held', note: 'notes' } as const;
 
@@ -128,16 +111,15 @@ export function judgeRow(
     if (lifted(code)) continue;
     messages.push({ code, severity: ruleOf(code)!.severity, field, received, text });
   }
-  const aside = messages.filter(({ severity }) => severity === 'set_aside');
-  const excluded = corrections.find(({ kind }) => kind === 'exclude');
-  if (aside.length === 0) {
+  const isAside = ({ severity }: Message) => severity === 'set_aside';
+  if (!messages.some(isAside)) {
     for (const rule of ROW_RULES) {
       const finding = rule.check(site, file);
       if (finding) messages.push({ code: rule.code, severity: rule.severity, ...finding });
     }
-    for (const correction of corrections) if (correction.kind !== 'exclude') messages.push(corrected(site, correction));
   }
-  const shown = aside.length > 0 ? aside : excluded ? [exclusion(site, excluded, messages)] : messages;
+  // Of a line that isn't scored only the reason matters.
+  const shown = messages.some(isAside) ? messages.filter(isAside) : messages;
   const decisive = (['set_aside', 'hold', 'note'] as const).find((severity) =>
     shown.some((message) => message.severity === severity),
   );
@@ -145,7 +127,7 @@ export function judgeRow(
   const point = pointOf(site);
   const assumed =
     state === 'ready' || state === 'notes' ? ASSUMABLE.filter((attribute) => site[attribute] === null) : [];
-  const isTotal = aside.some(({ code }) => code === 'FILE-07');
+  const isTotal = shown.some(({ code }) => code === notASite.code);
   return {
     row: row.row,
     state,
@@ -165,17 +147,6 @@ export function judgeRow(
   };
 }
 
-const exclusion = (site: SiteRow, { code, reason }: Correction, messages: readonly Message[]): Message => {
-  const why = messages.find((message) => message.code === code);
-  return {
-    code,
-    severity: 'set_aside',
-    field: why?.field ?? null,
-    received: why?.received ?? null,
-    text: `${why?.text ?? `Row ${site.row}.`} Excluded. Reason: ${reason}`,
-  };
-};
-
 /** Whether a row takes part in the question who else has its reference. */
 export const competesForReference = (surveyed: readonly Surveyed[], corrections: readonly Correction[]): boolean =>
   !corrections.some(({ kind, code }) => kind === 'exclude' || (kind === 'keep_all' && code === 'SAME-01')) &&
@@ -185,7 +156,34 @@ export const competesForReference = (surveyed: readonly Surveyed[], corrections:
       !corrections.some((correction) => correction.kind === 'keep_all' && correction.code === code),
   );
 
-export const REFERENCE_RULE = sharedReference.code;
+interface Sharing {
+  row: FileRow;
+  surveyed: readonly Surveyed[];
+  corrections: readonly Correction[];
+}
+
+/**
+ * Asks anew which rows share a reference, after some were excluded, kept or brought back. Takes every row of the
+ * references concerned and gives those whose answer changed, with the finding put in or taken out.
+ */
+export function resurveyReferences<Row extends Sharing>(rows: readonly Row[]): (Row & { surveyed: Surveyed[] })[] {
+  const { code } = sharedReference;
+  const competing = new Map<string, number[]>();
+  const refOf = (row: Row) =>
+    competesForReference(row.surveyed, row.corrections) ? (row.row.received.site_ref?.trim() ?? null) : null;
+  for (const row of rows) {
+    const ref = refOf(row);
+    if (ref) competing.set(ref, [...(competing.get(ref) ?? []), row.row.row]);
+  }
+  return rows.flatMap((row) => {
+    const ref = refOf(row);
+    const finding = ref ? conflictOf(ref, competing.get(ref)!) : null;
+    const before = row.surveyed.find((surveyed) => surveyed.code === code);
+    if (before?.text === finding?.text) return [];
+    const others = row.surveyed.filter((surveyed) => surveyed.code !== code);
+    return [{ ...row, surveyed: finding ? [...others, { ...finding, code }] : others }];
+  });
+}
 
 /** Values that count for the detector of thousands. */
 export const buildingMinor = (row: FileRow, facts: FileFacts): number | null => {

@@ -1,5 +1,6 @@
 import type { FileRule, Rule, RowRule, SurveyRule } from './rule.ts';
 import * as building from './rules/building.ts';
+import * as corrections from './rules/corrections.ts';
 import * as file from './rules/file.ts';
 import * as place from './rules/place.ts';
 import * as repeats from './rules/repeats.ts';
@@ -36,6 +37,12 @@ export const ROW_RULES: readonly RowRule[] = [
   building.yearImpossible,
   building.tallWood,
   repeats.referenceMissing,
+  corrections.swappedBack,
+  corrections.signChanged,
+  corrections.confirmedAtSea,
+  corrections.repeatKept,
+  corrections.linePutBack,
+  corrections.excluded,
 ];
 
 /** Rules that compare rows with each other; what they find is kept with the row. */
