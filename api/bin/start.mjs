@@ -229,6 +229,7 @@ const main = async () => {
       LOG_LEVEL: process.env.LOG_LEVEL || 'warn',
       MAIL_FROM: process.env.MAIL_FROM || 'Gustloom <no-reply@gustloom.example>',
       DEMO_PASSWORD: secrets.demoPassword,
+      DEMO_URL: `http://127.0.0.1:${port}`,
       ...(!hasOwnMail && {
         SMTP_URL: `smtp://127.0.0.1:${ports.smtp}`,
         MAIL_SINK_PORT: String(ports.smtp),
