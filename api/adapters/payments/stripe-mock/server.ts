@@ -97,6 +97,8 @@ export const createStripeMock = (settings: StripeMockSettings): StripeMock => {
 
   const app = express();
   app.disable('x-powered-by');
+  app.use('/fonts', express.static(folder('../../../../fonts'), { maxAge: '1d' }));
+  app.get('/pay.css', (_req, res) => res.sendFile(folder('pay.css')));
   app.use((_req, res, next) => {
     res.set({
       'request-id': `req_${randomBytes(8).toString('hex')}`,
@@ -106,8 +108,6 @@ export const createStripeMock = (settings: StripeMockSettings): StripeMock => {
     });
     next();
   });
-  app.use('/fonts', express.static(folder('../../../../fonts')));
-  app.get('/pay.css', (_req, res) => res.sendFile(folder('pay.css')));
   app.use(express.urlencoded({ extended: true, limit: '100kb' }));
 
   const refuse = (res: Response, status: number, error: ApiError) => res.status(status).json({ error });
