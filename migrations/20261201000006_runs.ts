@@ -1,11 +1,12 @@
 import type { Knex } from 'knex';
 
+// The organisation stands in a sub-select, so that it is read once a query and not for each of a hundred thousand rows.
 const tenant = (table: string) => `
   alter table ${table} enable row level security;
   alter table ${table} force row level security;
   create policy tenant on ${table}
-    using (org_id = nullif(current_setting('app.org_id', true), '')::uuid)
-    with check (org_id = nullif(current_setting('app.org_id', true), '')::uuid);`;
+    using (org_id = (select nullif(current_setting('app.org_id', true), '')::uuid))
+    with check (org_id = (select nullif(current_setting('app.org_id', true), '')::uuid));`;
 
 export async function up(knex: Knex): Promise<void> {
   await knex.raw(`
@@ -78,17 +79,39 @@ export async function up(knex: Knex): Promise<void> {
       finished_at timestamptz,
       constraint run_scenarios_seq unique (run_id, seq)
     );
+    -- Reference and value are those of the sealed edition, kept here so that every order of the table needs this table only.
     create table site_results (
       org_id uuid not null,
       run_scenario_id uuid not null references run_scenarios (id),
       stored_at timestamptz not null,
       site_no integer not null,
-      reach smallint not null,
-      plain real, plain_mean real, sea_wind real, direction real, peak_time timestamptz, seconds_above_25 real, seconds_above_33 real,
-      enhanced_mean real, p5 real, p50 real, p90 real, p95 real, p99 real,
-      damage_plain real, damage_mean real, damage_p5 real, damage_p95 real,
-      ground_up_plain_minor bigint, ground_up_mean_minor bigint,
-      gross_plain_minor bigint, gross_mean_minor bigint, gross_p5_minor bigint, gross_p50_minor bigint, gross_p95_minor bigint,
+      site_ref text not null,
+      tiv_minor bigint not null,
+      reach smallint not null check (reach in (0, 1, 2)),
+      plain real,
+      plain_mean real,
+      sea_wind real,
+      direction real,
+      peak_time timestamptz,
+      seconds_above_25 real,
+      seconds_above_33 real,
+      enhanced_mean real,
+      p5 real,
+      p50 real,
+      p90 real,
+      p95 real,
+      p99 real,
+      damage_plain real,
+      damage_mean real,
+      damage_p5 real,
+      damage_p95 real,
+      ground_up_plain_minor bigint,
+      ground_up_mean_minor bigint,
+      gross_plain_minor bigint,
+      gross_mean_minor bigint,
+      gross_p5_minor bigint,
+      gross_p50_minor bigint,
+      gross_p95_minor bigint,
       primary key (run_scenario_id, site_no, stored_at)
     ) partition by range (stored_at);
     create table site_results_before partition of site_results default;
@@ -119,11 +142,13 @@ export async function up(knex: Knex): Promise<void> {
       org_id uuid not null,
       run_scenario_id uuid primary key references run_scenarios (id),
       grid jsonb not null,
-      bands jsonb not null
+      plain jsonb not null,
+      p50 jsonb not null,
+      p90 jsonb not null,
+      difference jsonb not null
     );
     grant select, insert, update on run_numbers, runs, run_scenarios to gustloom_app;
-    grant select, insert on quotes to gustloom_app;
-    grant select, insert, delete on site_results, event_results, footprints to gustloom_app;
+    grant select, insert on quotes, site_results, event_results, footprints to gustloom_app;
     ${['run_numbers', 'quotes', 'runs', 'run_scenarios', 'site_results', 'event_results', 'footprints'].map(tenant).join('')}
   `);
 }

@@ -1,0 +1,55 @@
+import type { EngineNotice, TrackFix } from '#engine/track/fixes.ts';
+import type { GustLadder, SiteSeries } from '#engine/footprint/site-series.ts';
+import type { SiteBatch, SiteScores } from '#engine/footprint/site-peaks.ts';
+import type { Site } from '#engine/footprint/wind-at.ts';
+import type { Area } from '#engine/footprint/strong-wind-area.ts';
+import type { FootprintGrid } from '#engine/footprint/grid.ts';
+import type { DamageCurve } from '#engine/loss/damage-curve.ts';
+import type { ChainOptions } from '#engine/track/options.ts';
+import type { Storm } from '#engine/track/storm.ts';
+import type { Bands, BandView } from './bands.ts';
+
+/** Sites scored in one task. Fixed, and part of no setting: results must not depend on how many threads there are. */
+export const CHUNK_SITES = 2_000;
+
+/** A flag both sides see at once: anything but 0 asks the running task to stop. */
+export type StopFlag = Int32Array;
+
+export type StormTask = { readonly fixes: readonly TrackFix[]; readonly options: ChainOptions };
+
+export type ScoreTask = {
+  readonly storm: Storm;
+  /** NaN as the first of a site's eight fetches asks for the land polygons. */
+  readonly sites: SiteBatch;
+  readonly curve: DamageCurve;
+  readonly stop: StopFlag;
+};
+
+export type FootprintTask = {
+  readonly storm: Storm;
+  /** Bounds of the sites, in longitudes that run on from the track's first. */
+  readonly focus: Area | null;
+  readonly stop: StopFlag;
+};
+export type FootprintReply = { readonly grid: FootprintGrid; readonly bands: Record<BandView, Bands> };
+
+export type ExplainTask = StormTask & { readonly site: Omit<Site, 'fetchM'> };
+export type ExplainReply = {
+  readonly fetchM: number[];
+  readonly series: SiteSeries;
+  readonly ladder: GustLadder;
+  readonly staysInEye: boolean;
+  readonly wavenumber: number | null;
+  readonly notices: readonly EngineNotice[];
+};
+
+/** What a thread can be asked for: name → task and reply. */
+export type Tasks = {
+  storm: { task: StormTask; reply: Storm };
+  score: { task: ScoreTask; reply: SiteScores };
+  footprint: { task: FootprintTask; reply: FootprintReply | null };
+  explain: { task: ExplainTask; reply: ExplainReply };
+};
+
+/** A thread's answer; the engine's refusals travel as words, since error classes don't survive the journey. */
+export type Answer<Reply> = { readonly reply: Reply } | { readonly refused: string } | { readonly stopped: true };
