@@ -5,6 +5,7 @@ import userEvent from '@testing-library/user-event';
 import { MemoryRouter } from 'react-router-dom';
 import { beforeEach, describe, expect, it, vi } from 'vitest';
 import { ChecksStep } from '../../web/features/portfolios/components/checks-step.tsx';
+import { FileQuestions } from '../../web/features/portfolios/components/file-questions.tsx';
 import { SealCard } from '../../web/features/portfolios/components/seal-card.tsx';
 import { placeAfter } from '../../web/features/portfolios/fix-preview.ts';
 import { intakeSteps, stepShown } from '../../web/features/portfolios/intake-steps.ts';
@@ -167,10 +168,60 @@ describe('the seal', () => {
   });
 
   it('asks why when control totals differ', () => {
-    seal({ control: { expectedRows: 12, expectedTivMinor: null } });
+    seal({
+      control: { expectedRows: 12, expectedTivMinor: null },
+      messages: [
+        { code: 'FILE-06', severity: 'blocks_sealing', field: null, received: null, text: 'Three rows are missing.' },
+      ],
+    });
     expect(screen.getByText('Expected 12 sites; read 9 sites.')).toBeVisible();
     expect(screen.getByRole('button', { name: 'Seal edition 3' })).toHaveAccessibleDescription(
       'Control totals differ: say why.',
+    );
+  });
+});
+
+describe('a question about the whole file', () => {
+  const open = testEdition({
+    state: 'checked',
+    reconciliation: testReconciliation,
+    columns: [{ index: 3, name: 'Bldg', samples: ['120'], suggestion: null, field: 'building_value' }],
+    style: { delimiter: ',', encoding: 'utf-8', headerRow: 1, decimal: 'comma' },
+    messages: [
+      {
+        code: 'FILE-05',
+        severity: 'stop',
+        field: null,
+        received: null,
+        text: 'Half of the building values are under 10,000 USD.',
+      },
+    ],
+  });
+
+  it('is answered by a person, keeping the mapping and the style already read', async () => {
+    const asked = answerRequests(() => ok(open, 202));
+    render(
+      <QueryClientProvider client={new QueryClient()}>
+        <FileQuestions edition={open} canWrite />
+      </QueryClientProvider>,
+    );
+    await userEvent.click(screen.getByRole('button', { name: 'Yes, multiply by 1,000' }));
+    await waitFor(() => expect(asked).toHaveLength(1));
+    expect(asked[0]?.body).toMatchObject({
+      columns: [{ index: 3, field: 'building_value' }],
+      decimal: 'comma',
+      valuesIn: 'thousands',
+    });
+  });
+
+  it('blocks the seal until it is answered', () => {
+    render(
+      <QueryClientProvider client={new QueryClient()}>
+        <SealCard edition={open} canWrite onSealed={() => undefined} />
+      </QueryClientProvider>,
+    );
+    expect(screen.getByRole('button', { name: 'Seal edition 3' })).toHaveAccessibleDescription(
+      'A question about the file is open. Answer it in the checks.',
     );
   });
 });

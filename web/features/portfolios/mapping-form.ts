@@ -1,9 +1,14 @@
-import type { Column, Edition, SiteField } from '#contract/portfolios.ts';
+import type { z } from 'zod';
+import type { Column, Edition, Mapping, SiteField } from '#contract/portfolios.ts';
 import { exactAmount, minorPerUnit } from '../../lib/money.ts';
 import { FIELD_NAMES, VALUE_FIELDS } from './field-names.ts';
 
 /** What the person sees while mapping; turned into a request at submit. */
 export interface MappingForm {
+  /** Sign that parts the decimals; null lets the cells decide. */
+  decimal: 'point' | 'comma' | null;
+  /** Answered only by a person. */
+  valuesIn: 'units' | 'thousands' | null;
   fields: ReadonlyMap<number, SiteField>;
   currency: string;
   expectedRows: string;
@@ -33,11 +38,27 @@ export const startingForm = (edition: Edition): MappingForm => {
   const { expectedRows, expectedTivMinor } = edition.control;
   return {
     fields,
+    decimal: null,
+    valuesIn: null,
     currency: edition.currency,
     expectedRows: expectedRows === null ? '' : String(expectedRows),
     expectedTiv: expectedTivMinor === null ? '' : exactAmount(expectedTivMinor, edition.currency),
   };
 };
+
+/** The mapping in force, sent again with an answer to a question about the whole file. */
+export const mappingWith = (
+  edition: Edition,
+  answer: Partial<Pick<MappingForm, 'decimal' | 'valuesIn'>>,
+): z.input<typeof Mapping> => ({
+  columns: edition.columns.flatMap(({ index, field }) => (field ? [{ index, field }] : [])),
+  currency: edition.currency,
+  expectedRows: edition.control.expectedRows,
+  expectedTivMinor: edition.control.expectedTivMinor,
+  // A style the cells already told stays; only an open question may change it.
+  decimal: edition.messages.some(({ code }) => code === 'FILE-03') ? null : (edition.style.decimal ?? null),
+  ...answer,
+});
 
 const quoted = (names: readonly string[]) => names.map((name) => `“${name}”`).join(' and ');
 

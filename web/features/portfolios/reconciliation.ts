@@ -1,5 +1,5 @@
 import { Archive, CircleCheck, Hand, StickyNote } from 'lucide-react';
-import type { Reconciliation } from '#contract/portfolios.ts';
+import type { Edition, Reconciliation } from '#contract/portfolios.ts';
 import { exactAmount, minorPerUnit } from '../../lib/money.ts';
 import { count, counted, decimal, percent } from '../../lib/numbers.ts';
 import type { Share, SumTerm } from '../../ui/sum-row.tsx';
@@ -60,6 +60,8 @@ export const tivSentence = (sum: Reconciliation, currency: string): string => {
   return `By TIV: ${share(sum.ready.tivMinor)} ready, ${share(sum.notes.tivMinor)} with notes, ${share(sum.held.tivMinor)} held`;
 };
 
+const CONTROL_CODE = 'FILE-06';
+
 export interface ControlVerdict {
   state: 'none' | 'ties' | 'differs';
   rows: { expected: number | null; read: number };
@@ -67,15 +69,14 @@ export interface ControlVerdict {
   sentence: string;
 }
 
-/** Expected against read; a total that wasn't given can't differ. */
+/** Expected against read. Whether they tie is the service's word: it allows for rounding in the broker's total. */
 export const controlVerdict = (
   sum: Reconciliation,
-  control: { expectedRows: number | null; expectedTivMinor: number | null },
-  currency: string,
+  { control, messages, currency }: Pick<Edition, 'control' | 'messages' | 'currency'>,
 ): ControlVerdict => {
   const rows = { expected: control.expectedRows, read: siteRows(sum) };
   const tiv = { expected: control.expectedTivMinor, read: siteTiv(sum) };
-  const differs = [rows, tiv].some(({ expected, read }) => expected !== null && expected !== read);
+  const differs = messages.some(({ code }) => code === CONTROL_CODE);
   const given = rows.expected !== null || tiv.expected !== null;
   const said = [
     rows.expected !== null && counted(rows.expected, 'site'),

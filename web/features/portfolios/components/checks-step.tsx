@@ -12,6 +12,7 @@ import { Skeleton } from '../../../ui/skeleton.tsx';
 import { Table, Td, Th, Tr } from '../../../ui/table.tsx';
 import { messagesQuery } from '../edition-queries.ts';
 import { siteTiv, tivScale } from '../reconciliation.ts';
+import { FileQuestions, isQuestion } from './file-questions.tsx';
 import { EquationCard } from './equation-card.tsx';
 import { FixPreview } from './fix-preview.tsx';
 
@@ -51,6 +52,7 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
   const preview = useRef<HTMLDivElement>(null);
   if (!edition.reconciliation) return null;
   const scale = tivScale(siteTiv(edition.reconciliation), edition.currency);
+  const others = edition.messages.filter(({ code }) => !isQuestion(code) && code !== 'FILE-06');
   const groups = messages.data?.groups ?? [];
   const sections = sectionsOf(groups, edition);
   const inOrder = sections.flatMap((section) => section.groups);
@@ -73,10 +75,11 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
       <EquationCard
         reconciliation={edition.reconciliation}
         currency={edition.currency}
-        control={edition.control}
+        control={edition}
         className="mb-3.5 flex-none"
       />
-      {edition.messages.map((message) => (
+      <FileQuestions edition={edition} canWrite={canWrite} />
+      {others.map((message) => (
         <Message
           key={message.code}
           tone={message.severity === 'note' ? 'info' : 'caution'}

@@ -47,6 +47,8 @@ export function ColumnsStep({ edition, canWrite, onMapped }: ColumnsStepProps) {
         currency: form.currency,
         expectedRows: rows.value,
         expectedTivMinor: tiv.value,
+        decimal: form.decimal,
+        valuesIn: form.valuesIn,
       },
       { onSuccess: onMapped },
     );
@@ -94,6 +96,38 @@ export function ColumnsStep({ edition, canWrite, onMapped }: ColumnsStepProps) {
         )}
       </Card>
       <div className="flex flex-col gap-4">
+        <Card title="How numbers are written">
+          <div className="flex flex-col gap-3">
+            <SelectField
+              label="Decimals"
+              value={form.decimal ?? ''}
+              onChange={(event) =>
+                setForm({
+                  ...form,
+                  decimal: event.target.value === '' ? null : (event.target.value as 'point' | 'comma'),
+                })
+              }
+            >
+              <option value="">As the cells show</option>
+              <option value="point">Point: 1,234.50</option>
+              <option value="comma">Comma: 1.234,50</option>
+            </SelectField>
+            <SelectField
+              label="Amounts are in"
+              value={form.valuesIn ?? ''}
+              onChange={(event) =>
+                setForm({
+                  ...form,
+                  valuesIn: event.target.value === '' ? null : (event.target.value as 'units' | 'thousands'),
+                })
+              }
+            >
+              <option value="">Ask me if it looks like thousands</option>
+              <option value="units">{form.currency}, as written</option>
+              <option value="thousands">Thousands of {form.currency}</option>
+            </SelectField>
+          </div>
+        </Card>
         <Card title="Control totals" aside="checked before sealing">
           <p className="mb-3 text-13 text-ink-2">
             What the broker’s summary says. Leave empty what you don’t know; repeats and total lines don’t count.

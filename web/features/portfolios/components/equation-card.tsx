@@ -9,7 +9,7 @@ interface EquationCardProps {
   reconciliation: Reconciliation;
   currency: string;
   /** Given where the verdict on control totals belongs into the sum's row. */
-  control?: Edition['control'];
+  control?: Pick<Edition, 'control' | 'messages' | 'currency'>;
   sentence?: ReactNode;
   className?: string;
 }
@@ -17,7 +17,7 @@ interface EquationCardProps {
 /** The row equation: every line of the file is in exactly one state. */
 export function EquationCard({ reconciliation, currency, control, sentence, className }: EquationCardProps) {
   const { total, terms } = equationOf(reconciliation, currency);
-  const verdict = control && controlVerdict(reconciliation, control, currency);
+  const verdict = control && controlVerdict(reconciliation, control);
   return (
     <section
       aria-label="Rows by state"

@@ -1,7 +1,7 @@
-import { useState } from 'react';
-import { useInfiniteQuery } from '@tanstack/react-query';
+import { useMemo, useState } from 'react';
+import { useInfiniteQuery, useQuery } from '@tanstack/react-query';
 import { ArrowRight, Check, Info } from 'lucide-react';
-import type { Edition, IntakeRow, MessageGroup } from '#contract/portfolios.ts';
+import type { Edition, Fix, IntakeRow, MessageGroup } from '#contract/portfolios.ts';
 import { ApiError } from '../../../api/api-error.ts';
 import { count, counted } from '../../../lib/numbers.ts';
 import { shortMoney } from '../../../lib/money.ts';
@@ -11,9 +11,11 @@ import { TextField } from '../../../ui/field.tsx';
 import { Message } from '../../../ui/message.tsx';
 import { ProblemNotice } from '../../../ui/problem.tsx';
 import { SkeletonRows, Table, Td, Th, Tr } from '../../../ui/table.tsx';
-import { rowsQuery, useApplyFix } from '../edition-queries.ts';
+import { rowsQuery, sitePointsQuery, useApplyFix } from '../edition-queries.ts';
 import { FIELD_NAMES } from '../field-names.ts';
 import { FIX_EFFECTS, placeAfter, trueMinus } from '../fix-preview.ts';
+import { previewSites } from '../map-sites.ts';
+import { PlaceMap } from './place-map.tsx';
 
 interface FixPreviewProps {
   edition: Edition;
@@ -31,7 +33,7 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
   const [asked, setAsked] = useState(false);
   /** Null: every row with this message. */
   const [picked, setPicked] = useState<ReadonlySet<number> | null>(null);
-  const items = rows.data?.pages.flatMap((page) => page.items) ?? [];
+  const items = useMemo(() => rows.data?.pages.flatMap((page) => page.items) ?? [], [rows.data]);
   const size = picked ? picked.size : group.rows;
   const fix = edition.state === 'checked' ? group.fix : null;
   const first = items[0]?.messages.find(({ code }) => code === group.code);
@@ -65,6 +67,7 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
       className="flex flex-col overflow-hidden wide:max-h-full"
     >
       {first && <p className="px-4 pt-1 text-13 text-ink-2">{first.text}</p>}
+      {fix && movesPlaces(fix.kind) && <FixMap editionId={edition.id} rows={items} kind={fix.kind} />}
       <div className="mt-2.5 flex-1 overflow-y-auto border-t border-rule max-wide:max-h-120 wide:min-h-0">
         {rows.isError ? (
           <ProblemNotice
@@ -147,6 +150,33 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
   );
 }
 
+const movesPlaces = (kind: Fix) => kind === 'swap_coordinates' || kind === 'negate_longitude';
+
+/** Where the rows would fall, among the other sites. */
+function FixMap({ editionId, rows, kind }: { editionId: string; rows: readonly IntakeRow[]; kind: Fix }) {
+  const points = useQuery(sitePointsQuery(editionId));
+  const sites = useMemo(() => previewSites(rows, kind, points.data), [rows, kind, points.data]);
+  if (!sites) return null;
+  return (
+    <PlaceMap
+      label="Rows after the fix, among the other sites"
+      sites={sites}
+      describe={(index) => sites.ref[index] ?? ''}
+      className="mt-2.5 h-48 flex-none border-t border-rule max-wide:h-60"
+      legend={
+        <ul className="flex gap-3.5 rounded-2 border border-rule-strong bg-sheet px-2.5 py-1 text-12">
+          <li className="flex items-center gap-1.5">
+            <span className="size-2.5 rotate-45 border-[1.5px] border-ink bg-sheet" /> After the fix
+          </li>
+          <li className="flex items-center gap-1.5">
+            <span className="size-2 rounded-pill border border-ink bg-sheet" /> Other sites
+          </li>
+        </ul>
+      }
+    />
+  );
+}
+
 const VERBS = { swap_coordinates: 'Swap', negate_longitude: 'Change', exclude: 'Exclude', keep_all: 'Keep' };
 
 interface RowsTableProps {
@@ -159,7 +189,7 @@ interface RowsTableProps {
 }
 
 function RowsTable({ group, items, loading, kind, picked, onToggle }: RowsTableProps) {
-  const place = kind === 'swap_coordinates' || kind === 'negate_longitude';
+  const place = kind !== null && movesPlaces(kind);
   const pick = (row: IntakeRow) =>
     picked && (
       <input

@@ -169,9 +169,9 @@ function AssumptionsCard({ edition, total }: { edition: Edition; total: number }
 }
 
 function ControlCard({ edition }: { edition: Edition }) {
-  const { reconciliation, currency, control } = edition;
+  const { reconciliation, currency } = edition;
   if (!reconciliation) return null;
-  const verdict = controlVerdict(reconciliation, control, currency);
+  const verdict = controlVerdict(reconciliation, edition);
   if (verdict.state === 'none')
     return (
       <Card title="Control totals">

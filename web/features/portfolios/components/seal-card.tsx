@@ -31,9 +31,10 @@ const MIN_REASON = 3;
 /** What stands between this draft and its seal, in the order in which it can be cleared. */
 const blockerOf = (
   form: { asAt: string; heldTicked: boolean; heldReason: string; controlReason: string },
-  needs: { held: boolean; control: boolean },
+  needs: { answers: boolean; held: boolean; control: boolean },
   ready: number,
 ): string | null => {
+  if (needs.answers) return 'A question about the file is open. Answer it in the checks.';
   if (ready === 0) return 'No row can be scored. Fix rows in the checks first.';
   if (form.asAt === '') return 'Say from which day the values are.';
   if (form.asAt > today()) return 'The day of the values lies ahead. Choose today or earlier.';
@@ -52,8 +53,12 @@ export function SealCard({ edition, canWrite, onSealed }: SealCardProps) {
   const titleId = useId();
   const sum = edition.reconciliation;
   if (!sum) return null;
-  const verdict = controlVerdict(sum, edition.control, edition.currency);
-  const needs = { held: sum.held.rows > 0, control: verdict.state === 'differs' };
+  const verdict = controlVerdict(sum, edition);
+  const needs = {
+    answers: edition.messages.some(({ severity }) => severity === 'stop'),
+    held: sum.held.rows > 0,
+    control: verdict.state === 'differs',
+  };
   const blocker = blockerOf({ asAt, heldTicked, heldReason, controlReason }, needs, sum.ready.rows + sum.notes.rows);
   const all = siteTiv(sum);
   const submit = () => {

@@ -20,6 +20,9 @@ interface SitesPanelProps {
   edition: Edition;
   filter: Filter;
   onFilter: (filter: Filter) => void;
+  /** The site shown on the map, too. */
+  chosenRef: string | null;
+  onChoose: (ref: string | null) => void;
 }
 
 export const isFilter = (text: string | null): text is Filter => FILTERS.some((filter) => filter === text);
@@ -32,7 +35,7 @@ const STATE_CHIPS: Record<RowState, { tone: Tone; icon: typeof Hand }> = {
 };
 
 /** Every line of the file with its state: the table twin of the map. */
-export function SitesPanel({ edition, filter, onFilter }: SitesPanelProps) {
+export function SitesPanel({ edition, filter, onFilter, chosenRef, onChoose }: SitesPanelProps) {
   const rows = useInfiniteQuery(rowsQuery(edition.id, { state: filter === 'all' ? undefined : filter }));
   const items = rows.data?.pages.flatMap((page) => page.items) ?? [];
   const sum = edition.reconciliation;
@@ -85,14 +88,13 @@ export function SitesPanel({ edition, filter, onFilter }: SitesPanelProps) {
                 <Th numeric priority={2}>
                   Longitude
                 </Th>
-                <Th priority={3}>What we saw</Th>
               </tr>
             </thead>
             <tbody>
               {rows.isPending ? (
-                <SkeletonRows columns={7} />
+                <SkeletonRows columns={6} />
               ) : items.length === 0 ? (
-                <EmptyRow columns={7}>
+                <EmptyRow columns={6}>
                   <b>No row is {filter === 'all' ? 'in this file' : STATE_NAMES[filter].toLowerCase()}.</b>{' '}
                   {filter !== 'all' && (
                     <button type="button" className="font-bold text-link underline" onClick={() => onFilter('all')}>
@@ -102,11 +104,31 @@ export function SitesPanel({ edition, filter, onFilter }: SitesPanelProps) {
                 </EmptyRow>
               ) : (
                 items.map((row) => (
-                  <Tr key={row.row}>
+                  <Tr
+                    key={row.row}
+                    selected={row.siteRef !== null && row.siteRef === chosenRef}
+                    onClick={() => onChoose(row.siteRef)}
+                  >
                     <Td numeric className="text-ink-2">
                       {count(row.row)}
                     </Td>
-                    <Td className="font-bold whitespace-nowrap">{row.siteRef ?? '–'}</Td>
+                    <Td className="max-w-64 leading-tight">
+                      {row.siteRef === null ? (
+                        '–'
+                      ) : (
+                        <button type="button" className="font-bold" aria-pressed={row.siteRef === chosenRef}>
+                          {row.siteRef}
+                        </button>
+                      )}
+                      {row.messages[0] && (
+                        <span
+                          className="block truncate text-12 text-ink-2"
+                          title={row.messages.map(({ text }) => text).join(' ')}
+                        >
+                          {row.messages[0].text}
+                        </span>
+                      )}
+                    </Td>
                     <Td>
                       <Chip tone={STATE_CHIPS[row.state].tone} icon={STATE_CHIPS[row.state].icon}>
                         {STATE_NAMES[row.state]}
@@ -118,13 +140,6 @@ export function SitesPanel({ edition, filter, onFilter }: SitesPanelProps) {
                     </Td>
                     <Td numeric priority={2}>
                       {row.longitude === null ? '–' : decimal(row.longitude, 4)}
-                    </Td>
-                    <Td
-                      priority={3}
-                      className="max-w-90 truncate text-13 text-ink-2"
-                      title={row.messages.map(({ text }) => text).join(' ')}
-                    >
-                      {row.messages[0]?.text ?? (row.corrected ? 'Corrected' : '')}
                     </Td>
                   </Tr>
                 ))
