@@ -36,7 +36,7 @@ export const engineBench: Bench = (say) => {
     for (let pair = 0; pair < PAIRS; pair++) {
       engine.push(engineSeconds());
       if (program !== null) yardstick.push(yardstickSeconds(program));
-      const beside = yardstick[pair] === undefined ? '' : `, C ${(PER * yardstick[pair]).toFixed(2)} s`;
+      const beside = program === null ? '' : `, C ${(PER * yardstick[pair]!).toFixed(2)} s`;
       say(`100,000 sites: engine ${(PER * engine[pair]!).toFixed(2)} s${beside}`);
     }
     const seconds = { value: rounded(PER * median(engine)), unit: 's per 100,000 sites, one core' };
