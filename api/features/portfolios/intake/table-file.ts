@@ -120,6 +120,8 @@ class RecordReader {
           if (++this.line > 0) this.take(record, this.line);
         } catch (error) {
           this.failure = error as Error;
+          // Ends whoever waits for the parser, as it will give no more records.
+          this.parser.destroy();
         }
       }
     });
