@@ -8,7 +8,7 @@ export const LOSS_QUANTUM = 1 / 1024;
 
 // Tried in this order until the last coefficients say the interpolant is good enough.
 const RULES: readonly ChebyshevRule[] = [8, 16, 32].map(chebyshevRule);
-const TRUNCATION = 5e-11;
+const TRUNCATION = 1e-11;
 
 /**
  * Rounds a loss to the nearest 1/1024 of a currency unit, so that sums over sites are exact and the same in any order
