@@ -49,6 +49,7 @@ export default defineConfig({
           ...node,
           name: 'journeys',
           include: ['tests/journeys/**/*.test.ts'],
+          globalSetup: [at('tests/helpers/product.ts')],
           testTimeout: 240_000,
           hookTimeout: 300_000,
           fileParallelism: false,
