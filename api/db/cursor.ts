@@ -1,3 +1,4 @@
+import { Id, Instant } from '#contract/common.ts';
 import { AppError } from '../errors.ts';
 
 type CursorPart = string | number;
@@ -5,6 +6,11 @@ type CursorPart = string | number;
 /** Where a list's next page starts, as an opaque word. */
 export const encodeCursor = (...parts: CursorPart[]): string =>
   Buffer.from(JSON.stringify(parts)).toString('base64url');
+
+const notOurs = () =>
+  new AppError('invalid_request', 'This list can’t be continued from there. Load it again from its start.', {
+    faults: [{ path: 'query.cursor', message: 'The cursor isn’t one of ours.' }],
+  });
 
 /** The parts of a cursor we gave out; anything else is refused, never guessed at. */
 export const decodeCursor = (cursor: string, length: number): CursorPart[] => {
@@ -19,9 +25,23 @@ export const decodeCursor = (cursor: string, length: number): CursorPart[] => {
   } catch {
     // Refused below, like any other word that isn't ours.
   }
-  throw new AppError('invalid_request', 'This list can’t be continued from there. Load it again from its start.', {
-    faults: [{ path: 'query.cursor', message: 'The cursor isn’t one of ours.' }],
-  });
+  throw notOurs();
+};
+
+/** Cursor of a list ordered by a counted number; null at its start. */
+export const decodeNumberCursor = (cursor: string | undefined): number | null => {
+  if (cursor === undefined) return null;
+  const [number] = decodeCursor(cursor, 1);
+  if (!Number.isSafeInteger(number)) throw notOurs();
+  return Number(number);
+};
+
+/** Cursor of a list ordered by time, then id; null at its start. */
+export const decodeMomentCursor = (cursor: string | undefined): { at: string; id: string } | null => {
+  if (cursor === undefined) return null;
+  const [at, id] = decodeCursor(cursor, 2);
+  if (!Instant.safeParse(at).success || !Id.safeParse(id).success) throw notOurs();
+  return { at: String(at), id: String(id) };
 };
 
 /** Cuts rows read with `limit + 1` into a page. */

@@ -210,7 +210,9 @@ describe('any history of top-ups, quotes and settlements', () => {
             .select('movement_id'),
           balance: await store.held(tx, org.id),
         }));
-        const sums = Object.fromEntries(accounts.map(({ account, sum }) => [account, Number(sum)]));
+        const sums: Record<string, number> = Object.fromEntries(
+          accounts.map(({ account, sum }) => [account, Number(sum)]),
+        );
         expect(crooked).toEqual([]);
         expect(Object.values(sums).reduce((total, sum) => total + sum, 0)).toBe(0);
         expect([sums.free ?? 0, sums.reserved ?? 0]).toEqual([free, reserved]);

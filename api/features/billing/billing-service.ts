@@ -1,6 +1,6 @@
 import type { Balance, Charge, Movement, TopUp } from '#contract/billing.ts';
 import { holdsOneOf, type Actor } from '../../actor.ts';
-import { decodeCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
+import { decodeMomentCursor, decodeNumberCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
 import { AppError, notFound } from '../../errors.ts';
 import type { Clock } from '../../ports/clock.ts';
 import type { Ids } from '../../ports/ids.ts';
@@ -64,7 +64,7 @@ export class BillingService {
   }
 
   movements(actor: Actor, { cursor, limit }: PageRequest): Promise<Page<Movement>> {
-    const before = cursor === undefined ? null : Number(decodeCursor(cursor, 1)[0]);
+    const before = decodeNumberCursor(cursor);
     return this.transact(actor, async (tx) => {
       const rows = await this.stores.ledger.movements(tx, actor.orgId, { before, limit: limit + 1 });
       return pageFrom(rows, limit, ({ entryId }) => encodeCursor(entryId));
@@ -73,11 +73,11 @@ export class BillingService {
 
   /** Admins and auditors see every run's charge, others those of the runs they accepted. */
   charges(actor: Actor, { cursor, limit }: PageRequest): Promise<Page<Charge>> {
-    const [at, id] = cursor === undefined ? [] : decodeCursor(cursor, 2);
+    const before = decodeMomentCursor(cursor);
     return this.transact(actor, async (tx) => {
       const rows = await this.stores.charges.charges(tx, actor.orgId, {
         only: holdsOneOf(actor, ['admin', 'auditor']) ? null : actor.userId,
-        before: at === undefined ? null : { at: String(at), id: String(id) },
+        before,
         limit: limit + 1,
       });
       return pageFrom(rows, limit, ({ acceptedAt, runId }) => encodeCursor(acceptedAt, runId));

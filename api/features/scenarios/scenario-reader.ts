@@ -1,6 +1,8 @@
 import type { Track } from '#contract/scenarios.ts';
+import type { TrackFix } from '#engine/track/fixes.ts';
 import { toInstantOrNull } from '../../db/mapping.ts';
 import type { Tx } from '../../transact.ts';
+import { engineFixes } from './resolve-track.ts';
 import { averagingConversion } from './track-rules.ts';
 
 /** A version as a run needs it: what is computed, and what the run slip says about it. */
@@ -11,6 +13,8 @@ export type RunTrack = {
   number: number;
   track: Track;
   digest: string;
+  /** As the engine takes them. */
+  fixes: TrackFix[];
   /** What happens to the winds on their way to 1 min, in words. */
   conversion: string;
   asOf: string | null;
@@ -57,6 +61,7 @@ export class ScenarioReader {
           number: row.number,
           track: row.track,
           digest: row.digest,
+          fixes: engineFixes(row.track),
           conversion: averagingConversion(row.track),
           asOf: toInstantOrNull(row.as_of),
           path: row.path,

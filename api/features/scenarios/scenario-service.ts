@@ -12,7 +12,7 @@ import type {
 } from '#contract/scenarios.ts';
 import type { LandIndex } from '#engine/geo/land.ts';
 import type { Actor } from '../../actor.ts';
-import { decodeCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
+import { decodeMomentCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
 import { AppError, notFound } from '../../errors.ts';
 import type { Clock } from '../../ports/clock.ts';
 import type { Ids } from '../../ports/ids.ts';
@@ -126,9 +126,8 @@ export class ScenarioService {
     actor: Actor,
     { cursor, limit }: { cursor?: string | undefined; limit: number },
   ): Promise<{ items: ScenarioSummary[]; nextCursor: string | null }> {
-    const [at, id] = cursor === undefined ? [] : decodeCursor(cursor, 2);
+    const before = decodeMomentCursor(cursor);
     return this.transact(actor, async (tx) => {
-      const before = at === undefined ? null : { at: String(at), id: String(id) };
       const rows = await this.scenarios.list(tx, actor.orgId, { before, limit: limit + 1 });
       return pageFrom(rows, limit, ({ updatedAt, id: last }) => encodeCursor(updatedAt, last));
     });
