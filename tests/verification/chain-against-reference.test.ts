@@ -2,6 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { scoreSites } from '#engine/footprint/site-peaks.ts';
 import { siteSeries } from '#engine/footprint/site-series.ts';
 import { drawPeaks, makeDrawWork } from '#engine/footprint/draws-of-site.ts';
+import { secondsAtLeast } from '#engine/footprint/durations.ts';
+import { drawMean, drawQuantiles } from '#engine/ring/draws.ts';
 import { followPassage, makePassage } from '#engine/footprint/passage.ts';
 import { siteExposure, windAt, type Site } from '#engine/footprint/wind-at.ts';
 import { REFERENCE_CURVE, meanDamage } from '#engine/loss/damage-curve.ts';
@@ -134,3 +136,42 @@ function siteOf(site: TestSite): Site {
     topographicFactor: site.hill,
   };
 }
+
+describe('times that are left out because the wind is surely too weak', () => {
+  const storm = prepareStorm(workedFixes, DEFAULT_OPTIONS, null);
+  const sites = scattered(60, false).concat(
+    // Far off, where everything is weak; and around the threshold of 25 m/s.
+    scattered(60, false).map((site, i) => ({ ...site, latitude: site.latitude - 6 + i / 10, roughness: 0.5 })),
+  );
+
+  it('never change a peak, a duration or a draw', () => {
+    const scores = scoreSites(storm, batchOf(sites), REFERENCE_CURVE);
+    const passage = makePassage(storm);
+    const gusts = new Float64Array(264);
+    let leftOut = 0;
+    sites.forEach((site, i) => {
+      const exposure = siteExposure(siteOf(site));
+      const few = followPassage(storm, site.latitude, site.longitude, exposure, passage, 25);
+      const count = followPassage(storm, site.latitude, site.longitude, exposure, passage);
+      leftOut += count - few;
+      const peak = passage.gust.subarray(0, count).indexOf(Math.max(...passage.gust.subarray(0, count)));
+      drawPeaks(passage, count, peak, makeDrawWork(storm.stateCount), gusts);
+      expect(scores.plainGust[i]).toBe(passage.gust[peak]);
+      expect(scores.secondsAbove25[i]!).toBeCloseTo(secondsAtLeast(storm, passage, count, 25), 6);
+      expect(scores.secondsAbove33[i]!).toBeCloseTo(secondsAtLeast(storm, passage, count, 33), 6);
+      expect(scores.p5[i]).toBe(drawQuantiles(gusts, [0.05])[0]);
+      expect(scores.enhancedMean[i]!).toBeCloseTo(drawMean(gusts), 12);
+    });
+    expect(leftOut).toBeGreaterThan(1000);
+  });
+  it('are those at which the gust is below the floor', () => {
+    const passage = makePassage(storm);
+    for (const site of sites) {
+      const exposure = siteExposure(siteOf(site));
+      const few = followPassage(storm, site.latitude, site.longitude, exposure, passage, 25);
+      const kept = new Set(passage.state.slice(0, few));
+      const count = followPassage(storm, site.latitude, site.longitude, exposure, passage);
+      for (let i = 0; i < count; i++) if (!kept.has(passage.state[i]!)) expect(passage.gust[i]!).toBeLessThan(25);
+    }
+  });
+});

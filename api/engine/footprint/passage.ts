@@ -2,7 +2,8 @@ import { EARTH_RADIUS } from '../constants.ts';
 import { radialShape } from '../ring/draws.ts';
 import { DRAG_LINE, DRAG_RANGE, roughnessOfDrag } from '../terrain/drag.ts';
 import { roughnessFactor } from '../terrain/roughness.ts';
-import { STATE_SIZE, type Storm } from '../track/storm.ts';
+import { FIRST_QUIET_WIND, QUIET_WIND_COUNT } from '../track/quiet-distance.ts';
+import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
 import { radians } from '../units.ts';
 import { INNER_FACTOR, INNER_RADIUS, OUTER_FACTOR, OUTER_RADIUS } from '../winds/surface-factor.ts';
 import { PEAK_FACTOR, type Exposure } from './exposure.ts';
@@ -25,8 +26,8 @@ export type Passage = {
   /** Cosine and sine of m (azimuth - pattern angle) [1]; only where crest > 0. */
   readonly phaseCos: Float64Array;
   readonly phaseSin: Float64Array;
-  /** Which outer times are refined around, shape (outer times,). */
-  readonly isNear: Uint8Array;
+  /** What is known of each outer time before the wind is computed, shape (outer times,). */
+  readonly mark: Uint8Array;
 };
 
 /**
@@ -47,12 +48,12 @@ export function makePassage(storm: Storm): Passage {
     crest: new Float64Array(n),
     phaseCos: new Float64Array(n),
     phaseSin: new Float64Array(n),
-    isNear: new Uint8Array(storm.outer.length),
+    mark: new Uint8Array(storm.outer.length),
   };
 }
 
 /**
- * Winds and gusts at one site at every time the chain looks at: outer times, and inner times next to outer ones at which
+ * Winds and gusts at one site at the times the chain looks at: outer times, and inner times next to outer ones at which
  * the centre is near.
  *
  * Directions come from differences of unit vectors, so there is no trigonometry and no loss of digits near the centre;
@@ -63,8 +64,10 @@ export function makePassage(storm: Storm): Passage {
  * @param longitude Longitude of the site [deg].
  * @param exposure  Ground around the site.
  * @param passage   Receives the series.
+ * @param floor     Gust [m s⁻¹]; outer times at which the gust certainly stays below it, and those before and after too,
+ *                  are left out. 0 = none is.
  * @returns Number of times written.
- * @source The chain as footprint/wind-at.ts states it; METHODS of each step are in winds, terrain and gust.
+ * @source The chain as footprint/wind-at.ts states it; the sources of each step are in winds, terrain and gust.
  */
 export function followPassage(
   storm: Storm,
@@ -72,32 +75,57 @@ export function followPassage(
   longitude: number,
   exposure: Exposure,
   passage: Passage,
+  floor = 0,
 ): number {
   const { states, outer } = storm;
-  const { state, isNear } = passage;
+  const { state, mark } = passage;
   const phi = radians(latitude);
   const lambda = radians(longitude);
   const px = Math.cos(phi) * Math.cos(lambda);
   const py = Math.cos(phi) * Math.sin(lambda);
   const pz = Math.sin(phi);
   const last = outer.length - 1;
+  const quiet = Math.min(Math.floor(floor / greatestFactor(exposure)) - FIRST_QUIET_WIND, QUIET_WIND_COUNT - 1);
+  const quietAt = quiet < 0 ? -1 : STATE.quietChord2 + quiet;
   for (let o = 0; o <= last; o++) {
     const at = outer[o]! * STATE_SIZE;
     const dx = px - states[at]!;
     const dy = py - states[at + 1]!;
     const dz = pz - states[at + 2]!;
-    isNear[o] = dx * dx + dy * dy + dz * dz < states[at + 19]! ? 1 : 0;
+    const chord2 = dx * dx + dy * dy + dz * dz;
+    mark[o] = chord2 < states[at + 19]! ? NEAR : quietAt >= 0 && chord2 > states[at + quietAt]! ? QUIET : FAR;
   }
   let count = 0;
   for (let o = 0; o <= last; o++) {
+    const own = mark[o]!;
+    const next = o === last ? QUIET : mark[o + 1]!;
+    if (own === QUIET && next === QUIET && (o === 0 || mark[o - 1] === QUIET)) continue;
     const first = outer[o]!;
     state[count++] = first;
-    if (o === last || (isNear[o] === 0 && isNear[o + 1] === 0)) continue;
-    const end = outer[o + 1]!;
+    if (own !== NEAR && next !== NEAR) continue;
+    const end = o === last ? first : outer[o + 1]!;
     for (let k = first + 1; k < end; k++) state[count++] = k;
   }
   evaluate(states, storm.wavenumber ?? 0, px, py, pz, exposure, passage, count);
   return count;
+}
+
+// Marks of outer times.
+const FAR = 0;
+const NEAR = 1;
+const QUIET = 2;
+
+/** Bound of gust over open-sea wind: rough sea is the worst case, and the land's weight enters as a parabola. */
+function greatestFactor({ isAtSea, landFactor, landTurbulence, topographicFactor }: Exposure): number {
+  const overSea = 1 + PEAK * STORM_TURBULENCE;
+  if (isAtSea) return overSea * topographicFactor;
+  const slower = landFactor * STORM_PER_FACTOR - 1;
+  const gustier = PEAK * (landTurbulence - STORM_TURBULENCE);
+  const at = (weight: number): number => (1 + weight * slower) * (overSea + weight * gustier);
+  // Vertex of the parabola, where it lies between sea and land.
+  const vertex = -(gustier + overSea * slower) / (2 * slower * gustier);
+  const inside = vertex > 0 && vertex < 1 ? at(vertex) : 0;
+  return Math.max(at(0), at(1), inside) * topographicFactor;
 }
 
 const SEA_FACTOR_SLOPE = (OUTER_FACTOR - INNER_FACTOR) / (OUTER_RADIUS - INNER_RADIUS);

@@ -88,6 +88,8 @@ export type ScoreControl = {
 
 const GUST_LEVELS = [0.05, 0.5, 0.9, 0.95, 0.99];
 const CONTROL_STRIDE = 64;
+const LOWER_THRESHOLD = 25;
+const UPPER_THRESHOLD = 33;
 
 /**
  * Peak gusts, durations and losses of many sites under one storm, without and with the vortex layer.
@@ -129,9 +131,21 @@ export function scoreSites(storm: Storm, sites: SiteBatch, curve: DamageCurve, c
     }
     const hill = sites.topographicFactor[s]!;
     const exposure = exposureOf(`site ${s}`, sites.roughnessM[s]!, sites.fetchM, SECTOR_COUNT * s, hill, weights);
-    const times = followPassage(storm, latitude, longitude, exposure, passage);
-    let peak = 0;
-    for (let i = 1; i < times; i++) if (passage.gust[i]! > passage.gust[peak]!) peak = i;
+    // Gusts below the lower threshold matter only at a site that never reaches it, plain or in some draw.
+    let floor = LOWER_THRESHOLD;
+    let times = followPassage(storm, latitude, longitude, exposure, passage, floor);
+    let peak = highest(passage.gust, times);
+    if (times === 0 || passage.gust[peak]! < floor) {
+      floor = times === 0 ? 0 : passage.gust[peak]!;
+      times = followPassage(storm, latitude, longitude, exposure, passage, floor);
+      peak = highest(passage.gust, times);
+    }
+    let touched = drawPeaks(passage, times, peak, work, gusts);
+    if (touched && floor > 0 && lowest(gusts) < floor) {
+      times = followPassage(storm, latitude, longitude, exposure, passage);
+      peak = highest(passage.gust, times);
+      touched = drawPeaks(passage, times, peak, work, gusts);
+    }
     const plain = passage.gust[peak]!;
     requireGust('plain gust', s, plain);
     const u = passage.seaU[peak]!;
@@ -142,10 +156,9 @@ export function scoreSites(storm: Storm, sites: SiteBatch, curve: DamageCurve, c
     scores.plainMean[s] = sea * passage.meanFactor[peak]!;
     scores.plainDirection[s] = normalisedBearing(degrees(Math.atan2(-u, -v)));
     scores.plainTimeS[s] = states[passage.state[peak]! * STATE_SIZE + STATE.timeS]!;
-    scores.secondsAbove25[s] = plain >= 25 ? secondsAtLeast(storm, passage, times, 25) : 0;
-    scores.secondsAbove33[s] = plain >= 33 ? secondsAtLeast(storm, passage, times, 33) : 0;
+    scores.secondsAbove25[s] = plain >= LOWER_THRESHOLD ? secondsAtLeast(storm, passage, times, LOWER_THRESHOLD) : 0;
+    scores.secondsAbove33[s] = plain >= UPPER_THRESHOLD ? secondsAtLeast(storm, passage, times, UPPER_THRESHOLD) : 0;
 
-    const touched = drawPeaks(passage, times, peak, work, gusts);
     if (touched) drawQuantiles(gusts, GUST_LEVELS, levels);
     else levels.fill(plain);
     requireGust('99th percentile of the gust', s, levels[4]!);
@@ -228,6 +241,19 @@ function emptyScores(count: number): SiteScores {
     eventGroundUp: new Float64Array(DRAW_COUNT),
     eventGross: new Float64Array(DRAW_COUNT),
   };
+}
+
+/** Index of the first maximum. */
+function highest(gust: Float64Array, count: number): number {
+  let peak = 0;
+  for (let i = 1; i < count; i++) if (gust[i]! > gust[peak]!) peak = i;
+  return peak;
+}
+
+function lowest(values: Float64Array): number {
+  let least = Infinity;
+  for (let i = 0; i < values.length; i++) if (values[i]! < least) least = values[i]!;
+  return least;
 }
 
 function requireGust(quantity: string, site: number, value: number): void {

@@ -11,11 +11,12 @@ import type { EngineNotice, ResolvedFix, TrackFix } from './fixes.ts';
 import { motionAt } from './motion.ts';
 import type { ChainOptions } from './options.ts';
 import { legAt, positionAt } from './position.ts';
+import { writeQuietDistances } from './quiet-distance.ts';
 import { resolveFixes } from './resolution.ts';
 import { timeGrid } from './time-grid.ts';
 
 /** Numbers per state in `Storm.states`; the offsets are in STATE. */
-export const STATE_SIZE = 28;
+export const STATE_SIZE = 48;
 /** Offsets of a state's quantities, in the order in which the kernel reads them. */
 export const STATE = {
   /** Unit vector of the centre, and of east and north there [1]. */
@@ -57,6 +58,8 @@ export const STATE = {
   speed: 25,
   heading: 26,
   patternAngle: 27,
+  /** Squared chords beyond which the open-sea wind stays below 2, 3, ..., 21 m/s [1]; at outer times only. */
+  quietChord2: 28,
 } as const;
 
 /** A storm ready to be scored against sites: plain data that can be sent to another thread. */
@@ -105,6 +108,7 @@ export function prepareStorm(fixes: readonly TrackFix[], options: ChainOptions, 
     const timeS = grid.timeS[k]!;
     writeState(states, k * STATE_SIZE, resolved, timeS, resolution.hoursInland(timeS), wavenumber, angles);
   }
+  for (const k of grid.outer) writeQuiet(states, k * STATE_SIZE);
   return { fixes: resolved, options, notices: resolution.notices, wavenumber, stateCount, states, outer: grid.outer };
 }
 
@@ -173,6 +177,17 @@ function writeState(
   states[at + STATE.speed] = speed;
   states[at + STATE.heading] = heading;
   states[at + STATE.patternAngle] = patternAngle;
+}
+
+function writeQuiet(states: Float64Array, at: number): void {
+  const vortex = {
+    rMax: states[at + STATE.rMax]!,
+    b: states[at + STATE.b]!,
+    deficit: states[at + STATE.deficit]!,
+    f: 2 * states[at + STATE.halfF]!,
+  };
+  const motion = Math.hypot(states[at + STATE.motionU]!, states[at + STATE.motionV]!);
+  writeQuietDistances(vortex, motion, states, at + STATE.quietChord2);
 }
 
 /** Angle turned by the pattern up to each fix [rad]: the exact integral of a rate that is linear between fixes. */
