@@ -41,6 +41,7 @@ const run = (state: RunSummary['state'], finishedAt: string | null, p95Minor = 4
   currency: 'USD',
   grossPlainMinor: 158e8,
   gross: { p5: 186e8, p50: 268e8, p95: p95Minor, mean: 270e8 },
+  priceCurrency: 'USD',
   quotedMinor: 2363,
   chargedMinor: null,
   acceptedAt: '2026-12-18T08:52:00.000Z',
@@ -68,7 +69,7 @@ it('puts held rows and failures before drafts to carry on, and those before fres
 
 it('never states a lone loss: a result waits with its range', () => {
   const [item] = waitingItems([], [run('complete', '2026-12-18T08:56:00.000Z')], NOW);
-  expect(item?.text).toBe('Gross USD 186–412 million, 5–95 %.');
+  expect(item?.text).toBe('Gross USD 186–412 million, 5–95 %, on the track with the largest loss.');
 });
 
 it('forgets results after three days', () => {
@@ -79,4 +80,23 @@ it('spans whole decades around all results', () => {
   const axis = grossAxis([run('complete', null), run('complete', null, 4120e8)])!;
   expect(axis.ticks.map((tick) => decadeLabel(tick, 'USD'))).toEqual(['10 m', '100 m', '1 bn', '10 bn']);
   expect(grossAxis([])).toBeNull();
+});
+
+it('offers a sealed edition nobody has run, only when all runs are known', () => {
+  const sealed: Portfolio = {
+    ...portfolio('Orchard Row', null),
+    current: {
+      id: 'e9',
+      number: 1,
+      state: 'sealed',
+      asAt: '2026-11-30',
+      reconciliation: null,
+      updatedAt: '2026-12-18T07:00:00.000Z',
+    },
+  };
+  expect(waitingItems([sealed], [], NOW).map(({ title }) => title)).toEqual([
+    'Orchard Row, edition 1, hasn’t been run',
+  ]);
+  expect(waitingItems([sealed], null, NOW)).toEqual([]);
+  expect(waitingItems([sealed], [{ ...run('complete', null), editionId: 'e9' }], NOW)).toEqual([]);
 });

@@ -42,7 +42,7 @@ function WorkHome({ session }: { session: Session }) {
   const canWrite = holdsOneOf(session, UNDERWRITERS);
   const modeler = session.roles.includes('modeler');
   const runItems = runs.data?.items ?? [];
-  const waiting = canWrite ? waitingItems(portfolios.data?.items ?? [], runItems, now) : [];
+  const waiting = canWrite ? waitingItems(portfolios.data?.items ?? [], runs.data ? runItems : null, now) : [];
   const working = runItems.filter((run) => run.state === 'waiting' || run.state === 'working').length;
   const lastFinished = runItems.map((run) => run.finishedAt).find((at) => at !== null);
 
@@ -94,7 +94,7 @@ function WorkHome({ session }: { session: Session }) {
               quiet={
                 portfolios.data?.items.length === 0
                   ? 'Start by uploading a schedule of locations; you will be led through columns, checks and the seal.'
-                  : 'Nothing waits for you.'
+                  : 'Drafts to finish, held rows and fresh results will stand here.'
               }
             />
           )}

@@ -1,4 +1,4 @@
-import { Columns3, Hand, OctagonAlert, Stamp, TrendingUp, type LucideIcon } from 'lucide-react';
+import { Columns3, Hand, OctagonAlert, Play, Stamp, TrendingUp, type LucideIcon } from 'lucide-react';
 import type { Portfolio } from '#contract/portfolios.ts';
 import type { RunSummary } from '#contract/runs.ts';
 import { clockOrDay } from '../../lib/dates.ts';
@@ -20,6 +20,8 @@ export interface WaitingItem {
 }
 
 const RECENT_MS = 3 * 86_400_000;
+/** With fewer runs than a page holds, the list is complete. */
+const ALL_RUNS_BELOW = 20;
 
 const draftItem = (portfolio: Portfolio, now: Date): WaitingItem | null => {
   const { draft } = portfolio;
@@ -58,6 +60,24 @@ const draftItem = (portfolio: Portfolio, now: Date): WaitingItem | null => {
   };
 };
 
+/** A sealed edition that nobody has run: the next step, once all runs are known. */
+const unrunItem = (portfolio: Portfolio, runs: readonly RunSummary[], now: Date): WaitingItem | null => {
+  const { current, draft } = portfolio;
+  if (!current || draft || runs.length >= ALL_RUNS_BELOW || runs.some(({ editionId }) => editionId === current.id))
+    return null;
+  return {
+    key: current.id,
+    icon: Play,
+    tone: 'info',
+    weight: 3,
+    at: Date.parse(current.updatedAt),
+    when: `Sealed ${clockOrDay(current.updatedAt, now)}`,
+    title: `${portfolio.name}, edition ${current.number}, hasn’t been run`,
+    text: 'Choose a track and see the price first; a quote is free.',
+    action: { label: 'Quote a run', to: paths.newRun({ edition: current.id }) },
+  };
+};
+
 const runItem = (run: RunSummary, now: Date): WaitingItem | null => {
   const ended = run.finishedAt && Date.parse(run.finishedAt);
   if (!ended || now.getTime() - ended > RECENT_MS) return null;
@@ -80,14 +100,22 @@ const runItem = (run: RunSummary, now: Date): WaitingItem | null => {
     weight: 2,
     title: `${run.number} for ${run.portfolioName} is complete`,
     text: run.gross
-      ? `Gross ${moneyRange(run.gross.p5, run.gross.p95, run.currency)}, 5–95 %.`
+      ? `Gross ${moneyRange(run.gross.p5, run.gross.p95, run.currency)}, 5–95 %${run.scenariosTotal > 1 ? ', on the track with the largest loss' : ''}.`
       : 'No vortex range: layer off, or no site under it.',
     action: { label: 'Open result', to: paths.run(run.id) },
   };
 };
 
 /** What waits for a person: held rows and failures first, then drafts to carry on, then fresh results. */
-export const waitingItems = (portfolios: readonly Portfolio[], runs: readonly RunSummary[], now: Date): WaitingItem[] =>
-  [...portfolios.map((portfolio) => draftItem(portfolio, now)), ...runs.map((run) => runItem(run, now))]
+export const waitingItems = (
+  portfolios: readonly Portfolio[],
+  /** Null while they are being read. */
+  runs: readonly RunSummary[] | null,
+  now: Date,
+): WaitingItem[] =>
+  [
+    ...portfolios.map((portfolio) => draftItem(portfolio, now) ?? (runs && unrunItem(portfolio, runs, now))),
+    ...(runs ?? []).map((run) => runItem(run, now)),
+  ]
     .filter((item): item is WaitingItem => item !== null)
     .sort((a, b) => a.weight - b.weight || b.at - a.at);

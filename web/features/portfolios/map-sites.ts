@@ -21,6 +21,8 @@ export const boundsOfSites = (sites: MapSites): Bounds | null => {
   return bounds && padBounds(bounds, 0.08, 0.05);
 };
 
+const ON_TOP_MS = 10_000;
+
 const degrees = (text: string): number => Number(text.trim().replace('−', '-').replace(',', '.'));
 
 /** Rows where a fix would put them, as diamonds, among the other sites, as small circles. */
@@ -34,7 +36,7 @@ export const previewSites = (rows: readonly IntakeRow[], fix: Fix, others: Point
   if (moved.length === 0) return null;
   const kept = (others?.siteNo ?? []).map((_, index) => index).filter((index) => others!.state[index] !== 'held');
   const pick = <T>(column: readonly T[] | undefined) => kept.map((index) => column![index]!);
-  return withoutGusts({
+  const sites = withoutGusts({
     siteNo: [...pick(others?.siteNo), ...moved.map(({ row }) => row.row)],
     ref: [...pick(others?.ref), ...moved.map(({ row }) => row.siteRef ?? `Row ${row.row}`)],
     latitude: [...pick(others?.latitude), ...moved.map(({ latitude }) => latitude)],
@@ -42,4 +44,6 @@ export const previewSites = (rows: readonly IntakeRow[], fix: Fix, others: Point
     tivMinor: [...kept.map(() => 0), ...moved.map(() => 1)],
     state: [...kept.map(() => 'ready' as const), ...moved.map(() => 'notes' as const)],
   });
+  // The canvas lays strong gusts on top; that is how the moved rows stay above the others.
+  return { ...sites, plainMs: [...kept.map(() => null), ...moved.map(() => ON_TOP_MS)] };
 };

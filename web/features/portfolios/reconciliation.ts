@@ -19,7 +19,7 @@ export const tivScale = (
 /** file rows = ready + with notes + held + set aside, each with its TIV. */
 export const equationOf = (sum: Reconciliation, currency: string): { total: SumTerm; terms: SumTerm[] } => {
   const scale = tivScale(siteTiv(sum), currency);
-  const tiv = (minor: number) => `TIV ${scale.text(minor)} ${scale.unit}`.trimEnd();
+  const tiv = (minor: number) => (minor === 0 ? 'TIV 0' : `TIV ${scale.text(minor)} ${scale.unit}`.trimEnd());
   return {
     total: { label: 'File rows', value: count(sum.fileRows), note: 'less header line' },
     terms: [
@@ -60,7 +60,8 @@ export const tivSentence = (sum: Reconciliation, currency: string): string => {
   return `By TIV: ${share(sum.ready.tivMinor)} ready, ${share(sum.notes.tivMinor)} with notes, ${share(sum.held.tivMinor)} held`;
 };
 
-const CONTROL_CODE = 'FILE-06';
+/** The service's message that control totals don't tie. */
+export const CONTROL_CODE = 'FILE-06';
 
 export interface ControlVerdict {
   state: 'none' | 'ties' | 'differs';

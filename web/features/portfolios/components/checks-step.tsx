@@ -11,7 +11,7 @@ import { ProblemNotice } from '../../../ui/problem.tsx';
 import { Skeleton } from '../../../ui/skeleton.tsx';
 import { Table, Td, Th, Tr } from '../../../ui/table.tsx';
 import { messagesQuery } from '../edition-queries.ts';
-import { siteTiv, tivScale } from '../reconciliation.ts';
+import { CONTROL_CODE, siteTiv, tivScale } from '../reconciliation.ts';
 import { FileQuestions, isQuestion } from './file-questions.tsx';
 import { EquationCard } from './equation-card.tsx';
 import { FixPreview } from './fix-preview.tsx';
@@ -52,8 +52,11 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
   const preview = useRef<HTMLDivElement>(null);
   if (!edition.reconciliation) return null;
   const scale = tivScale(siteTiv(edition.reconciliation), edition.currency);
-  const others = edition.messages.filter(({ code }) => !isQuestion(code) && code !== 'FILE-06');
   const groups = messages.data?.groups ?? [];
+  // Said already: by a question, by the verdict beside the equation, or by a group of the list.
+  const others = edition.messages.filter(
+    ({ code }) => !isQuestion(code) && code !== CONTROL_CODE && !groups.some((group) => group.code === code),
+  );
   const sections = sectionsOf(groups, edition);
   const inOrder = sections.flatMap((section) => section.groups);
   const open = inOrder.find(({ code }) => code === chosen) ?? inOrder[0];
@@ -79,15 +82,18 @@ export function ChecksStep({ edition, canWrite, chosen, onChoose }: ChecksStepPr
         className="mb-3.5 flex-none"
       />
       <FileQuestions edition={edition} canWrite={canWrite} />
-      {others.map((message) => (
+      {messages.isSuccess && others.length > 0 && (
         <Message
-          key={message.code}
-          tone={message.severity === 'note' ? 'info' : 'caution'}
+          tone={others.every(({ severity }) => severity === 'note') ? 'info' : 'caution'}
           className="mb-3.5 flex-none"
         >
-          {message.text} <span className="text-ink-2">{message.code}</span>
+          {others.map(({ code, text }) => (
+            <p key={code}>
+              {text} <span className="text-ink-2">{code}</span>
+            </p>
+          ))}
         </Message>
-      ))}
+      )}
       {messages.isError ? (
         <ProblemNotice
           title="The messages weren’t read"

@@ -10,8 +10,9 @@ import { Card } from '../../../ui/card.tsx';
 import { TextField } from '../../../ui/field.tsx';
 import { Message } from '../../../ui/message.tsx';
 import { ProblemNotice } from '../../../ui/problem.tsx';
+import { useToast } from '../../../ui/toast.tsx';
 import { SkeletonRows, Table, Td, Th, Tr } from '../../../ui/table.tsx';
-import { rowsQuery, sitePointsQuery, useApplyFix } from '../edition-queries.ts';
+import { rowsQuery, sitePointsQuery, useApplyFix, useUndoFix } from '../edition-queries.ts';
 import { FIELD_NAMES } from '../field-names.ts';
 import { FIX_EFFECTS, placeAfter, trueMinus } from '../fix-preview.ts';
 import { previewSites } from '../map-sites.ts';
@@ -29,6 +30,8 @@ const MIN_REASON = 3;
 export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
   const rows = useInfiniteQuery(rowsQuery(edition.id, { code: group.code }));
   const applyFix = useApplyFix(edition.id);
+  const undo = useUndoFix(edition.id);
+  const toast = useToast();
   const [reason, setReason] = useState('');
   const [asked, setAsked] = useState(false);
   /** Null: every row with this message. */
@@ -36,17 +39,29 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
   const items = useMemo(() => rows.data?.pages.flatMap((page) => page.items) ?? [], [rows.data]);
   const size = picked ? picked.size : group.rows;
   const fix = edition.state === 'checked' ? group.fix : null;
-  const first = items[0]?.messages.find(({ code }) => code === group.code);
+  // What is said of the whole file is better than what is said of its first row.
+  const why =
+    edition.messages.find(({ code }) => code === group.code)?.text ??
+    items[0]?.messages.find(({ code }) => code === group.code)?.text;
 
   const apply = () => {
     setAsked(true);
     if (!fix || reason.trim().length < MIN_REASON || size === 0) return;
-    applyFix.mutate({
-      code: group.code,
-      kind: fix.kind,
-      reason: reason.trim(),
-      ...(picked && { rows: [...picked] }),
-    });
+    applyFix
+      .mutateAsync({
+        code: group.code,
+        kind: fix.kind,
+        reason: reason.trim(),
+        ...(picked && { rows: [...picked] }),
+      })
+      .then(() =>
+        // The preview may be gone by then: its message can have no rows left.
+        toast({
+          text: `${group.title}: ${counted(size, 'row')} changed.`,
+          undo: { label: 'Undo', onUndo: () => undo.mutate(undefined) },
+        }),
+      )
+      .catch(() => undefined);
   };
   const toggle = (row: number) => {
     const next = new Set(picked ?? []);
@@ -66,9 +81,9 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
       aside={`${counted(group.rows, 'row')}, ${shortMoney(group.tivMinor, edition.currency)}`}
       className="flex flex-col overflow-hidden wide:max-h-full"
     >
-      {first && <p className="px-4 pt-1 text-13 text-ink-2">{first.text}</p>}
+      {why && <p className="px-4 pt-1 pb-2.5 text-13 text-ink-2">{why}</p>}
       {fix && movesPlaces(fix.kind) && <FixMap editionId={edition.id} rows={items} kind={fix.kind} />}
-      <div className="mt-2.5 flex-1 overflow-y-auto border-t border-rule max-wide:max-h-120 wide:min-h-0">
+      <div className="flex-1 overflow-y-auto border-t border-rule max-wide:max-h-120 wide:min-h-32">
         {rows.isError ? (
           <ProblemNotice
             title="The rows weren’t read"
@@ -162,7 +177,7 @@ function FixMap({ editionId, rows, kind }: { editionId: string; rows: readonly I
       label="Rows after the fix, among the other sites"
       sites={sites}
       describe={(index) => sites.ref[index] ?? ''}
-      className="mt-2.5 h-48 flex-none border-t border-rule max-wide:h-60"
+      className="h-48 min-h-28 shrink border-t border-rule max-wide:h-60"
       legend={
         <ul className="flex gap-3.5 rounded-2 border border-rule-strong bg-sheet px-2.5 py-1 text-12">
           <li className="flex items-center gap-1.5">

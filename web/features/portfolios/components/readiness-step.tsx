@@ -129,8 +129,8 @@ function QualityCard({ edition, total }: { edition: Edition; total: number }) {
           'Every scored site is at street level or better.'
         ) : (
           <>
-            <b className="text-ink">{counted(poorSites, 'site')}</b> {poorSites === 1 ? 'is' : 'are'} at postcode or
-            worse. Within 3, 10 or 50 km of such a point the gust can be quite another.
+            <b className="text-ink">{counted(poorSites, 'site')}</b> {poorSites === 1 ? 'is' : 'are'} known only to
+            postcode, town or region, or not at all. The gust can be quite another 3 km away.
           </>
         )}
       </Foot>

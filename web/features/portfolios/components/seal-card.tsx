@@ -63,14 +63,15 @@ export function SealCard({ edition, canWrite, onSealed }: SealCardProps) {
   const all = siteTiv(sum);
   const submit = () => {
     if (blocker || seal.isPending || !canWrite) return;
-    seal.mutate(
-      {
+    seal
+      .mutateAsync({
         asAt,
         heldReason: needs.held ? heldReason.trim() : null,
         controlReason: needs.control ? controlReason.trim() : null,
-      },
-      { onSuccess: onSealed },
-    );
+      })
+      // A sealed edition has no seal card any more; the promise outlives it.
+      .then(onSealed)
+      .catch(() => undefined);
   };
 
   return (
