@@ -1,0 +1,161 @@
+import { useState } from 'react';
+import { Gauge, Info, Waves } from 'lucide-react';
+import type { Run, RunScenario } from '#contract/runs.ts';
+import { moneyRangeParts, shortMoney } from '../../../lib/money.ts';
+import { useUnits } from '../../../lib/units.tsx';
+import { linearAxis } from '../../../ui/charts/axis.ts';
+import { RangeBar } from '../../../ui/charts/range-bar.tsx';
+import { Segmented } from '../../../ui/segmented.tsx';
+import { noRangeReason } from '../result-words.ts';
+
+type Measure = 'groundUp' | 'gross';
+const MEASURES = [
+  { value: 'groundUp', label: 'Ground-up' },
+  { value: 'gross', label: 'Gross' },
+] as const;
+
+interface HeadlineCardProps {
+  run: Run;
+  scenario: RunScenario;
+}
+
+/** The loss of one track: range first and largest, the centre in a sentence. */
+export function HeadlineCard({ run, scenario }: HeadlineCardProps) {
+  const [measure, setMeasure] = useState<Measure>('gross');
+  const result = scenario.result!;
+  const { currency } = run;
+  const enhanced = measure === 'gross' ? result.gross : result.groundUp;
+  const plain = measure === 'gross' ? result.grossPlainMinor : result.groundUpPlainMinor;
+  const axis = linearAxis(0, Math.max(plain, enhanced?.p95 ?? 0, 1), 5);
+  const scale = moneyRangeParts(axis.low, axis.high, currency);
+  const label = measure === 'gross' ? 'Gross loss' : 'Ground-up loss';
+  const isZero = plain === 0 && (enhanced === null || enhanced.p95 === 0);
+  return (
+    <section aria-label={`${label}, ${scenario.name}`} className="rounded-3 border border-rule bg-sheet shadow-1">
+      <div className="px-4.5 pt-3.5 pb-2">
+        <div className="flex flex-wrap items-center gap-x-3 gap-y-2">
+          <h2 className="text-15">
+            {label}, {scenario.name}
+          </h2>
+          <Segmented
+            label="Loss"
+            value={measure}
+            options={MEASURES}
+            onChange={setMeasure}
+            className="ml-auto max-rail:ml-0"
+          />
+        </div>
+        {isZero ? (
+          <Zero largestMs={result.peakGustMs.plain} />
+        ) : (
+          <>
+            {enhanced ? (
+              <Range low={enhanced.p5} high={enhanced.p95} currency={currency} />
+            ) : (
+              <p className="mt-2.5 flex flex-wrap items-baseline gap-x-2.5">
+                <span className="text-18 text-ink-2">plain {currency}</span>
+                <span className="text-40 font-black tracking-tight">
+                  {moneyRangeParts(plain, plain, currency).amount}
+                </span>
+                <b className="text-20">{moneyRangeParts(plain, plain, currency).scale}</b>
+                <span className="basis-full text-14 font-bold">{noRangeReason(run.options.mesovortices)}</span>
+              </p>
+            )}
+            {enhanced && (
+              <p className="mt-1.5">
+                <b>Central {shortMoney(enhanced.p50, currency).replace(`${currency} `, '')}.</b>{' '}
+                <span className="text-ink-2">
+                  5–95 % over 264 vortex draws; mean {shortMoney(enhanced.mean, currency).replace(`${currency} `, '')}.
+                </span>
+              </p>
+            )}
+            <RangeBar
+              size="headline"
+              axis={axis}
+              enhanced={enhanced}
+              plain={plain}
+              format={(minor) => moneyRangeParts(minor, axis.high, currency).amount.split('–')[0]!}
+              className="mt-3"
+            />
+            <p className="text-right text-12 text-ink-2">
+              {currency} {scale.scale}
+            </p>
+          </>
+        )}
+      </div>
+      <ul className="grid grid-cols-2 gap-x-4 border-t border-rule px-4.5 py-3 text-13 leading-snug max-rail:grid-cols-1 max-rail:gap-y-2.5">
+        <li className="flex gap-2.5">
+          <Waves size={17} strokeWidth={1.75} className="mt-px flex-none text-verdigris" aria-hidden />
+          {enhanced ? (
+            <span>
+              <b>{vorticesAdd(enhanced.p50 - plain, currency)}</b> at the centre. Plain is one run without them: no
+              vortex range.
+            </span>
+          ) : (
+            <span>
+              <b>Plain only:</b> {noRangeReason(run.options.mesovortices)}.
+            </span>
+          )}
+        </li>
+        <li>
+          <MaximaLine scenario={scenario} />
+        </li>
+      </ul>
+      {result.engineNotices.length > 0 && (
+        <ul className="border-t border-rule px-4.5 py-2.5 text-12 text-ink-2">
+          {result.engineNotices.map((notice) => (
+            <li key={notice.code} className="flex gap-2 py-0.5">
+              <Info size={14} strokeWidth={1.75} className="mt-px flex-none" aria-hidden />
+              {notice.text}
+            </li>
+          ))}
+        </ul>
+      )}
+    </section>
+  );
+}
+
+const vorticesAdd = (difference: number, currency: string) =>
+  difference >= 0
+    ? `Vortices add ${shortMoney(difference, currency)}`
+    : `Vortices take ${shortMoney(-difference, currency)}`;
+
+function Range({ low, high, currency }: { low: number; high: number; currency: string }) {
+  const { amount, scale } = moneyRangeParts(low, high, currency);
+  return (
+    <p className="mt-2 flex flex-wrap items-baseline gap-x-2.5">
+      <span className="text-20 text-ink-2">{currency}</span>
+      <span className="text-52 font-black tracking-tight max-rail:text-44">{amount}</span>
+      <b className="text-22">{scale}</b>
+    </p>
+  );
+}
+
+function Zero({ largestMs }: { largestMs: number }) {
+  const { gust, label } = useUnits();
+  return (
+    <div className="py-3">
+      <p className="text-28 font-black tracking-tight">No loss from this track</p>
+      <p className="mt-1 text-ink-2">
+        The strongest plain gust at any site is {gust(largestMs)} {label}. A zero-loss record stands on the run slip.
+      </p>
+    </div>
+  );
+}
+
+/** Both maxima of the strongest fix, and the one used. */
+export function MaximaLine({ scenario }: { scenario: RunScenario }) {
+  const { gust, label } = useUnits();
+  const { reportedMs, pressureImpliedMs, used } = scenario.result!.maxima;
+  const reported = reportedMs === null ? 'no wind was reported' : `reported wind ${gust(reportedMs)}`;
+  const implied = pressureImpliedMs === null ? 'no pressure was given' : `pressure gives ${gust(pressureImpliedMs)}`;
+  return (
+    <span className="flex gap-2.5">
+      <Gauge size={17} strokeWidth={1.75} className="mt-px flex-none text-ink-2" aria-hidden />
+      <span>
+        <b>Intensity from {used}.</b> Strongest fix, {label}: {used === 'pressure' ? implied : reported};{' '}
+        {used === 'pressure' ? reported : implied}.
+      </span>
+    </span>
+  );
+}

@@ -1,0 +1,89 @@
+import { useMemo, useState } from 'react';
+import { useQuery } from '@tanstack/react-query';
+import type { Run, RunScenario } from '#contract/runs.ts';
+import { useUnits } from '../../../lib/units.tsx';
+import { boundsOf, longitudeNear, padBounds, type Bounds, type LonLat } from '../../../ui/map/geography.ts';
+import type { MapBands, MapSites, MapView } from '../../../ui/map/map-data.ts';
+import { StormMap } from '../../../ui/map/storm-map.tsx';
+import { footprintQuery, pointsQuery } from '../result-queries.ts';
+import { mapSummary } from '../result-words.ts';
+
+interface ResultMapProps {
+  run: Run;
+  scenario: RunScenario;
+  chosenSiteNo: number | null;
+  onChooseSite: (siteNo: number) => void;
+  fullSize: { to: string; isFull: boolean };
+  className?: string;
+}
+
+const WORLD: Bounds = [-100, 0, -40, 45];
+
+/** Where the sites are, else where the wind is, else the track. */
+const framing = (scenario: RunScenario, sites: MapSites | null, bbox: Bounds | null): Bounds => {
+  const reference = scenario.path[Math.floor(scenario.path.length / 2)]?.[0] ?? 0;
+  const points: LonLat[] = sites
+    ? sites.longitude.map((longitude, index) => [longitudeNear(longitude, reference), sites.latitude[index]!])
+    : [];
+  const around = boundsOf(points);
+  if (around) return padBounds(around, 0.12, 0.35);
+  return bbox ?? boundsOf(scenario.path) ?? WORLD;
+};
+
+export function ResultMap({ run, scenario, chosenSiteNo, onChooseSite, fullSize, className }: ResultMapProps) {
+  const { gust, label } = useUnits();
+  const result = scenario.result!;
+  const vortices = result.gross !== null;
+  const views: readonly MapView[] = vortices ? ['plain', 'p50', 'p90', 'difference'] : ['plain'];
+  const [wished, setWished] = useState<MapView>('p50');
+  const view = views.includes(wished) ? wished : 'plain';
+  const at = { runId: run.id, runScenarioId: scenario.id };
+  const footprint = useQuery(footprintQuery(at, view));
+  const points = useQuery(pointsQuery(at));
+  const sites = points.data ?? null;
+
+  const bands = useMemo<MapBands | null>(
+    () =>
+      footprint.data
+        ? { view: footprint.data.view, levels: footprint.data.levels, features: footprint.data.bands.features }
+        : null,
+    [footprint.data],
+  );
+  const track = useMemo(() => ({ path: scenario.path, times: scenario.pathTimes }), [scenario]);
+  const bounds = useMemo(
+    () => framing(scenario, sites, footprint.data?.bbox ?? null),
+    // The frame is set by the sites; another view of the same storm doesn't move it.
+    // eslint-disable-next-line react-hooks/exhaustive-deps
+    [scenario, sites, sites === null ? footprint.data : null],
+  );
+  const chosen = sites && chosenSiteNo !== null ? sites.siteNo.indexOf(chosenSiteNo) : -1;
+  const summary = useMemo(() => mapSummary(scenario, sites, gust, label), [scenario, sites, gust, label]);
+
+  return (
+    <StormMap
+      label={`Footprint of ${scenario.name}`}
+      summary={summary}
+      bounds={bounds}
+      track={track}
+      bands={bands}
+      bandsNote={
+        footprint.isPending
+          ? 'Drawing the footprint …'
+          : footprint.isError
+            ? `The footprint wasn’t read: ${footprint.error.message}`
+            : bands && bands.features.length === 0
+              ? 'No footprint: nowhere above 20 m/s near these sites.'
+              : null
+      }
+      sites={sites}
+      chosenSite={chosen === -1 ? null : chosen}
+      onChooseSite={(index) => sites && onChooseSite(sites.siteNo[index]!)}
+      view={view}
+      views={views}
+      onView={setWished}
+      fullSize={fullSize}
+      run={run.number}
+      className={className}
+    />
+  );
+}

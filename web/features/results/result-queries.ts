@@ -1,0 +1,89 @@
+import { keepPreviousData, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
+import type { z } from 'zod';
+import {
+  cancelRun,
+  getFootprint,
+  getResultPoints,
+  getRun,
+  getRunSlip,
+  getSiteDetail,
+  listSites,
+  type FootprintView,
+  type SiteSort,
+} from '#contract/runs.ts';
+import { call } from '../../api/call.ts';
+
+const runKey = (runId: string) => ['runs', 'one', runId] as const;
+
+export const runQuery = (runId: string) =>
+  queryOptions({ queryKey: runKey(runId), queryFn: ({ signal }) => call(getRun, { params: { runId }, signal }) });
+
+export interface ResultAddress {
+  runId: string;
+  runScenarioId: string;
+}
+
+/** Results of a finished track never change. */
+const FOREVER = { staleTime: Infinity } as const;
+
+export const footprintQuery = (at: ResultAddress, view: FootprintView) =>
+  queryOptions({
+    queryKey: [...runKey(at.runId), at.runScenarioId, 'footprint', view],
+    queryFn: ({ signal }) => call(getFootprint, { params: at, query: { view }, signal }),
+    ...FOREVER,
+  });
+
+export const pointsQuery = (at: ResultAddress) =>
+  queryOptions({
+    queryKey: [...runKey(at.runId), at.runScenarioId, 'points'],
+    queryFn: ({ signal }) => call(getResultPoints, { params: at, signal }),
+    ...FOREVER,
+  });
+
+export interface SitesFilter {
+  sort: z.output<typeof SiteSort>;
+  direction: 'asc' | 'desc';
+  minGustMs?: number | undefined;
+  search?: string | undefined;
+}
+
+export const SITES_PAGE = 100;
+
+export const sitesQuery = (at: ResultAddress, filter: SitesFilter, page: number) =>
+  queryOptions({
+    queryKey: [...runKey(at.runId), at.runScenarioId, 'sites', filter, page],
+    queryFn: ({ signal }) =>
+      call(listSites, {
+        params: at,
+        query: { ...filter, offset: page * SITES_PAGE, limit: SITES_PAGE },
+        signal,
+      }),
+    ...FOREVER,
+    ...(page === 0 && { placeholderData: keepPreviousData }),
+  });
+
+export const siteQuery = (at: ResultAddress, siteNo: number) =>
+  queryOptions({
+    queryKey: [...runKey(at.runId), at.runScenarioId, 'site', siteNo],
+    queryFn: ({ signal }) => call(getSiteDetail, { params: { ...at, siteNo }, signal }),
+    ...FOREVER,
+  });
+
+export const slipQuery = (runId: string) =>
+  queryOptions({
+    queryKey: [...runKey(runId), 'slip'],
+    queryFn: ({ signal }) => call(getRunSlip, { params: { runId }, signal }),
+  });
+
+export function useCancelRun(runId: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: () => call(cancelRun, { params: { runId } }),
+    onSuccess: (run) => {
+      client.setQueryData(runQuery(runId).queryKey, run);
+      void client.invalidateQueries({ queryKey: ['runs', 'list'] });
+      void client.invalidateQueries({ queryKey: ['runs', 'recent'] });
+      void client.invalidateQueries({ queryKey: ['billing'] });
+    },
+  });
+}
