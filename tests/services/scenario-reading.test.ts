@@ -98,6 +98,14 @@ describe('NOAA best-track text', () => {
     expect(read.faults.map(({ path }) => path)).toEqual(['line 5', 'line 2', 'line 3', 'line 4']);
   });
 
+  it('says which fixes the source marks as no tropical cyclone', () =>
+    expect(
+      readBestTrack(stored('AL092022_IAN.txt')).findings.map(({ code, text }) => [code, text.slice(0, 36)]),
+    ).toEqual([
+      ['TRACK-14', 'Fixes 1–2 are marked a low without t'],
+      ['TRACK-14', 'Fixes 39–40 are marked extratropical'],
+    ]));
+
   it('says when the header announces another number of fixes', () =>
     expect(
       readBestTrack(stored('AL092022_IAN.txt').trim().split('\n').slice(0, -1).join('\n')).findings,

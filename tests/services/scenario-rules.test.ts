@@ -31,6 +31,7 @@ describe('what keeps a track from being saved', () => {
     ['TRACK-05', [fixAt(0, { centralPressureHpa: 1080 }), fixAt(6)]],
     ['TRACK-09', [fixAt(0, { centralPressureHpa: null, maxWindMs: null }), fixAt(6)]],
     ['TRACK-12', [fixAt(0, { radiusOfMaxWindM: 30 }), fixAt(6)]],
+    ['TRACK-18', [fixAt(0), fixAt(365 * 24, { latitude: 21 })]],
   ])('%s', (code, fixes) => {
     expect(codes(fixes)).toEqual([code]);
     expect(isSavable(checkEntry(fixes, false).findings)).toBe(false);

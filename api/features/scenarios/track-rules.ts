@@ -24,6 +24,8 @@ export type ResolvedRule = {
 
 const FASTEST_MS = 35;
 const EQUATOR_DEG = 5;
+/** The longest-lived storms on record lasted a little over a month. */
+const LONGEST_DAYS = 45;
 const TROPICS_DEG = 60;
 const PRESSURE_HPA = { least: 850, most: 1025 };
 const AMBIENT_HPA = { least: 950, most: 1040 };
@@ -170,6 +172,18 @@ const CHECKS_BEFORE_RESOLVING: EntryRule[] = [
         }
         return said.map((text) => ({ fix: index, text: `${at(fix, index)}: ${text}` }));
       }),
+  },
+  {
+    code: 'TRACK-18',
+    severity: 'refuse',
+    title: 'Too long a track',
+    check: (fixes) => {
+      const times = fixes.map(seconds);
+      const days = times.length === 0 ? 0 : (Math.max(...times) - Math.min(...times)) / 86_400;
+      if (days <= LONGEST_DAYS) return [];
+      const text = `The track lasts ${plain(days, 0)} days. No storm has lasted ${LONGEST_DAYS}, and every step between would be computed. Look for a wrong year or month, or for two storms in one track.`;
+      return [{ fix: null, text }];
+    },
   },
   {
     code: 'TRACK-07',
