@@ -25,6 +25,7 @@ export const router = createBrowserRouter([
           { path: 'runs', lazy: () => import('./pages/runs.tsx') },
           { path: 'runs/new', lazy: () => import('./pages/new-run.tsx') },
           { path: 'runs/:runId', lazy: () => import('./pages/run.tsx') },
+          { path: 'billing', lazy: () => import('./pages/billing.tsx') },
           { path: 'limits', lazy: () => import('./pages/limits.tsx') },
           { path: '*', lazy: () => import('./pages/not-found.tsx') },
         ],
