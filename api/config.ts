@@ -26,7 +26,7 @@ const Environment = z
     STRIPE_WEBHOOK_SECRET: z.string().min(8),
     /** Address of the local payment stand-in; absent, the real provider is called. */
     STRIPE_API_URL: optional(z.url()),
-    /** Threads a worker scores sites with; absent, one fewer than the machine's cores. */
+    /** Threads a worker scores sites with; absent, two. Results don't depend on it. */
     COMPUTE_THREADS: optional(z.coerce.number().int().min(1).max(256)),
   })
   .superRefine((values, check) => {

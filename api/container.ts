@@ -7,9 +7,12 @@ import { listLetters } from './adapters/mail/sink/letters.ts';
 import { SmtpMail } from './adapters/mail/smtp-mail.ts';
 import { StripePayments } from './adapters/payments/stripe.ts';
 import type { AppParts } from './app.ts';
+import { engineVersion } from './compute/engine-version.ts';
 import { landIndex } from './compute/land.ts';
+import { ThreadPool, type EnginePool } from './compute/pool.ts';
 import type { Config } from './config.ts';
 import { createDatabase } from './db/database.ts';
+import { Listener } from './db/listener.ts';
 import { AuditLog } from './features/audit/audit-log.ts';
 import { BillingService } from './features/billing/billing-service.ts';
 import { billingRoutes } from './features/billing/billing-routes.ts';
@@ -23,6 +26,7 @@ import { paymentWebhookRoutes } from './features/billing/webhook-routes.ts';
 import { calibrationRoutes } from './features/calibrations/calibration-routes.ts';
 import { CalibrationService } from './features/calibrations/calibration-service.ts';
 import { CalibrationStore } from './features/calibrations/calibration-store.ts';
+import { ModelsReader } from './features/calibrations/models-reader.ts';
 import { curveRoutes } from './features/curves/curve-routes.ts';
 import { CurveService } from './features/curves/curve-service.ts';
 import { CurveStore } from './features/curves/curve-store.ts';
@@ -32,12 +36,25 @@ import { EditionStore } from './features/portfolios/edition-store.ts';
 import { FixService } from './features/portfolios/fix-service.ts';
 import { IntakeStore } from './features/portfolios/intake-store.ts';
 import { offshoreFrom } from './features/portfolios/offshore.ts';
+import { PortfolioReader } from './features/portfolios/portfolio-reader.ts';
 import { portfolioRoutes } from './features/portfolios/portfolio-routes.ts';
 import { PortfolioService } from './features/portfolios/portfolio-service.ts';
 import { PortfolioStore } from './features/portfolios/portfolio-store.ts';
 import { SealService } from './features/portfolios/seal-service.ts';
 import { SiteStore } from './features/portfolios/site-store.ts';
 import { UploadService } from './features/portfolios/upload-service.ts';
+import { resultRoutes } from './features/results/result-routes.ts';
+import { ResultService } from './features/results/result-service.ts';
+import { ResultStore } from './features/results/result-store.ts';
+import { QuoteService } from './features/runs/quote-service.ts';
+import { QuoteStore } from './features/runs/quote-store.ts';
+import { RunClosing } from './features/runs/run-closing.ts';
+import { RunReader } from './features/runs/run-reader.ts';
+import { runRoutes } from './features/runs/run-routes.ts';
+import { RunService } from './features/runs/run-service.ts';
+import { RunStore } from './features/runs/run-store.ts';
+import { ScoreJob } from './features/runs/score-job.ts';
+import { ScenarioReader } from './features/scenarios/scenario-reader.ts';
 import { scenarioRoutes } from './features/scenarios/scenario-routes.ts';
 import { ScenarioService } from './features/scenarios/scenario-service.ts';
 import { ScenarioStore } from './features/scenarios/scenario-store.ts';
@@ -69,6 +86,7 @@ export interface Overrides {
   payments?: Payments;
   limits?: Limits;
   log?: Logger;
+  pool?: EnginePool;
 }
 
 export interface Container {
@@ -84,6 +102,7 @@ export interface Container {
   audit: AuditLog;
   outbox: Outbox;
   checkJob: CheckJob;
+  scoreJob: ScoreJob;
   appParts: AppParts;
   close(): Promise<void>;
 }
@@ -101,6 +120,11 @@ const SECRET_PATHS = [
 
 const createLog = (level: string): Logger =>
   pino({ level, base: { service: 'gustloom' }, redact: { paths: SECRET_PATHS, censor: '[kept back]' } });
+
+/** Threads the engine runs on. Workers keep theirs; an API process needs one now and then, to explain a site. */
+const THREADS = 2;
+const enginePool = (role: 'api' | 'worker', threads: number): EnginePool =>
+  role === 'worker' ? new ThreadPool({ threads, kept: threads }) : new ThreadPool({ threads: 1, kept: 0 });
 
 /** The composition root: builds everything once, hands each part what it needs. `role` says which process it is for. */
 export const createContainer = (config: Config, role: 'api' | 'worker', overrides: Overrides = {}): Container => {
@@ -151,6 +175,21 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
     publicUrl: config.publicUrl,
   });
 
+  // Runs and results
+  const pool = overrides.pool ?? enginePool(role, config.computeThreads ?? THREADS);
+  const listener = new Listener(config.databaseUrl, log);
+  const results = new ResultStore();
+  const runBase = {
+    ...{ transact, audit, clock, ids, outbox, engineVersion, pool, results, billing: ledger },
+    ...{ runs: new RunStore(), quotes: new QuoteStore(), editions: new PortfolioReader() },
+    ...{ tracks: new ScenarioReader(), models: new ModelsReader(new CalibrationStore()) },
+    ...{ jobs: queue, announcements: listener, publicUrl: config.publicUrl },
+  };
+  const runParts = { ...runBase, closing: new RunClosing(runBase) };
+  const runServices = { quotes: new QuoteService(runParts), runs: new RunService(runParts) };
+  const scoreJob = new ScoreJob(runParts);
+  const resultService = new ResultService({ ...runBase, tracks: new RunReader(runBase) });
+
   const routers: Router[] = [
     sessionRoutes(sessions, cookies, limitSignIn(limits)),
     portfolioRoutes(portfolioServices),
@@ -158,13 +197,15 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
     curveRoutes(curves),
     calibrationRoutes(calibrations),
     billingRoutes(billing),
+    runRoutes(runServices),
+    resultRoutes(resultService),
   ];
   const rawRouters: Router[] = [paymentWebhookRoutes(settlement)];
   const { sinkFolder } = config.mail;
   const devRouters: Router[] = !isProduction && sinkFolder ? [mailPage(() => listLetters(sinkFolder))] : [];
 
   return {
-    ...{ config, log, database, transact, queue, clock, ids, mail, blobs, audit, outbox, checkJob },
+    ...{ config, log, database, transact, queue, clock, ids, mail, blobs, audit, outbox, checkJob, scoreJob },
     appParts: {
       ...{ log, limits, isProduction, routers, rawRouters, devRouters },
       publicUrl: config.publicUrl,
@@ -187,6 +228,8 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
     },
     close: async () => {
       await queue.stop();
+      await listener.close();
+      await pool.close();
       await database.destroy();
     },
   };

@@ -1,23 +1,19 @@
-import { move, transferableSymbol, valueSymbol } from 'piscina';
 import { DomainError } from '#engine/errors.ts';
+import { drawPeaks, makeDrawWork } from '#engine/footprint/draws-of-site.ts';
 import { footprintGrid } from '#engine/footprint/grid.ts';
+import { followPassage, makePassage } from '#engine/footprint/passage.ts';
 import { scoreSites, type SiteBatch } from '#engine/footprint/site-peaks.ts';
 import { gustLadder, siteSeries, staysInEye } from '#engine/footprint/site-series.ts';
+import { siteExposure, type Site } from '#engine/footprint/wind-at.ts';
+import { greatCircleDistance, initialBearing } from '#engine/geo/geodesy.ts';
 import { fetchBySector } from '#engine/geo/land.ts';
+import { DRAW_COUNT, DRAW_WEIGHT_TOTAL, DRAW_WEIGHT_UNITS } from '#engine/ring/draws.ts';
 import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
-import { prepareStorm } from '#engine/track/storm.ts';
+import { prepareStorm, STATE, STATE_SIZE, type Storm } from '#engine/track/storm.ts';
+import { radians } from '#engine/units.ts';
 import { footprintBands } from './bands.ts';
 import { landIndex } from './land.ts';
 import type { Answer, ExplainTask, FootprintTask, ScoreTask, StopFlag, StormTask, Tasks } from './protocol.ts';
-
-/** Hands the arrays of a reply over instead of copying them. */
-const moved = <Reply extends object>(reply: Reply): Answer<Reply> => {
-  const buffers = Object.values(reply).flatMap((value: unknown) => (ArrayBuffer.isView(value) ? [value.buffer] : []));
-  return move({
-    [transferableSymbol]: buffers,
-    [valueSymbol]: { reply },
-  } as unknown as ArrayBuffer) as unknown as Answer<Reply>;
-};
 
 const STOPPED = { stopped: true } as const;
 const isStopped = (stop: StopFlag) => Atomics.load(stop, 0) !== 0;
@@ -32,7 +28,7 @@ const answer = <Reply>(work: () => Answer<Reply>): Answer<Reply> => {
 };
 
 export const storm = ({ fixes, options }: StormTask): Answer<Tasks['storm']['reply']> =>
-  answer(() => moved(prepareStorm(fixes, options, landIndex())));
+  answer(() => ({ reply: prepareStorm(fixes, options, landIndex()) }));
 
 /** Overland distances from the land polygons, for the sites on land that come without. */
 const fillFetch = ({ count, roughnessM, latitude, longitude, fetchM }: SiteBatch): void => {
@@ -49,7 +45,7 @@ export const score = ({ storm: prepared, sites, curve, stop }: ScoreTask): Answe
     if (isStopped(stop)) return STOPPED;
     fillFetch(sites);
     const scores = scoreSites(prepared, sites, curve, { shouldStop: () => isStopped(stop) });
-    return isStopped(stop) ? STOPPED : moved(scores);
+    return isStopped(stop) ? STOPPED : { reply: scores };
   });
 
 export const footprint = ({ storm: prepared, focus, stop }: FootprintTask): Answer<Tasks['footprint']['reply']> =>
@@ -60,7 +56,7 @@ export const footprint = ({ storm: prepared, focus, stop }: FootprintTask): Answ
     return { reply: grid && { grid, bands: footprintBands(grid) } };
   });
 
-export const explain = ({ fixes, options, site }: ExplainTask): Answer<Tasks['explain']['reply']> =>
+export const explain = ({ fixes, options, site, gustsMs }: ExplainTask): Answer<Tasks['explain']['reply']> =>
   answer(() => {
     const prepared = prepareStorm(fixes, options, landIndex());
     const fetch = new Float64Array(SECTOR_COUNT);
@@ -73,11 +69,44 @@ export const explain = ({ fixes, options, site }: ExplainTask): Answer<Tasks['ex
         series: siteSeries(prepared, whole),
         ladder: gustLadder(prepared, whole),
         staysInEye: staysInEye(prepared, whole),
+        passing: passingOf(prepared, whole),
+        chances: chancesOf(prepared, whole, gustsMs),
         wavenumber: prepared.wavenumber,
         notices: prepared.notices,
       },
     };
   });
+
+const passingOf = ({ states, outer }: Storm, site: Site): Tasks['explain']['reply']['passing'] => {
+  let nearest = 0;
+  let distanceM = Infinity;
+  const centreAt = (at: number) => ({
+    latitude: states[at + STATE.latitude]!,
+    longitude: states[at + STATE.longitude]!,
+  });
+  for (const k of outer) {
+    const distance = greatCircleDistance(centreAt(k * STATE_SIZE), site);
+    if (distance >= distanceM) continue;
+    distanceM = distance;
+    nearest = k * STATE_SIZE;
+  }
+  const off = initialBearing(centreAt(nearest), site) - states[nearest + STATE.heading]!;
+  return { distanceM, side: Math.sin(radians(off)) >= 0 ? 'right' : 'left' };
+};
+
+const chancesOf = (prepared: Storm, site: Site, gustsMs: readonly number[]): number[] => {
+  const passage = makePassage(prepared);
+  const times = followPassage(prepared, site.latitude, site.longitude, siteExposure(site), passage);
+  let peak = 0;
+  for (let i = 1; i < times; i++) if (passage.gust[i]! > passage.gust[peak]!) peak = i;
+  const peaks = new Float64Array(DRAW_COUNT);
+  drawPeaks(passage, times, peak, makeDrawWork(prepared.stateCount), peaks);
+  return gustsMs.map((gust) => {
+    let weight = 0;
+    for (let d = 0; d < DRAW_COUNT; d++) if (peaks[d]! >= gust) weight += DRAW_WEIGHT_UNITS[d]!;
+    return weight / DRAW_WEIGHT_TOTAL;
+  });
+};
 
 /** Loads the land polygons before the first task needs them. */
 export const warm = (): void => {

@@ -33,12 +33,16 @@ export type FootprintTask = {
 };
 export type FootprintReply = { readonly grid: FootprintGrid; readonly bands: Record<BandView, Bands> };
 
-export type ExplainTask = StormTask & { readonly site: Omit<Site, 'fetchM'> };
+export type ExplainTask = StormTask & { readonly site: Omit<Site, 'fetchM'>; readonly gustsMs: readonly number[] };
 export type ExplainReply = {
   readonly fetchM: number[];
   readonly series: SiteSeries;
   readonly ladder: GustLadder;
   readonly staysInEye: boolean;
+  /** Where the centre passes nearest: how far away, and on which side of its heading the site lies. */
+  readonly passing: { readonly distanceM: number; readonly side: 'left' | 'right' };
+  /** Weighted share of the draws whose peak reaches each of the gusts asked for. */
+  readonly chances: number[];
   readonly wavenumber: number | null;
   readonly notices: readonly EngineNotice[];
 };

@@ -38,6 +38,8 @@ export const Quote = z.object({
   readySites: z.int(),
   heldSites: z.int(),
   heldTivMinor: Minor,
+  /** Of the values in the edition; the price has its own. */
+  tivCurrency: Currency,
   scenarios: z.int(),
   siteScenarios: z.int(),
   outOfReach: z.int(),
@@ -69,17 +71,24 @@ export const ScenarioState = z.enum(['waiting', 'building', 'scoring', 'stored',
 
 /** Event results of one track. Ranges are 5–95 % over 264 vortex draws; null range fields when the layer is off. */
 export const ScenarioResult = z.object({
+  /** Within reach, those below the floor included: what is charged. */
   sitesScored: z.int(),
   outOfReach: z.int(),
   belowFloor: z.int(),
+  /** Of all sites of the edition, out of reach or not. */
   tivMinor: Minor,
+  /** Plain losses and means are the sums of the sites' cents; percentiles are the event's own, from 264 exact sums. */
   groundUpPlainMinor: Minor,
   grossPlainMinor: Minor,
   /** Null when the mesovortex layer is off or never acts: there is no vortex range then. */
   groundUp: LossRange.nullable(),
   gross: LossRange.nullable(),
+  /** Largest over the sites, of each site's own percentile; zero when no site is within reach. */
   peakGustMs: z.object({ plain: z.number(), p5: z.number(), p50: z.number(), p95: z.number() }),
-  /** Sites above each chosen gust: plain, and 5, 50, 95 % over draws. */
+  /**
+   * Sites whose plain gust, and whose own 5, 50, 95 % over draws, reach each chosen gust; TIV of those whose median does.
+   * Counts of site percentiles, not percentiles of a count.
+   */
   above: z.array(
     z.object({ gustMs: z.number(), plain: z.int(), p5: z.int(), p50: z.int(), p95: z.int(), tivMinor: Minor }),
   ),
@@ -124,7 +133,11 @@ export const RunSummary = z.object({
   stamped: z.boolean(),
   scenariosDone: z.int(),
   scenariosTotal: z.int(),
+  /** Of the losses: the edition's. */
   currency: Currency,
+  /** Of the price. */
+  priceCurrency: Currency,
+  /** Of the track with the largest loss: tracks of one run are alternatives and are never added up. */
   grossPlainMinor: Minor.nullable(),
   gross: LossRange.nullable(),
   quotedMinor: Minor,
@@ -179,6 +192,8 @@ export const SiteResult = z.object({
   tivMinor: Minor,
   reach: z.enum(['scored', 'out_of_reach', 'below_floor']),
   plainMs: z.number().nullable(),
+  /** Mean over the draws, never below plain. */
+  enhancedMeanMs: z.number().nullable(),
   p5Ms: z.number().nullable(),
   p50Ms: z.number().nullable(),
   p90Ms: z.number().nullable(),
@@ -215,6 +230,7 @@ export const SitesPage = z.object({
   largestGustMs: z.number().nullable(),
   notices: z.array(Notice),
 });
+export type SitesPage = z.infer<typeof SitesPage>;
 
 /** One rung of "why this gust": factor or addition, and the wind after it. */
 export const LadderStep = z.object({
@@ -242,6 +258,9 @@ export const SiteDetail = SiteResult.extend({
   distanceToTrackKm: z.number().nullable(),
   sideOfTrack: z.enum(['left', 'right']).nullable(),
   wavenumber: z.int().nullable(),
+  /** Weighted share of the 264 draws in which the site's peak reaches each of the run's chosen gusts (0–1). */
+  chanceAbove: z.array(z.object({ gustMs: z.number(), chance: z.number() })),
+  /** Empty when the site is out of reach, as is the series. */
   ladder: z.array(LadderStep),
   /** Hours around the peak, at most 400 points. */
   series: z.object({

@@ -1,0 +1,161 @@
+import type { Footprint, FootprintView, ResultPoints, SiteDetail, SitesPage, SitesQuery } from '#contract/runs.ts';
+import type { Notice } from '#contract/common.ts';
+import type { z } from 'zod';
+import type { TrackFix } from '#engine/track/fixes.ts';
+import type { ChainOptions } from '#engine/track/options.ts';
+import type { Actor } from '../../actor.ts';
+import type { EnginePool } from '../../compute/pool.ts';
+import type { ExplainReply } from '../../compute/protocol.ts';
+import { AppError, notFound } from '../../errors.ts';
+import type { Transact, Tx } from '../../transact.ts';
+import { ladderOf } from './gust-reasons.ts';
+import type { Place, ResultStore } from './result-store.ts';
+import { seriesAroundPeak, NO_SERIES } from './site-series-view.ts';
+import type { SiteRecord } from './stored-results.ts';
+
+/** A track of a run whose results can be read, as the run knows it. */
+export interface FinishedTrack extends Place {
+  runNumber: string;
+  trackName: string;
+  engineVersion: string;
+  currency: string;
+  fixes: readonly TrackFix[];
+  options: ChainOptions;
+  gustThresholdsMs: readonly number[];
+  curve: string;
+  path: readonly [number, number][];
+  notices: Notice[];
+}
+
+export interface FinishedTracks {
+  /** Refuses what isn't there (`not_found`) and what isn't finished (`result_not_ready`). */
+  require(tx: Tx, orgId: string, runId: string, runScenarioId: string): Promise<FinishedTrack>;
+}
+
+export interface ResultParts {
+  transact: Transact;
+  results: ResultStore;
+  tracks: FinishedTracks;
+  pool: EnginePool;
+  audit: { record(tx: Tx, actor: Actor, action: string, object: string, details?: object): Promise<void> };
+  engineVersion: () => string;
+}
+
+export type At = { runId: string; runScenarioId: string };
+type Query = z.output<typeof SitesQuery>;
+
+const GUST_DEFINITION =
+  'Peak 3-second gust at 10 m in m/s: over land in open country (roughness 0.03 m) with its own distance to the sea, over water at sea. Sites are scored with their own terrain, so a site and the field around it may differ.';
+
+/** Answers questions about what a finished track left behind. */
+export class ResultService {
+  constructor(private readonly parts: ResultParts) {}
+
+  sites(actor: Actor, at: At, query: Query): Promise<SitesPage> {
+    const { results } = this.parts;
+    return this.read(actor, at, async (tx, track) => {
+      const { total, totals, largestGustMs } = await results.totals(tx, actor.orgId, track, query);
+      const items = total > query.offset ? await results.page(tx, actor.orgId, track, query) : [];
+      return { items, total, totals, largestGustMs, notices: track.notices };
+    });
+  }
+
+  points(actor: Actor, at: At): Promise<ResultPoints> {
+    return this.read(actor, at, (tx, track) => this.parts.results.points(tx, actor.orgId, track));
+  }
+
+  footprint(actor: Actor, at: At, view: FootprintView): Promise<Footprint> {
+    return this.read(actor, at, async (tx, track) => {
+      const found = await this.parts.results.footprint(tx, actor.orgId, track.runScenarioId, view);
+      const { levels, bbox, bands } = found ?? {
+        levels: [],
+        bbox: boundsOf(track.path),
+        bands: { type: 'FeatureCollection', features: [] },
+      };
+      const definition =
+        view === 'difference' ? `Median with vortices less plain, m/s. ${GUST_DEFINITION}` : GUST_DEFINITION;
+      return { view, levels: [...levels], bbox, bands, definition, notices: track.notices } as Footprint;
+    });
+  }
+
+  async detail(actor: Actor, at: At, siteNo: number): Promise<SiteDetail> {
+    const { results, pool, engineVersion } = this.parts;
+    const { track, site } = await this.read(actor, at, async (tx, found) => {
+      const record = await results.site(tx, actor.orgId, found, siteNo);
+      if (!record) throw notFound('Site', siteNo);
+      return { track: found, site: record };
+    });
+    if (track.engineVersion !== engineVersion()) {
+      throw new AppError(
+        'result_not_ready',
+        `Run ${track.runNumber} was computed with engine ${track.engineVersion}; this service now runs ${engineVersion()}. The stored result stays as it is, but its steps can’t be worked out again. Run it again to see them.`,
+      );
+    }
+    const common = { ...site, curve: track.curve, notices: track.notices };
+    if (site.reach === 'out_of_reach') {
+      return { ...common, ...NOTHING_TO_EXPLAIN, chanceAbove: [], series: NO_SERIES };
+    }
+    const { latitude, longitude, roughnessM } = site;
+    const explained = await pool.run('explain', {
+      fixes: track.fixes,
+      options: track.options,
+      site: { latitude, longitude, roughnessM, topographicFactor: 1 },
+      gustsMs: track.gustThresholdsMs,
+    });
+    return { ...common, ...explanation(track, site, explained) };
+  }
+
+  /** All sites one after another, with what the export says about them; the caller writes them out as they come. */
+  export(
+    actor: Actor,
+    at: At,
+    write: (track: FinishedTrack, sites: AsyncIterable<SiteRecord>) => Promise<void>,
+  ): Promise<void> {
+    const { results, audit } = this.parts;
+    return this.read(actor, at, async (tx, track) => {
+      await audit.record(tx, actor, 'result.exported', `run:${at.runId}`, { ...at, format: 'csv' });
+      await write(track, results.all(tx, actor.orgId, track));
+    });
+  }
+
+  private read<T>(
+    actor: Actor,
+    { runId, runScenarioId }: At,
+    work: (tx: Tx, track: FinishedTrack) => Promise<T>,
+  ): Promise<T> {
+    return this.parts.transact(actor, async (tx) =>
+      work(tx, await this.parts.tracks.require(tx, actor.orgId, runId, runScenarioId)),
+    );
+  }
+}
+
+const NOTHING_TO_EXPLAIN = {
+  fetchM: [],
+  distanceToTrackKm: null,
+  sideOfTrack: null,
+  wavenumber: null,
+  ladder: [],
+};
+
+const IN_EYE: Notice = {
+  code: 'inside-eye',
+  text: 'This site stays within half the radius of maximum wind throughout. What vortices add there means nothing.',
+  version: '1',
+};
+
+const explanation = (track: FinishedTrack, site: SiteRecord, explained: ExplainReply) => ({
+  fetchM: explained.fetchM,
+  distanceToTrackKm: explained.passing.distanceM / 1000,
+  sideOfTrack: explained.passing.side,
+  wavenumber: explained.wavenumber,
+  chanceAbove: track.gustThresholdsMs.map((gustMs, i) => ({ gustMs, chance: explained.chances[i]! })),
+  ladder: ladderOf(explained.ladder, site),
+  series: seriesAroundPeak(explained.series),
+  notices: explained.staysInEye ? [IN_EYE, ...track.notices] : track.notices,
+});
+
+const boundsOf = (path: readonly [number, number][]): [number, number, number, number] => {
+  const longitudes = path.map(([longitude]) => longitude);
+  const latitudes = path.map(([, latitude]) => latitude);
+  return [Math.min(...longitudes), Math.min(...latitudes), Math.max(...longitudes), Math.max(...latitudes)];
+};
