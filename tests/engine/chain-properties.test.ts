@@ -151,10 +151,10 @@ describe('whatever the storm and site', () => {
       const place = { ...site, roughnessM: site.roughness, fetchM: site.fetch, topographicFactor: site.hill };
       const passage = makePassage(storm);
       const count = followPassage(storm, site.latitude, site.longitude, siteExposure(place), passage);
-      const lengths = [10, 15, 20, 25, 33, 45].map((threshold) => secondsAtLeast(storm, passage, count, threshold));
+      const lengths = [10, 15, 20, 25, 33, 45].map((threshold) => secondsAtLeast(passage, count, threshold));
       lengths.forEach((length, k) => expect(length).toBeLessThanOrEqual(lengths[k - 1] ?? 12 * HOUR));
       const peak = Math.max(...passage.gust.subarray(0, count));
-      expect(secondsAtLeast(storm, passage, count, peak + 1e-9)).toBe(0);
+      expect(secondsAtLeast(passage, count, peak + 1e-9)).toBe(0);
     }));
   it('a redundant fix on the path changes the gust by less than 0.2 %', () =>
     holds(40, (fixes, site) => {

@@ -157,8 +157,8 @@ describe('times that are left out because the wind is surely too weak', () => {
       const peak = passage.gust.subarray(0, count).indexOf(Math.max(...passage.gust.subarray(0, count)));
       drawPeaks(passage, count, peak, makeDrawWork(storm.stateCount), gusts);
       expect(scores.plainGust[i]).toBe(passage.gust[peak]);
-      expect(scores.secondsAbove25[i]!).toBeCloseTo(secondsAtLeast(storm, passage, count, 25), 6);
-      expect(scores.secondsAbove33[i]!).toBeCloseTo(secondsAtLeast(storm, passage, count, 33), 6);
+      expect(scores.secondsAbove25[i]!).toBeCloseTo(secondsAtLeast(passage, count, 25), 6);
+      expect(scores.secondsAbove33[i]!).toBeCloseTo(secondsAtLeast(passage, count, 33), 6);
       expect(scores.p5[i]).toBe(drawQuantiles(gusts, [0.05])[0]);
       expect(scores.enhancedMean[i]!).toBeCloseTo(drawMean(gusts), 12);
     });

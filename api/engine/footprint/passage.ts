@@ -11,6 +11,8 @@ import { DRAG_WINDS, EIGHTH_TURN, PER_SEA_FACTOR, PRESSURE_TERM, PRESSURE_TERM_R
 
 /** Working arrays for the passage of a storm over one site; made once, used for many sites. */
 export type Passage = {
+  /** Time of every state of the storm [s], shape (states,). */
+  readonly timeS: Float64Array;
   /** States of the storm at which the site is looked at, ascending, shape (states,). */
   readonly state: Int32Array;
   /** Plain gust at each of them [m s⁻¹]. */
@@ -39,6 +41,7 @@ export type Passage = {
 export function makePassage(storm: Storm): Passage {
   const n = storm.stateCount;
   return {
+    timeS: Float64Array.from({ length: n }, (_, k) => storm.states[k * STATE_SIZE + STATE.timeS]!),
     state: new Int32Array(n),
     gust: new Float64Array(n),
     seaU: new Float64Array(n),
@@ -146,6 +149,8 @@ const STORM_PER_FACTOR = 1 / roughnessFactor(roughnessOfDrag(DRAG_RANGE[1]));
 // 1 / ln(10 / z0) of the sea is sqrt(Cd) / 0.4.
 const CALM_TURBULENCE = 2.5 * Math.sqrt(DRAG_RANGE[0]);
 const STORM_TURBULENCE = 2.5 * Math.sqrt(DRAG_RANGE[1]);
+// The radial shape is straight between tenths of the radius of maximum wind.
+const SHAPE = Float64Array.from({ length: 22 }, (_, k) => radialShape(k / 10));
 const DRAG_FLOOR = DRAG_LINE[0];
 const DRAG_SLOPE = DRAG_LINE[1];
 const PEAK = PEAK_FACTOR;
@@ -188,8 +193,9 @@ function evaluate(
     let r = EARTH_RADIUS * arc;
     if (r < 1) r = 1;
     // At the very centre, and at its antipode, the bearing is taken as north.
-    const sinBearing = tangent > 0 ? east / tangent : 0;
-    const cosBearing = tangent > 0 ? north / tangent : 1;
+    const perTangent = tangent > 0 ? 1 / tangent : 0;
+    const sinBearing = east * perTangent;
+    const cosBearing = tangent > 0 ? north * perTangent : 1;
 
     const y = states[at + 9]! * (states[at + 8]! - Math.log(r));
     let term: number;
@@ -291,7 +297,10 @@ function evaluate(
     if (x < 2) {
       const vortexWind = states[at + 16]!;
       if (vortexWind > 0) {
-        added = toGust * vortexWind * radialShape(x);
+        const tenth = 10 * x;
+        const cell = tenth | 0;
+        const inner = SHAPE[cell]!;
+        added = toGust * vortexWind * (inner + (tenth - cell) * (SHAPE[cell + 1]! - inner));
         // Azimuth positive in the cyclonic sense; m times it by repeated turning.
         const c = sinBearing;
         const d = sign * cosBearing;

@@ -6,7 +6,7 @@ import { drawLosses, quantisedLoss } from '../loss/draw-losses.ts';
 import { expectedGross } from '../loss/secondary-uncertainty.ts';
 import { DRAW_COUNT, drawMean, drawQuantiles } from '../ring/draws.ts';
 import { SECTOR_COUNT } from '../terrain/fetch.ts';
-import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
+import type { Storm } from '../track/storm.ts';
 import { degrees } from '../units.ts';
 import { drawPeaks, makeDrawWork } from './draws-of-site.ts';
 import { secondsAtLeast } from './durations.ts';
@@ -115,7 +115,6 @@ export function scoreSites(storm: Storm, sites: SiteBatch, curve: DamageCurve, c
   const groundUp = new Float64Array(DRAW_COUNT);
   const gross = new Float64Array(DRAW_COUNT);
   const levels = new Float64Array(GUST_LEVELS.length);
-  const { states } = storm;
   for (let s = 0; s < count; s++) {
     if (s % CONTROL_STRIDE === 0 && s > 0) {
       control.onProgress?.(s);
@@ -155,9 +154,9 @@ export function scoreSites(storm: Storm, sites: SiteBatch, curve: DamageCurve, c
     scores.plainSeaWind[s] = sea;
     scores.plainMean[s] = sea * passage.meanFactor[peak]!;
     scores.plainDirection[s] = normalisedBearing(degrees(Math.atan2(-u, -v)));
-    scores.plainTimeS[s] = states[passage.state[peak]! * STATE_SIZE + STATE.timeS]!;
-    scores.secondsAbove25[s] = plain >= LOWER_THRESHOLD ? secondsAtLeast(storm, passage, times, LOWER_THRESHOLD) : 0;
-    scores.secondsAbove33[s] = plain >= UPPER_THRESHOLD ? secondsAtLeast(storm, passage, times, UPPER_THRESHOLD) : 0;
+    scores.plainTimeS[s] = passage.timeS[passage.state[peak]!]!;
+    scores.secondsAbove25[s] = plain >= LOWER_THRESHOLD ? secondsAtLeast(passage, times, LOWER_THRESHOLD) : 0;
+    scores.secondsAbove33[s] = plain >= UPPER_THRESHOLD ? secondsAtLeast(passage, times, UPPER_THRESHOLD) : 0;
 
     if (touched) drawQuantiles(gusts, GUST_LEVELS, levels);
     else levels.fill(plain);

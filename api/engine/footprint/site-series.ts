@@ -48,7 +48,7 @@ export function siteSeries(storm: Storm, site: Site): SiteSeries {
   };
   const gusts = new Float64Array(DRAW_COUNT);
   for (let i = 0; i < count; i++) {
-    series.timeS[i] = storm.states[passage.state[i]! * STATE_SIZE + STATE.timeS]!;
+    series.timeS[i] = passage.timeS[passage.state[i]!]!;
     series.directionDeg[i] = normalisedBearing(degrees(Math.atan2(-passage.seaU[i]!, -passage.seaV[i]!)));
     const crest = passage.crest[i]!;
     if (crest === 0) continue;
