@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import type { Reconciliation } from '#contract/portfolios.ts';
 import { createTestApp } from '../helpers/app.ts';
 import { intakeSteps, schedule, SOUND } from '../helpers/intake.ts';
 import { locationFile, USUAL_SLIPS } from '../helpers/location-file.ts';
@@ -32,11 +33,9 @@ const rowsOf = async (editionId: string, query = '') =>
   }[];
 const fix = (editionId: string, code: string, kind: string, more = {}) =>
   browser.post(`/editions/${editionId}/fixes`, { code, kind, reason: 'Asked the broker', ...more });
-const tellsTheRest = (edition: {
-  reconciliation: null | Record<string, { rows: number; tivMinor: number } | number>;
-}) => {
-  const { fileRows, tivMinor, ready, notes, held, setAside } = edition.reconciliation as Record<string, never>;
-  const parts = [ready, notes, held, setAside] as { rows: number; tivMinor: number }[];
+const addsUp = ({ reconciliation }: { reconciliation: Reconciliation | null }) => {
+  const { fileRows, tivMinor, ready, notes, held, setAside } = reconciliation!;
+  const parts = [ready, notes, held, setAside];
   expect(parts.reduce((sum, { rows }) => sum + rows, 0)).toBe(fileRows);
   expect(parts.reduce((sum, part) => sum + part.tivMinor, 0)).toBe(tivMinor);
 };
@@ -62,7 +61,7 @@ describe('a schedule as brokers send it', () => {
     const edition = await check(draft, { expectedRows: 602 });
     expect(edition.state).toBe('checked');
     expect(edition.reconciliation).toMatchObject({ fileRows: file.fileRows });
-    tellsTheRest(edition);
+    addsUp(edition);
     expect(edition.assumptions).toEqual([expect.objectContaining({ attribute: 'construction', sites: 45 })]);
 
     const groups = new Map((await groupsOf(edition.id)).map((group) => [group.code, group]));
@@ -80,7 +79,7 @@ describe('a schedule as brokers send it', () => {
     expect(swapped.map(({ row }) => row)).toEqual(file.slipped.swapped);
 
     const afterSwap = (await fix(edition.id, 'PLACE-02', 'swap_coordinates').expect(201)).body;
-    tellsTheRest(afterSwap);
+    addsUp(afterSwap);
     expect(afterSwap.reconciliation.held.rows).toBe(edition.reconciliation!.held.rows - 14);
     expect(afterSwap.reconciliation.notes.rows).toBe(edition.reconciliation!.notes.rows + 14);
     const [first] = await rowsOf(edition.id, '&code=PLACE-21');

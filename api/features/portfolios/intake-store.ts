@@ -12,6 +12,12 @@ export interface StoredRow {
   row: FileRow;
   surveyed: Surveyed[];
   corrections: Correction[];
+}
+
+/** A row that is scored, as judged last. */
+export interface ScoredRow {
+  row: FileRow;
+  corrections: Correction[];
   state: RowState;
   latitude: number | null;
   longitude: number | null;
@@ -87,6 +93,11 @@ export const intakeCells = (
 const toStored = (row: Row): StoredRow => ({
   row: { row: row.file_row, line: row.line, received: row.received },
   surveyed: row.surveyed,
+  corrections: row.corrections,
+});
+
+const toScored = (row: Omit<Row, 'messages' | 'surveyed'>): ScoredRow => ({
+  row: { row: row.file_row, line: row.line, received: row.received },
   corrections: row.corrections,
   state: row.state,
   latitude: row.latitude,
@@ -253,16 +264,26 @@ export class IntakeStore {
     return found.map(toStored);
   }
 
-  /** The scored rows after a row, in file order. */
-  async scoredAfter(tx: Tx, orgId: string, editionId: string, after: number, limit: number): Promise<StoredRow[]> {
-    const found = await tx('intake_rows')
-      .where({ org_id: orgId, edition_id: editionId })
-      .whereIn('state', ['ready', 'notes'])
-      .where('file_row', '>', after)
-      .orderBy('file_row')
-      .limit(limit)
-      .select<Row[]>();
-    return found.map(toStored);
+  /**
+   * The scored rows in file order, a batch at a time, read once through a cursor: asked for batch by batch, a table
+   * that was just filled and has no statistics yet is sorted anew each time. Other work may be done between batches.
+   */
+  async *scored(tx: Tx, orgId: string, editionId: string, size: number): AsyncGenerator<ScoredRow[]> {
+    await tx.raw(
+      `declare scored_rows no scroll cursor for
+       select intake_rows.file_row, intake_rows.line, intake_rows.received, intake_rows.corrections, intake_rows.state,
+         intake_rows.latitude, intake_rows.longitude, intake_rows.quality, intake_rows.assumed
+       from intake_rows
+       where intake_rows.org_id = ? and intake_rows.edition_id = ? and intake_rows.state in ('ready', 'notes')
+       order by intake_rows.file_row`,
+      [orgId, editionId],
+    );
+    for (;;) {
+      const { rows } = await tx.raw<{ rows: Omit<Row, 'messages' | 'surveyed'>[] }>(`fetch ${size} from scored_rows`);
+      if (rows.length > 0) yield rows.map(toScored);
+      if (rows.length < size) break;
+    }
+    await tx.raw('close scored_rows');
   }
 
   /** Stores rows judged anew with their corrections. */

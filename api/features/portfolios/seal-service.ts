@@ -68,15 +68,12 @@ export class SealService {
       `${JSON.stringify(['edition', 1, edition.currency, asAt, held.rows, held.tivMinor, setAside.rows, setAside.tivMinor])}\n`,
     );
     let siteNo = 0;
-    for (let after = -1; ;) {
-      const rows = await intake.scoredAfter(tx, orgId, edition.id, after, SITES_AT_ONCE);
-      if (rows.length === 0) break;
+    for await (const rows of intake.scored(tx, orgId, edition.id, SITES_AT_ONCE)) {
       const batch = rows.map(({ row, corrections, ...judged }) =>
-        sealedSite(++siteNo, row, corrections, survey!.facts, judged),
+        sealedSite((siteNo += 1), row, corrections, survey!.facts, judged),
       );
       for (const site of batch) hash.update(canonicalSite(site));
       await sites.add(tx, orgId, edition.id, batch);
-      after = rows.at(-1)!.row.row;
     }
     return { digest: hash.digest('hex'), sites: siteNo };
   }
