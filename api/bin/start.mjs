@@ -11,10 +11,11 @@ import { setTimeout as sleep } from 'node:timers/promises';
 import { ensureClient, VITE } from './client-build.mjs';
 import { Family } from './family.mjs';
 import { ensureNodePackages } from './packages.mjs';
-import { DATA_FOLDER, ROOT, SetupError, startCluster, stopCluster } from './postgres.mjs';
+import { clusterStatus, DATA_FOLDER, ROOT, SetupError, startCluster, stopCluster } from './postgres.mjs';
 
 const DATABASE = 'gustloom';
 const READY_MS = 60_000;
+const DATABASE_LOOK_MS = 2_000;
 const reload = process.argv.includes('--reload');
 const port = Number(process.env.PORT || 3000);
 const address = (process.env.PUBLIC_URL || `http://localhost:${port}`).replace(/\/$/, '');
@@ -170,6 +171,16 @@ const reloadOnChange = (family) => {
   });
 };
 
+/** A database server that was killed comes back like everything else. */
+const keepDatabase = async (isStopping) => {
+  while (!isStopping()) {
+    await sleep(DATABASE_LOOK_MS);
+    if (isStopping() || clusterStatus().startsWith('running')) continue;
+    console.log('The database ended; starting it again.');
+    await startCluster().catch((error) => console.error(error.message));
+  }
+};
+
 const printWelcome = (demoPassword) => {
   console.log(`
 Gustloom is running at ${address}
@@ -246,6 +257,7 @@ const main = async () => {
     const isReady = await step('API ready', () => whenReady(() => givenUp || stopping));
     if (!isReady) return;
     if (reload) reloadOnChange(family);
+    void keepDatabase(() => stopping !== undefined);
     printWelcome(secrets.demoPassword);
     makeDemoRun(family, env);
   } catch (error) {

@@ -29,6 +29,23 @@ const fromMiddleware = (error: unknown): AppError | null => {
   return null;
 };
 
+/** The database is away, restarting or has no connection free: nothing was done, and a moment later it may be. */
+const AWAY = new Set(['ECONNREFUSED', 'ECONNRESET', '57P01', '57P02', '57P03', '53300']);
+const AWAY_S = 5;
+const fromDatabase = (error: unknown): AppError | null => {
+  if (!(error instanceof Error)) return null;
+  const { code } = error as { code?: unknown };
+  const isAway =
+    (typeof code === 'string' && AWAY.has(code)) ||
+    error.name === 'KnexTimeoutError' ||
+    error.message.startsWith('Connection terminated');
+  if (!isAway) return null;
+  return new AppError('unavailable', 'The service can’t reach its database just now. Wait a moment and try again.', {
+    cause: error,
+    retryAfterS: AWAY_S,
+  });
+};
+
 /** Nothing answered at this address. */
 export const noSuchAddress: RequestHandler = () => {
   throw new AppError('not_found', 'There is nothing at this address.');
@@ -38,9 +55,10 @@ export const noSuchAddress: RequestHandler = () => {
 export const errorHandler =
   (log: Logger): ErrorRequestHandler =>
   (error: unknown, req, res, _next) => {
-    const known = error instanceof AppError ? error : fromMiddleware(error);
+    const known = error instanceof AppError ? error : (fromMiddleware(error) ?? fromDatabase(error));
     const requestId = req.requestId ?? '';
-    if (!known) log.error({ err: error, requestId, method: req.method, path: req.path }, 'request failed');
+    if (!known || known.code === 'unavailable')
+      log.error({ err: error, requestId, method: req.method, path: req.path }, 'request failed');
     if (res.headersSent) {
       // A reply already under way can only be cut off, so that nobody takes half of it for the whole.
       res.destroy();

@@ -51,6 +51,23 @@ describe('a failed request', () => {
     );
     await request(app).get('/').expect(429).expect('Retry-After', '13');
   });
+  it.each([
+    ['refuses connections', Object.assign(new Error('connect ECONNREFUSED'), { code: 'ECONNREFUSED' })],
+    ['is shut down', Object.assign(new Error('terminating connection'), { code: '57P01' })],
+    ['breaks off', new Error('Connection terminated unexpectedly')],
+    [
+      'has no connection free',
+      Object.assign(new Error('Timeout acquiring a connection'), { name: 'KnexTimeoutError' }),
+    ],
+  ])('says to wait when the database %s', async (_what, error) => {
+    const app = appWith((router) =>
+      router.get('/', () => {
+        throw error;
+      }),
+    );
+    const reply = await request(app).get('/').expect(503).expect('Retry-After', '5');
+    expect(reply.body.code).toBe('unavailable');
+  });
   it('shows nothing of a defect but the number, which the log knows', async () => {
     const app = appWith((router) =>
       router.get('/', async () => {
