@@ -49,8 +49,7 @@ export class Family {
 
   async stop() {
     this.#stopping = true;
-    // Those who use the others go first.
-    for (const member of [...this.#members].reverse()) await this.#end(member);
+    await Promise.all(this.#members.map((member) => this.#end(member)));
   }
 
   #spawn(member) {

@@ -4,7 +4,7 @@
  */
 import { spawnSync } from 'node:child_process';
 import { randomBytes } from 'node:crypto';
-import { existsSync, mkdirSync, readFileSync, renameSync, rmSync, watch, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, watch, writeFileSync } from 'node:fs';
 import { createServer } from 'node:net';
 import { join } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
@@ -107,11 +107,20 @@ const step = async (what, work) => {
   return done;
 };
 
+/** Asked of the database directly: starting the migration tool to hear that nothing is to be done takes seconds. */
+const isMigrated = (cluster) => {
+  if (cluster.query(DATABASE, `select to_regclass('knex_migrations')`) === '') return false;
+  const done = cluster.query(DATABASE, 'select name from knex_migrations order by name').split('\n');
+  return readdirSync(at('migrations')).sort().join('\n') === done.join('\n');
+};
+
 const prepareDatabase = async (cluster, demoPassword) => {
   const url = cluster.ownerUrl(DATABASE);
+  cluster.ensureDatabase(DATABASE);
   await step('Database migrated', () => {
-    cluster.ensureDatabase(DATABASE);
-    return !knex('migrate:latest', { DATABASE_URL: url }).includes('Already up to date');
+    if (isMigrated(cluster)) return false;
+    knex('migrate:latest', { DATABASE_URL: url });
+    return true;
   });
   const seededFile = join(DATA_FOLDER, 'seeded');
   const isEmpty = cluster.query(DATABASE, 'select count(*) from organisations') === '0';
@@ -124,19 +133,21 @@ const prepareDatabase = async (cluster, demoPassword) => {
   }
 };
 
-const addChildren = (family, env) => {
-  const typescript = (name, file, watchesParent) =>
-    family.add({ name, args: ['--import', 'tsx', at(file)], env, watchesParent });
-  if (env.MAIL_SINK_PORT) typescript('mail sink', 'api/adapters/mail/sink/main.ts', true);
-  if (env.STRIPE_API_URL) typescript('payment stand-in', 'api/adapters/payments/stripe-mock/main.ts', false);
-  typescript('API', 'api/server.ts', true);
-  typescript('worker', 'api/worker.ts', true);
-  if (reload)
-    family.add({
-      name: 'client build',
-      args: [VITE, 'build', '--watch', '--logLevel', 'warn'],
-      env: { NODE_ENV: 'development' },
-    });
+const typescript = (name, file, watchesParent, env) => ({
+  ...{ name, env, watchesParent },
+  args: ['--import', 'tsx', at(file)],
+});
+
+/** Whatever the API doesn't need in order to answer; started after it, so that people wait less. */
+const addCompanions = (family, env) => {
+  family.add(typescript('worker', 'api/worker.ts', true, env));
+  if (env.MAIL_SINK_PORT) family.add(typescript('mail sink', 'api/adapters/mail/sink/main.ts', true, env));
+  if (env.STRIPE_API_URL)
+    family.add(typescript('payment stand-in', 'api/adapters/payments/stripe-mock/main.ts', false, env));
+  if (reload) {
+    const args = [VITE, 'build', '--watch', '--logLevel', 'warn'];
+    family.add({ name: 'client build', args, env: { NODE_ENV: 'development' } });
+  }
 };
 
 const whenReady = async (hasGivenUp) => {
@@ -253,9 +264,10 @@ const main = async () => {
       }),
     };
     if (stopping) return;
-    addChildren(family, env);
+    family.add(typescript('API', 'api/server.ts', true, env));
     const isReady = await step('API ready', () => whenReady(() => givenUp || stopping));
     if (!isReady) return;
+    addCompanions(family, env);
     if (reload) reloadOnChange(family);
     void keepDatabase(() => stopping !== undefined);
     printWelcome(secrets.demoPassword);
