@@ -45,6 +45,10 @@ export const unreachable = (cause: unknown): ApiError =>
     { cause },
   );
 
+/** Known before asking: the service would refuse, too. */
+export const notForRole = (detail: string): ApiError =>
+  new ApiError(ownProblem(403, 'not_allowed', 'Not for your role', detail));
+
 /** The service answered with something that isn't its own form. */
 export const unexpected = (status: number, cause?: unknown): ApiError =>
   new ApiError(

@@ -19,7 +19,8 @@ export { BareError as ErrorBoundary } from './bare-error.tsx';
 export const loader = requireSession;
 
 const ROLE_NAMES = { underwriter: 'Underwriter', modeler: 'Modeler', admin: 'Account admin', auditor: 'Auditor' };
-const roleText = (session: Session) => session.roles.map((role) => ROLE_NAMES[role]).join(', ');
+const roleText = (session: Session) =>
+  [...session.roles.map((role) => ROLE_NAMES[role]), ...(session.isApprover ? ['approver'] : [])].join(', ');
 /** An auditor sees all and changes nothing, unless another role lets them. */
 const isOnlyAuditor = (session: Session) => session.roles.every((role) => role === 'auditor');
 

@@ -4,7 +4,7 @@ import { ArrowRight, Play, Printer, Undo2 } from 'lucide-react';
 import { useNavigate, useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
 import { INTAKE_NOTE } from '#contract/notices.ts';
 import type { Edition } from '#contract/portfolios.ts';
-import { UNDERWRITERS } from '#contract/roles.ts';
+import { READERS, UNDERWRITERS } from '#contract/roles.ts';
 import { CheckingCard } from '../features/portfolios/components/checking-card.tsx';
 import { ChecksStep } from '../features/portfolios/components/checks-step.tsx';
 import { ColumnsStep } from '../features/portfolios/components/columns-step.tsx';
@@ -12,6 +12,7 @@ import { ReadinessStep } from '../features/portfolios/components/readiness-step.
 import { SealedEdition } from '../features/portfolios/components/sealed-edition.tsx';
 import { editionQuery, messagesQuery, useUndoFix } from '../features/portfolios/edition-queries.ts';
 import { intakeSteps, stepShown } from '../features/portfolios/intake-steps.ts';
+import { requireOneOf, SITE_DATA_DETAIL } from '../features/session/guard.ts';
 import { holdsOneOf, useSession } from '../features/session/session-queries.ts';
 import { day, utc } from '../lib/dates.ts';
 import { paths, type IntakeStep } from '../paths.ts';
@@ -26,6 +27,7 @@ import { useToast } from '../ui/toast.tsx';
 export { RouteError as ErrorBoundary } from './route-error.tsx';
 
 export const loader = async ({ params }: LoaderFunctionArgs) => {
+  await requireOneOf(READERS, SITE_DATA_DETAIL);
   await queryClient.ensureQueryData(editionQuery(params.editionId!));
   return null;
 };

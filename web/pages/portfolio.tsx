@@ -3,11 +3,12 @@ import { useSuspenseQuery } from '@tanstack/react-query';
 import { Play, Upload } from 'lucide-react';
 import { useNavigate, useParams, type LoaderFunctionArgs } from 'react-router-dom';
 import { INTAKE_NOTE } from '#contract/notices.ts';
-import { UNDERWRITERS } from '#contract/roles.ts';
+import { READERS, UNDERWRITERS } from '#contract/roles.ts';
 import { EditionList } from '../features/portfolios/components/edition-list.tsx';
 import { EquationCard } from '../features/portfolios/components/equation-card.tsx';
 import { UploadDialog } from '../features/portfolios/components/upload-dialog.tsx';
 import { portfolioQuery } from '../features/portfolios/portfolio-queries.ts';
+import { requireOneOf, SITE_DATA_DETAIL } from '../features/session/guard.ts';
 import { holdsOneOf, useSession } from '../features/session/session-queries.ts';
 import { day } from '../lib/dates.ts';
 import { paths } from '../paths.ts';
@@ -18,6 +19,7 @@ import { Page } from '../ui/page.tsx';
 export { RouteError as ErrorBoundary } from './route-error.tsx';
 
 export const loader = async ({ params }: LoaderFunctionArgs) => {
+  await requireOneOf(READERS, SITE_DATA_DETAIL);
   await queryClient.ensureQueryData(portfolioQuery(params.portfolioId!));
   return null;
 };

@@ -1,11 +1,12 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
 import { Upload } from 'lucide-react';
 import { useNavigate, useSearchParams } from 'react-router-dom';
-import { UNDERWRITERS } from '#contract/roles.ts';
+import { READERS, UNDERWRITERS } from '#contract/roles.ts';
 import { ApiError } from '../api/api-error.ts';
 import { PortfolioTable } from '../features/portfolios/components/portfolio-table.tsx';
 import { UploadDialog } from '../features/portfolios/components/upload-dialog.tsx';
 import { portfoliosQuery } from '../features/portfolios/portfolio-queries.ts';
+import { requireOneOf, SITE_DATA_DETAIL } from '../features/session/guard.ts';
 import { holdsOneOf, useSession } from '../features/session/session-queries.ts';
 import { counted } from '../lib/numbers.ts';
 import { paths } from '../paths.ts';
@@ -15,6 +16,11 @@ import { Page } from '../ui/page.tsx';
 import { ProblemNotice } from '../ui/problem.tsx';
 
 export { RouteError as ErrorBoundary } from './route-error.tsx';
+
+export const loader = async () => {
+  await requireOneOf(READERS, SITE_DATA_DETAIL);
+  return null;
+};
 
 export function Component() {
   const portfolios = useInfiniteQuery(portfoliosQuery());

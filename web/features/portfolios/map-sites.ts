@@ -17,7 +17,10 @@ const withoutGusts = (
 export const sitesOf = (points: Points): MapSites => withoutGusts(points);
 
 export const boundsOfSites = (sites: MapSites): Bounds | null => {
-  const bounds = boundsOf(sites.longitude.map((longitude, index) => [longitude, sites.latitude[index]!] as const));
+  const points = sites.longitude.map((longitude, index) => [longitude, sites.latitude[index]!] as const);
+  // A held row is often held because its place is wrong; it must not decide what is in view.
+  const placed = points.filter((_, index) => sites.state[index] !== 'held');
+  const bounds = boundsOf(placed.length > 0 ? placed : points);
   return bounds && padBounds(bounds, 0.08, 0.05);
 };
 

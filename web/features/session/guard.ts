@@ -1,9 +1,10 @@
 import { redirect } from 'react-router-dom';
 import type { Session } from '#contract/session.ts';
-import { ApiError } from '../../api/api-error.ts';
+import type { Role } from '#contract/roles.ts';
+import { ApiError, notForRole } from '../../api/api-error.ts';
 import { paths } from '../../paths.ts';
 import { queryClient } from '../../query-client.ts';
-import { sessionQuery } from './session-queries.ts';
+import { holdsOneOf, sessionQuery } from './session-queries.ts';
 
 /** Where the person wanted to go, kept through sign-in and acceptance. */
 export const wishedUrl = (request: Request): string | undefined => {
@@ -31,3 +32,12 @@ export const requireSession = async ({ request }: { request: Request }): Promise
   if (session.acceptanceRequired) return redirect(paths.accept(wishedUrl(request)));
   return session;
 };
+
+/** For loaders of pages that only some roles can read; without a session the shell's own guard answers. */
+export const requireOneOf = async (roles: readonly Role[], detail: string): Promise<void> => {
+  const session = await findSession();
+  if (session && !holdsOneOf(session, roles)) throw notForRole(detail);
+};
+
+export const SITE_DATA_DETAIL =
+  'Underwriters, modelers and auditors can open this. Account admins see runs and money, but no site data.';

@@ -30,12 +30,32 @@ export const unwrapRing = (ring: readonly Position[]): Position[] => {
   return [...run, [last[0]!, pole], [first[0]!, pole], first];
 };
 
+const middle = (ring: readonly Position[]): number => {
+  let [west, east] = [Infinity, -Infinity];
+  for (const [longitude = 0] of ring) [west, east] = [Math.min(west, longitude), Math.max(east, longitude)];
+  return (west + east) / 2;
+};
+
+/** A lake runs on by itself and may end a turn away from its land; it goes back into it. */
+const unwrapPolygon = ([outer = [], ...lakes]: readonly Position[][]): Position[][] => {
+  const land = unwrapRing(outer);
+  const centre = middle(land);
+  return [
+    land,
+    ...lakes.map((lake) => {
+      const ring = unwrapRing(lake);
+      const shift = 360 * Math.round((centre - middle(ring)) / 360);
+      return ring.map(([longitude = 0, latitude = 0]) => [longitude + shift, latitude] as Position);
+    }),
+  ];
+};
+
 type LandTopology = Topology<{ land: GeometryCollection }>;
 
 export const landPolygons = (topology: LandTopology): LandPolygons =>
   feature(topology, topology.objects.land).features.flatMap(({ geometry }) => {
-    if (geometry.type === 'Polygon') return [geometry.coordinates.map(unwrapRing)];
-    if (geometry.type === 'MultiPolygon') return geometry.coordinates.map((polygon) => polygon.map(unwrapRing));
+    if (geometry.type === 'Polygon') return [unwrapPolygon(geometry.coordinates)];
+    if (geometry.type === 'MultiPolygon') return geometry.coordinates.map(unwrapPolygon);
     return [];
   });
 

@@ -109,7 +109,7 @@ export function SitesPanel({ edition, filter, onFilter, chosenRef, onChoose }: S
                     selected={row.siteRef !== null && row.siteRef === chosenRef}
                     onClick={() => onChoose(row.siteRef)}
                   >
-                    <Td numeric className="text-ink-2">
+                    <Td numeric className="h-11! text-ink-2">
                       {count(row.row)}
                     </Td>
                     <Td className="max-w-64 leading-tight">
