@@ -11,11 +11,35 @@ export const PA_PER_HPA = 100;
 /** Pascals in one inch of mercury at 0 °C, conventional value. */
 export const PA_PER_INCH_OF_MERCURY = 3386.389;
 
-/** Knots to metres per second. */
+/**
+ * Knots to metres per second.
+ *
+ * @param knots Speed [kt].
+ * @returns Speed [m s⁻¹].
+ * @source Definition.
+ */
 export const msFromKnots = (knots: number): number => knots * MS_PER_KNOT;
-/** Metres per second to knots. */
+/**
+ * Metres per second to knots.
+ *
+ * @param ms Speed [m s⁻¹].
+ * @returns Speed [kt].
+ * @source Definition.
+ */
 export const knotsFromMs = (ms: number): number => ms / MS_PER_KNOT;
-/** Degrees to radians. */
+/**
+ * Degrees to radians.
+ *
+ * @param degrees Angle [deg].
+ * @returns Angle [rad].
+ * @source Definition.
+ */
 export const radians = (degrees: number): number => (degrees * Math.PI) / 180;
-/** Radians to degrees. */
+/**
+ * Radians to degrees.
+ *
+ * @param rad Angle [rad].
+ * @returns Angle [deg].
+ * @source Definition.
+ */
 export const degrees = (rad: number): number => (rad * 180) / Math.PI;

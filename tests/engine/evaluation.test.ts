@@ -5,6 +5,7 @@ import { EvaluationReply, EvaluationRequest, type EvaluationBody } from '#contra
 import type { Problem } from '#contract/errors.ts';
 import { engineVersion } from '../../api/compute/engine-version.ts';
 import { landIndex } from '../../api/compute/land.ts';
+import type { AppError } from '../../api/errors.ts';
 import { EvaluationService } from '../../api/features/evaluations/evaluation-service.ts';
 import { workedRequest } from '../helpers/evaluation-request.ts';
 import { expectPrinted } from '../helpers/printed.ts';
@@ -133,7 +134,12 @@ describe('a request with faults', () => {
   it('is refused when a result cannot be right, not clipped', () => {
     const body = workedRequest();
     body.sites[0]!.topographicFactor = 2.9;
-    expect(() => evaluate(body)).toThrow('plain gust of site 0');
+    expect(() => evaluate(body)).toThrow(/^No result: plain gust of site S1 is 1\d\d\.\d+; it must be in 0..120 m\/s/);
+    try {
+      evaluate(body);
+    } catch (error) {
+      expect((error as AppError).faults.map(({ path }) => path)).toEqual(['body.sites.0']);
+    }
   });
 });
 

@@ -23,6 +23,7 @@ export type DrawWork = {
  *
  * @param stateCount Number of states of the storm.
  * @returns The arrays.
+ * @source Workspace only.
  */
 export function makeDrawWork(stateCount: number): DrawWork {
   return {

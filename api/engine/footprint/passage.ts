@@ -37,6 +37,7 @@ export type Passage = {
  *
  * @param storm The storm.
  * @returns Arrays long enough for every state.
+ * @source Workspace only.
  */
 export function makePassage(storm: Storm): Passage {
   const n = storm.stateCount;

@@ -80,6 +80,7 @@ export type EngineNotice = { readonly code: string; readonly text: string };
  * @param fixes Fixes as given.
  * @throws {DomainError} naming the fix: fewer than two, times not strictly increasing, a place off the globe, a value that
  *         is no number, or neither pressure nor wind.
+ * @source Rules of this product.
  */
 export function requireTrack(fixes: readonly TrackFix[]): void {
   if (fixes.length < 2) throw new DomainError('number of fixes', fixes.length, 'at least 2');

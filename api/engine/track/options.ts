@@ -27,6 +27,7 @@ export const DEFAULT_OPTIONS: ChainOptions = {
  *
  * @param options The options; steps [s].
  * @throws {DomainError} when a step is not in 5..3600 s.
+ * @source Rule of this product.
  */
 export function requireOptions({ timeStepS, innerTimeStepS }: ChainOptions): void {
   if (!(timeStepS >= 5 && timeStepS <= 3600)) throw new DomainError('timeStepS', timeStepS, 'in 5..3600 s');

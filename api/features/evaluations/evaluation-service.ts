@@ -63,7 +63,7 @@ export class EvaluationService {
       return { storm, scores: scoreSites(storm, batchOf(request.sites, ground), REFERENCE_CURVE) };
     } catch (error) {
       if (!(error instanceof DomainError)) throw error;
-      throw new AppError('invalid_request', `No result: ${error.message}.`, { cause: error });
+      throw refusal(error, request.sites);
     }
   }
 
@@ -83,6 +83,21 @@ export class EvaluationService {
     return { roughness, fetch, filled };
   }
 }
+
+/** What the engine refuses, at the field of the request it speaks of: it numbers sites from 0 and fixes from 1. */
+const refusal = (error: DomainError, sites: readonly Site[]): AppError => {
+  const site = /site (\d+)$/.exec(error.quantity)?.[1];
+  const fix = /fix (\d+)$/.exec(error.quantity)?.[1];
+  const told = `${error.value as string | number}; it must be ${error.requirement}.`;
+  const [path, message] =
+    site !== undefined
+      ? [
+          `body.sites.${site}`,
+          `${error.quantity.replace(/site \d+$/, `site ${sites[Number(site)]!.siteRef}`)} is ${told}`,
+        ]
+      : [fix === undefined ? 'body' : `body.track.${Number(fix) - 1}`, `${error.quantity} is ${told}`];
+  return new AppError('invalid_request', `No result: ${message}`, { faults: [{ path, message }], cause: error });
+};
 
 type Ground = { roughness: number; fetch: Float64Array; filled: Record<string, string> };
 
