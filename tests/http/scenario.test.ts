@@ -160,6 +160,12 @@ describe('reading a text', () => {
     expect([reply.status, problemOf(reply).code]).toEqual([422, 'track_unreadable']);
     expect(problemOf(reply).faults).toMatchObject([{ path: 'line 32' }]);
   });
+  it('counts every bad line and lists the first two hundred', async () => {
+    const text = `AL012030, LONG, 1,\n${'not a fix\n'.repeat(1_000)}`;
+    const problem = problemOf(await modeler.post('/scenarios/read', { text, format: 'best-track' }));
+    expect(problem.detail).toContain('1000 lines or columns');
+    expect(problem.faults).toHaveLength(200);
+  });
   it('says what it can read when it is given something else', async () => {
     const reply = await modeler.post('/scenarios/read', { text: 'The storm moved north.' });
     expect(problemOf(reply).detail).toContain('neither best-track text');

@@ -63,6 +63,9 @@ it('sorts only on request, and says so', () => {
   expect(sorted.findings).toMatchObject([{ code: 'TRACK-16', severity: 'note' }]);
 });
 
+it('sees the same moment however precisely it is written', () =>
+  expect(codes([fixAt(0), { ...fixAt(0), time: '2030-09-01T00:00:00Z' }, fixAt(6)])).toEqual(['TRACK-03']));
+
 it('says what an inch of mercury would be in hPa', () =>
   // 29.92 inHg is the standard atmosphere, 1013.2 hPa.
   expect(said([fixAt(0, { centralPressureHpa: 29.92 }), fixAt(6)], 'TRACK-04').text).toContain('1013.2'));

@@ -35,6 +35,8 @@ type Audit = {
 };
 
 const MAX_FIXES = 400;
+/** A file of quite another kind is wrong in every line; the count is told, the list ends here. */
+const MOST_FAULTS = 200;
 const UNDECLARED: TrackFinding = {
   code: 'TRACK-11',
   severity: 'refuse',
@@ -68,12 +70,13 @@ export class ScenarioService {
       });
     }
     if (faults.length > 0) {
+      const shown = faults.slice(0, MOST_FAULTS).map(({ path, message }) => ({ path, message }));
       const lines = faults.length === 1 ? 'One line or column' : `${faults.length} lines or columns`;
       throw new AppError(
         'track_unreadable',
         `${lines} can’t be read, so the track wasn’t taken. Nothing was left out.`,
         {
-          faults: faults.map(({ path, message }) => ({ path, message })),
+          faults: shown,
         },
       );
     }

@@ -102,7 +102,7 @@ const CHECKS_BEFORE_RESOLVING: EntryRule[] = [
     severity: 'consent',
     title: 'Times out of order',
     check: eachFix((fix, index, before) =>
-      before && fix.time < before.time
+      before && seconds(fix) < seconds(before)
         ? `${at(fix, index)} is earlier than the fix before it, ${momentWords(before.time)}. Order sets heading and speed. Sort the track by time, or correct the time.`
         : null,
     ),
@@ -112,11 +112,11 @@ const CHECKS_BEFORE_RESOLVING: EntryRule[] = [
     severity: 'refuse',
     title: 'The same time twice',
     check: (fixes) => {
-      const first = new Map<string, number>();
+      const first = new Map<number, number>();
       return fixes.flatMap((fix, index) => {
-        const earlier = first.get(fix.time);
+        const earlier = first.get(seconds(fix));
         if (earlier === undefined) {
-          first.set(fix.time, index);
+          first.set(seconds(fix), index);
           return [];
         }
         const text = `Fixes ${earlier + 1} and ${index + 1} are both at ${momentWords(fix.time)}. A storm is in one place at a time. Remove one or correct its time.`;
@@ -251,8 +251,7 @@ export const ENTRY_RULES: readonly EntryRule[] = CHECKS_BEFORE_RESOLVING;
 export const RESOLVED_RULES: readonly ResolvedRule[] = CHECKS_AFTER_RESOLVING;
 
 /** Puts the fixes in time order; the same array when they already are. */
-export const sortedByTime = (fixes: readonly Fix[]): Fix[] =>
-  [...fixes].sort((a, b) => (a.time < b.time ? -1 : a.time > b.time ? 1 : 0));
+export const sortedByTime = (fixes: readonly Fix[]): Fix[] => [...fixes].sort((a, b) => seconds(a) - seconds(b));
 
 /** Findings of the track as entered. With consent, a disorder has been mended and is only noted. */
 export const checkEntry = (fixes: readonly Fix[], sortByTime: boolean): { fixes: Fix[]; findings: TrackFinding[] } => {
