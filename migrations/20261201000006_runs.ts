@@ -53,6 +53,8 @@ export async function up(knex: Knex): Promise<void> {
       currency text not null,
       accepted_by uuid not null references users (id),
       accepted_at timestamptz not null,
+      -- Of the request that made the run: its repeat, even after a crash, is told from somebody else's second accept.
+      accepted_key text,
       finished_at timestamptz,
       constraint runs_number unique (org_id, number),
       constraint runs_quote_once unique (quote_id),

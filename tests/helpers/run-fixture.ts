@@ -168,6 +168,13 @@ export const addRunFixture = async (
       },
       { ...calibration, id: unsignedCalibrationId, version: 2, state: 'draft', digest: digestOf('draft') },
     ]);
+    const opening = {
+      ...{ org_id: org.id, movement_id: randomUUID(), kind: 'opening', currency: 'USD', text: 'Opening', at: AT },
+    };
+    await tx('ledger_entries').insert([
+      { ...opening, account: 'free', amount_minor: balanceMinor },
+      { ...opening, account: 'opening', amount_minor: -balanceMinor },
+    ]);
     await tx('balances').insert({ org_id: org.id, free_minor: balanceMinor, reserved_minor: 0, currency: 'USD' });
   });
   return {

@@ -27,7 +27,9 @@ export const runRoutes = ({ quotes, runs }: { quotes: QuoteService; runs: RunSer
   );
   router.post(
     acceptQuote.path,
-    handle(acceptQuote, ({ actor, params }) => runs.accept(actor, params.quoteId)),
+    handle(acceptQuote, ({ actor, params, req }) =>
+      runs.accept(actor, params.quoteId, req.get('Idempotency-Key') ?? ''),
+    ),
   );
   router.get(
     listRuns.path,

@@ -12,7 +12,7 @@ import { nextNumber, type QuoteStore } from './quote-store.ts';
 import type { RunClosing } from './run-closing.ts';
 import { followRun, type Announcements } from './run-feed.ts';
 import type { AuditTrail, Models, RunTrack, Tracks } from './run-ports.ts';
-import { RUN_CHANNEL, type RunRecord, type RunStore } from './run-store.ts';
+import { RUN_CHANNEL, type AcceptedQuote, type RunRecord, type RunStore } from './run-store.ts';
 import { toEvent, toRun, toSlip, toSummary, type WholeRun } from './run-view.ts';
 import { SCORE_QUEUE } from './score-job.ts';
 
@@ -36,13 +36,18 @@ export interface RunParts {
 export class RunService {
   constructor(private readonly parts: RunParts) {}
 
-  /** Reservation, run, tracks and jobs are stored together, or not at all. */
-  accept(actor: Actor, quoteId: string): Promise<Run> {
+  /**
+   * Reservation, run, tracks and jobs are stored together, or not at all. `key` names the request: when its answer was
+   * lost with the process that gave it, the repeat finds the run instead of a used quote.
+   */
+  accept(actor: Actor, quoteId: string, key: string): Promise<Run> {
     const { transact, quotes, runs, billing, jobs, audit, engineVersion, clock, ids } = this.parts;
     return transact(actor, async (tx) => {
       const { orgId } = actor;
       const quote = await quotes.find(tx, orgId, quoteId);
       if (!quote) throw notFound('Quote', quoteId);
+      const used = await runs.ofQuote(tx, orgId, quoteId);
+      if (used) return this.alreadyAccepted(tx, actor, quote.number, key, used);
       const now = clock.now();
       if (stateOf(quote, now) === 'expired') {
         throw new AppError('quote_expired', `Quote ${quote.number} was valid until ${quote.validUntil}. Quote again.`);
@@ -70,6 +75,7 @@ export class RunService {
         currency: quote.currency,
         acceptedBy: actor.userId,
         acceptedAt: now,
+        acceptedKey: key,
         scenarios: [...new Set(quote.request.scenarioVersionIds)].map((scenarioVersionId) => ({
           id: ids.next(),
           scenarioVersionId,
@@ -77,8 +83,8 @@ export class RunService {
         })),
       };
       if (!(await runs.insert(tx, orgId, run))) {
-        const used = await runs.numberOfQuote(tx, orgId, quoteId);
-        throw new AppError('quote_used', `Quote ${quote.number} has been accepted already: see run ${used}.`);
+        const other = (await runs.ofQuote(tx, orgId, quoteId))!;
+        return this.alreadyAccepted(tx, actor, quote.number, key, other);
       }
       await billing.reserve(tx, orgId, run, {
         grossMinor: quote.grossMinor,
@@ -100,6 +106,17 @@ export class RunService {
       await runs.announce(tx, run.id);
       return toRun(await this.whole(tx, orgId, run.id));
     });
+  }
+
+  private async alreadyAccepted(
+    tx: Tx,
+    { orgId, userId }: Actor,
+    quoteNumber: string,
+    key: string,
+    run: AcceptedQuote,
+  ): Promise<Run> {
+    if (run.by === userId && run.key === key) return toRun(await this.whole(tx, orgId, run.id));
+    throw new AppError('quote_used', `Quote ${quoteNumber} has been accepted already: see run ${run.number}.`);
   }
 
   /** What is finished stays and is charged; what is under way stops at its next chunk. */

@@ -183,7 +183,15 @@ export interface NewRun {
   currency: string;
   acceptedBy: string;
   acceptedAt: Date;
+  acceptedKey: string;
   scenarios: { id: string; scenarioVersionId: string; sitesTotal: number }[];
+}
+
+export interface AcceptedQuote {
+  id: string;
+  number: string;
+  by: string;
+  key: string | null;
 }
 
 const WORKING: readonly ScenarioState[] = ['building', 'scoring'];
@@ -215,6 +223,7 @@ export class RunStore {
         currency: run.currency,
         accepted_by: run.acceptedBy,
         accepted_at: run.acceptedAt,
+        accepted_key: run.acceptedKey,
       })
       .onConflict('quote_id')
       .ignore()
@@ -291,11 +300,17 @@ export class RunStore {
     return row?.id ?? null;
   }
 
-  async numberOfQuote(tx: Tx, orgId: string, quoteId: string): Promise<string | null> {
+  /** The run a quote became, and by whose request. */
+  async ofQuote(tx: Tx, orgId: string, quoteId: string): Promise<AcceptedQuote | null> {
     const row = await tx('runs')
       .where({ org_id: orgId, quote_id: quoteId })
-      .first<{ number: string } | undefined>('number');
-    return row?.number ?? null;
+      .first<{ id: string; number: string; accepted_by: string; accepted_key: string | null } | undefined>(
+        'id',
+        'number',
+        'accepted_by',
+        'accepted_key',
+      );
+    return row ? { id: row.id, number: row.number, by: row.accepted_by, key: row.accepted_key } : null;
   }
 
   /** Locks a run until the transaction ends. */
