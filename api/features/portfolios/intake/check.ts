@@ -8,8 +8,8 @@ import {
   type Message,
   type Quality,
 } from './file-row.ts';
-import { buildingMinor, factsOf, judgeRow, surveyRows, type JudgedRow, type Surveyed } from './judge.ts';
-import type { DecimalSign } from './numbers.ts';
+import { factsOf, judgeRow, surveyRows, type JudgedRow, type Surveyed } from './judge.ts';
+import { readAmount, type DecimalSign } from './numbers.ts';
 import type { Totals } from './rule.ts';
 import { FILE_RULES } from './rules.ts';
 import type { SiteField } from '#contract/portfolios.ts';
@@ -88,8 +88,8 @@ function smallValues(rows: readonly FileRow[], facts: FileFacts): Totals['smallV
   if (!DOLLAR_LIKE.has(facts.currency)) return null;
   const found: number[] = [];
   for (const row of rows) {
-    const minor = row.line === 'site' ? buildingMinor(row, facts) : null;
-    if (minor !== null) found.push(minor);
+    const amount = readAmount(row.line === 'site' ? row.received.building_value : undefined, facts.decimal);
+    if (amount.kind === 'amount' && amount.minor > 0) found.push(amount.minor * facts.scale);
   }
   if (found.length === 0) return null;
   const sorted = Float64Array.from(found).sort();

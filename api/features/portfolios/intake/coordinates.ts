@@ -5,8 +5,9 @@ export type Coordinate =
   | { kind: 'unreadable' }
   | { kind: 'degrees'; degrees: number; decimals: number; sexagesimal: boolean };
 
+/** Signs or spaces between the parts; letters would leave it open whether an s stands for seconds or for south. */
 const PARTS =
-  /^([NSEW])?\s*([-−+])?\s*(\d{1,3})\s*(?:°|º|d|deg|\s)\s*(\d{1,2}(?:[.,]\d+)?)\s*(?:['′’m]\s*|\s+|$)(?:(\d{1,2}(?:[.,]\d+)?)\s*(?:["″”s]|''|′′)?)?\s*([NSEW])?$/i;
+  /^([NSEW])?\s*([-−+])?\s*(\d{1,3})\s*(?:[°º]|\s)\s*(\d{1,2}(?:[.,]\d+)?)\s*(?:['′’]\s*|\s+|$)(?:(\d{1,2}(?:[.,]\d+)?)\s*(?:["″”]|''|′′)?)?\s*([NSEW])?$/i;
 const LETTERED = /^([NSEW])?\s*([-−+]?\d+(?:[.,]\d+)?)\s*°?\s*([NSEW])?$/i;
 
 /** Reads decimal degrees, degrees with a hemisphere letter, or degrees, minutes and seconds; null letters and signs may not contradict. */

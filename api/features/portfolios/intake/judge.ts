@@ -1,6 +1,5 @@
 import type { RowState, SiteField } from '#contract/portfolios.ts';
 import {
-  amountsOf,
   pointOf,
   readSite,
   type Context,
@@ -173,7 +172,10 @@ export function resurveyReferences<Row extends Sharing>(rows: readonly Row[]): (
     competesForReference(row.surveyed, row.corrections) ? (row.row.received.site_ref?.trim() ?? null) : null;
   for (const row of rows) {
     const ref = refOf(row);
-    if (ref) competing.set(ref, [...(competing.get(ref) ?? []), row.row.row]);
+    if (!ref) continue;
+    const sharing = competing.get(ref);
+    if (sharing) sharing.push(row.row.row);
+    else competing.set(ref, [row.row.row]);
   }
   return rows.flatMap((row) => {
     const ref = refOf(row);
@@ -184,9 +186,3 @@ export function resurveyReferences<Row extends Sharing>(rows: readonly Row[]): (
     return [{ ...row, surveyed: finding ? [...others, { ...finding, code }] : others }];
   });
 }
-
-/** Values that count for the detector of thousands. */
-export const buildingMinor = (row: FileRow, facts: FileFacts): number | null => {
-  const { building_value: building } = amountsOf(row.received, facts).values;
-  return building.kind === 'amount' && building.minor > 0 ? building.minor : null;
-};

@@ -6,8 +6,10 @@ export type Amount =
 
 /** A single amount above this is a slip; the sum of a full file stays an exact integer well below 2^53. */
 const LARGEST_MINOR = 10n ** 15n;
-/** Whole numbers short enough to be exact either way: the usual case, read without detours. */
+/** The usual cases, short enough to be exact, are read without detours: 1200000 and, with a decimal point, 1,200,000.50. */
 const PLAIN = /^\d{1,12}$/;
+const GROUPED = /^(\d{1,3}(?:,\d{3}){0,3})(?:\.(\d{2}))?$/;
+const HAS_CURRENCY = /[A-Za-z$€£₱₹]/;
 const BLANK = /^(?:-|–|—|n\/?a|nil|none|null)?$/i;
 const CURRENCY = /^(?:[A-Z]{2,3}\s?)?[$€£₱₹]|^[A-Z]{3}(?=[\s\d(])|(?<=[\d)\s])(?:[A-Z]{3}|[$€£₱₹])$/g;
 const PATTERN = {
@@ -23,8 +25,13 @@ export function readAmount(text: string | undefined, decimal: DecimalSign = 'poi
   if (text === undefined) return { kind: 'blank' };
   const trimmed = text.trim();
   if (PLAIN.test(trimmed)) return { kind: 'amount', minor: Number(trimmed) * 100 };
+  const grouped = decimal === 'point' ? GROUPED.exec(trimmed) : null;
+  if (grouped) {
+    return { kind: 'amount', minor: Number(grouped[1]!.replaceAll(',', '')) * 100 + Number(grouped[2] ?? 0) };
+  }
   if (BLANK.test(trimmed)) return { kind: 'blank' };
-  let digits = trimmed.replace(CURRENCY, '').trim();
+  const marked = HAS_CURRENCY.test(trimmed);
+  let digits = marked ? trimmed.replace(CURRENCY, '').trim() : trimmed;
   let negative = false;
   if (digits.startsWith('(') && digits.endsWith(')')) {
     negative = true;
@@ -33,7 +40,7 @@ export function readAmount(text: string | undefined, decimal: DecimalSign = 'poi
     negative = true;
     digits = digits.slice(1).trim();
   } else if (digits.startsWith('+')) digits = digits.slice(1).trim();
-  digits = digits.replace(CURRENCY, '').trim();
+  if (marked) digits = digits.replace(CURRENCY, '').trim();
   const match = PATTERN[decimal].exec(digits);
   if (!match || !/\d/.test(digits)) return { kind: 'unreadable' };
   const fraction = match[1] ?? '';
@@ -57,17 +64,17 @@ export function readDecimal(text: string | undefined, decimal: DecimalSign = 'po
 export const shareOf = (minor: number, percent: number): number =>
   Number((BigInt(minor) * BigInt(Math.round(percent * 1e6)) + 50_000_000n) / 100_000_000n);
 
-const grouped = (digits: string) => digits.replace(/\B(?=(\d{3})+$)/g, ',');
+const inThousands = (digits: string) => digits.replace(/\B(?=(\d{3})+$)/g, ',');
 
 /** Minor units as people write them: 1,204,500,000 or 12.50; a true minus sign. */
 export function moneyText(minor: number): string {
   const absolute = Math.abs(minor);
   const cents = absolute % 100;
-  const text = grouped(String((absolute - cents) / 100)) + (cents ? `.${String(cents).padStart(2, '0')}` : '');
+  const text = inThousands(String((absolute - cents) / 100)) + (cents ? `.${String(cents).padStart(2, '0')}` : '');
   return minor < 0 ? `−${text}` : text;
 }
 
-export const countText = (count: number): string => grouped(String(count));
+export const countText = (count: number): string => inThousands(String(count));
 
 /** What stood in the cell, with a true minus sign and no more than a line of it. */
 export const receivedText = (text: string): string => {

@@ -49,9 +49,10 @@ export const ROW_RULES: readonly RowRule[] = [
 export const SURVEY_RULES: readonly SurveyRule[] = [
   file.notASite,
   repeats.exactRepeat,
-  repeats.sharedReference,
   repeats.probableRepeat,
   place.sharedPoint,
+  // Last, as asking it anew after a fix puts its finding last, too.
+  repeats.sharedReference,
 ];
 
 /** Rules that judge the file as a whole. */

@@ -35,12 +35,15 @@ export const notASite = surveyRule({
         amount.kind === 'amount' && amount.minor > 0 ? [[field, amount.minor] as const] : [],
       );
     };
+    // Sums are only needed where some row without a place might be one.
+    const mayHoldSums = rows.some((row) => row.line === 'site' && placeless(row));
     rows.forEach((row, index) => {
       const text = lineText(row);
       if (text) {
         found.set(index, { field: null, received: null, text });
         return;
       }
+      if (!mayHoldSums) return;
       const own = ofSites(row);
       const equals = (above: typeof all) =>
         above.rows >= 2 && own.length > 0 && own.every(([field, minor]) => above.sums.get(field) === minor);

@@ -3,6 +3,7 @@ import { hasCorrection, pointOf } from '../file-row.ts';
 import { degreesText } from '../coordinates.ts';
 import { canLieIn, inSentence } from '../countries.ts';
 import { countText, receivedText, rowsText } from '../numbers.ts';
+import { pointKey } from '../point-key.ts';
 import { rowRule, surveyRule, type Finding } from '../rule.ts';
 
 /** The land polygons lack barrier islands, so a point a little way out is more often the map's fault than the file's. */
@@ -285,18 +286,22 @@ export const sharedPoint = surveyRule({
   severity: 'note',
   title: 'Sites with different addresses share a point',
   survey: (rows, { aside, repeats }) => {
-    const byPoint = new Map<string, number[]>();
-    rows.forEach(({ received }, index) => {
-      if (aside.has(index) || repeats.has(index) || !received.latitude || !received.longitude || !received.street)
-        return;
-      const point = `${received.latitude.trim()} ${received.longitude.trim()}`;
+    const takesPart = (index: number) => !aside.has(index) && !repeats.has(index) && rows[index]!.received.street;
+    const counts = new Map<number, number>();
+    const points = Float64Array.from(rows, ({ received }, index) => {
+      const point = takesPart(index) ? pointKey(received) : null;
+      if (point !== null) counts.set(point, (counts.get(point) ?? 0) + 1);
+      return point ?? Number.NaN;
+    });
+    const byPoint = new Map<number, number[]>();
+    points.forEach((point, index) => {
+      if ((counts.get(point) ?? 0) < SHARED_POINT_SITES) return;
       const sharing = byPoint.get(point);
       if (sharing) sharing.push(index);
       else byPoint.set(point, [index]);
     });
     const found = new Map<number, Finding>();
-    for (const [point, sharing] of byPoint) {
-      if (sharing.length < SHARED_POINT_SITES) continue;
+    for (const sharing of byPoint.values()) {
       const addresses = new Set(sharing.map((index) => rows[index]!.received.street!.trim().toLowerCase()));
       if (addresses.size < SHARED_POINT_SITES) continue;
       const first = rows[sharing[0]!]!.row;
@@ -304,7 +309,7 @@ export const sharedPoint = surveyRule({
       for (const index of sharing) {
         found.set(index, {
           field: 'latitude',
-          received: point,
+          received: `${rows[index]!.received.latitude} / ${rows[index]!.received.longitude}`,
           text: `Rows ${first}–${last}: ${countText(sharing.length)} sites with different addresses share one point. We treat them as postcode quality; gusts are shown as a range.`,
         });
       }

@@ -1,13 +1,25 @@
-import { createHash } from 'node:crypto';
 import { amountsOf, VALUE_FIELDS, type FileFacts, type FileRow } from '../file-row.ts';
 import { countText, rowsText } from '../numbers.ts';
+import { pointKey } from '../point-key.ts';
 import { rowRule, surveyRule, type Finding } from '../rule.ts';
 
-/** Fingerprint of all mapped cells of a row; blanks and outer spaces don't tell rows apart. */
+/** All mapped cells of a row in one text; blanks and outer spaces don't tell rows apart. */
 const contentOf = ({ received }: FileRow, facts: FileFacts): string => {
   let text = '';
   for (const field of facts.mapped) text += `${received[field]?.trim() ?? ''}\u0000`;
-  return createHash('sha256').update(text).digest('base64');
+  return text;
+};
+
+/** A number of 53 bits for a text; only to find candidates, which are then compared in full. */
+const fingerprint = (text: string): number => {
+  let high = 0xdeadbeef;
+  let low = 0x41c6ce57;
+  for (let i = 0; i < text.length; i++) {
+    const code = text.charCodeAt(i);
+    high = Math.imul(high ^ code, 2654435761);
+    low = Math.imul(low ^ code, 1597334677);
+  }
+  return ((high >>> 0) & 0x1fffff) * 4294967296 + (low >>> 0);
 };
 
 const isBlank = (row: FileRow) => Object.keys(row.received).length === 0;
@@ -18,14 +30,22 @@ export function exactRepeats(
   facts: FileFacts,
   aside: ReadonlyMap<number, unknown>,
 ): Map<number, number> {
-  const firsts = new Map<string, number>();
+  const firsts = new Map<number, number>();
   const repeats = new Map<number, number>();
   rows.forEach((row, index) => {
     if (aside.has(index) || isBlank(row)) return;
     const content = contentOf(row, facts);
-    const first = firsts.get(content);
-    if (first === undefined) firsts.set(content, index);
-    else repeats.set(index, first);
+    // Different texts with one fingerprint take the next free number.
+    for (let key = fingerprint(content); ; key++) {
+      const first = firsts.get(key);
+      if (first === undefined) {
+        firsts.set(key, index);
+        return;
+      }
+      if (contentOf(rows[first]!, facts) !== content) continue;
+      repeats.set(index, first);
+      return;
+    }
   });
   return repeats;
 }
@@ -79,13 +99,19 @@ export const sharedReference = surveyRule({
   title: 'Same reference, different content',
   fix: { kind: 'exclude', label: (rows) => `Exclude ${rowsText(rows)}` },
   survey: (rows, { repeats, aside }) => {
+    const firsts = new Map<string, number>();
     const byRef = new Map<string, number[]>();
     rows.forEach((row, index) => {
       const ref = row.received.site_ref?.trim();
       if (!ref || aside.has(index) || repeats.has(index)) return;
+      const first = firsts.get(ref);
+      if (first === undefined) {
+        firsts.set(ref, index);
+        return;
+      }
       const sharing = byRef.get(ref);
       if (sharing) sharing.push(index);
-      else byRef.set(ref, [index]);
+      else byRef.set(ref, [first, index]);
     });
     const found = new Map<number, Finding>();
     for (const [ref, sharing] of byRef) {
@@ -104,21 +130,34 @@ export const probableRepeat = surveyRule({
   severity: 'note',
   title: 'Probably repeats another row',
   survey: (rows, { facts, repeats, aside }) => {
-    const firsts = new Map<string, number>();
-    const found = new Map<number, Finding>();
-    rows.forEach((row, index) => {
-      const { latitude, longitude, policy_ref: policy, site_ref: ref } = row.received;
-      if (!latitude || !longitude || aside.has(index) || repeats.has(index)) return;
-      const { values } = amountsOf(row.received, facts);
+    const terms = ({ received }: FileRow) => {
+      const { values } = amountsOf(received, facts);
       const amounts = VALUE_FIELDS.map((field) =>
         'minor' in values[field] ? values[field].minor : values[field].kind,
       );
-      const key = [fiveDecimals(latitude), fiveDecimals(longitude), policy?.trim() ?? '', ...amounts].join(' ');
-      const first = firsts.get(key);
-      if (first === undefined) {
-        firsts.set(key, index);
+      return [received.policy_ref?.trim() ?? '', ...amounts].join(' ');
+    };
+    const byPoint = new Map<number, number>();
+    const byTerms = new Map<string, number>();
+    const found = new Map<number, Finding>();
+    rows.forEach((row, index) => {
+      const point = aside.has(index) || repeats.has(index) ? null : pointKey(row.received);
+      if (point === null) return;
+      // Most points stand alone; only those that come again have their values compared.
+      const sharing = byPoint.get(point);
+      if (sharing === undefined) {
+        byPoint.set(point, index);
         return;
       }
+      const before = `${point} ${terms(rows[sharing]!)}`;
+      if (!byTerms.has(before)) byTerms.set(before, sharing);
+      const key = `${point} ${terms(row)}`;
+      const first = byTerms.get(key);
+      if (first === undefined) {
+        byTerms.set(key, index);
+        return;
+      }
+      const ref = row.received.site_ref;
       const earlier = rows[first]!;
       if (earlier.received.site_ref?.trim() === ref?.trim()) return;
       found.set(index, {
@@ -130,8 +169,6 @@ export const probableRepeat = surveyRule({
     return found;
   },
 });
-
-const fiveDecimals = (text: string) => (Number.isFinite(Number(text)) ? Number(text).toFixed(5) : text.trim());
 
 export const referenceMissing = rowRule({
   code: 'SAME-04',
