@@ -301,7 +301,7 @@ export function Component() {
                 <TextField
                   label="Cost centre"
                   aside="optional"
-                  className="ml-auto w-48 max-rail:ml-0 max-rail:w-full"
+                  className="-mt-4.5 ml-auto w-48 max-rail:mt-0 max-rail:ml-0 max-rail:w-full"
                   value={setup.costCentre}
                   maxLength={64}
                   onChange={(event) => change({ costCentre: event.target.value })}

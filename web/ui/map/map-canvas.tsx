@@ -17,6 +17,7 @@ import {
   bandFeatures,
   cellFeatures,
   chosenFeatures,
+  contourFeatures,
   fixFeatures,
   graticule,
   landFeatures,
@@ -205,6 +206,7 @@ export function MapCanvas(props: MapCanvasProps) {
   useEffect(() => {
     if (!started) return;
     setData(started, 'bands', bands ? bandFeatures(bands, started.token) : emptyCollection());
+    setData(started, 'contours', bands ? contourFeatures(bands) : emptyCollection());
     started.map.setLayoutProperty('coast-over-bands', 'visibility', bands ? 'visible' : 'none');
   }, [started, bands]);
 

@@ -1,4 +1,13 @@
-import type { Feature, FeatureCollection, LineString, MultiLineString, MultiPolygon, Point, Polygon } from 'geojson';
+import type {
+  Feature,
+  FeatureCollection,
+  LineString,
+  MultiLineString,
+  MultiPolygon,
+  Point,
+  Polygon,
+  Position,
+} from 'geojson';
 import { clock, shortDay } from '../../lib/dates.ts';
 import { count } from '../../lib/numbers.ts';
 import { differenceToken, gustToken } from '../charts/gust-scale.ts';
@@ -48,25 +57,46 @@ export const graticule = (stepDeg: number) => {
   ]);
 };
 
-/** From here up a hairline must be light to be seen. */
-const DARK_FROM_MS = 50;
-
-/** Bands in the legend's colours; a gust band on a full ten also carries a contour hairline. */
+/** Bands in the legend's colours. */
 export const bandFeatures = ({ view, levels, features }: MapBands, token: MapTokens) =>
   collection<MultiPolygon>(
     features.map(({ properties: { level }, geometry }) => {
       const name = view === 'difference' ? differenceToken(level, levels) : gustToken(level);
-      return {
-        type: 'Feature',
-        geometry,
-        properties: {
-          level,
-          colour: name ? token(name) : 'rgba(0,0,0,0)',
-          hairline: view !== 'difference' && level % 10 === 0,
-          hairlineColour: level >= DARK_FROM_MS ? token('--p-porcelain') : token('--p-ink'),
-        },
-      };
+      return { type: 'Feature', geometry, properties: { level, colour: name ? token(name) : 'rgba(0,0,0,0)' } };
     }),
+  );
+
+const CONTOUR_STEP_MS = 10;
+/** From here up a hairline must be light to be seen. */
+const DARK_FROM_MS = 50;
+
+/** Neighbouring bands share whole rings, in either direction: the same points, so the same smallest one. */
+const ringKey = (ring: readonly Position[]) => {
+  const points = ring.map(String);
+  return `${ring.length} ${points.reduce((least, point) => (point < least ? point : least), points[0] ?? '')}`;
+};
+
+/** Hairlines on each full ten: a band's rings without those it shares with the band above it. */
+export const contourFeatures = ({ view, levels, features }: MapBands) =>
+  collection<MultiLineString>(
+    (view === 'difference' ? [] : features)
+      .filter(({ properties: { level } }) => level % CONTOUR_STEP_MS === 0)
+      .map(({ properties: { level }, geometry }) => {
+        const above = levels[levels.indexOf(level) + 1];
+        const shared = new Set(
+          features
+            .filter(({ properties }) => properties.level === above)
+            .flatMap(({ geometry: { coordinates } }) => coordinates.flat().map(ringKey)),
+        );
+        return {
+          type: 'Feature',
+          properties: { dark: level >= DARK_FROM_MS },
+          geometry: {
+            type: 'MultiLineString',
+            coordinates: geometry.coordinates.flat().filter((ring) => !shared.has(ringKey(ring))),
+          },
+        };
+      }),
   );
 
 export const trackFeatures = ({ path }: MapTrack) =>

@@ -10,6 +10,7 @@ export const SOURCES = [
   'land',
   'graticule',
   'bands',
+  'contours',
   'ring',
   'track',
   'ticks',
@@ -46,9 +47,12 @@ const layers = (token: MapTokens): LayerSpecification[] => [
   {
     id: 'contours',
     type: 'line',
-    source: 'bands',
-    filter: isTrue('hairline'),
-    paint: { 'line-color': get('hairlineColour'), 'line-width': 0.7, 'line-opacity': 0.75 },
+    source: 'contours',
+    paint: {
+      'line-color': ['case', isTrue('dark'), token('--p-porcelain'), token('--p-ink')],
+      'line-width': 0.7,
+      'line-opacity': ['case', isTrue('dark'), 0.7, 0.32],
+    },
   },
   {
     // Over bands the coast must stay readable on every step of the scale.

@@ -1,7 +1,9 @@
 import { useState } from 'react';
 import { Gauge, Info, Waves } from 'lucide-react';
+import type { LossRange } from '#contract/common.ts';
 import type { Run, RunScenario } from '#contract/runs.ts';
-import { moneyRangeParts, shortMoney } from '../../../lib/money.ts';
+import { minorPerUnit, moneyRangeParts, shortMoney } from '../../../lib/money.ts';
+import { counted, decimal, decimalsFor } from '../../../lib/numbers.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { linearAxis } from '../../../ui/charts/axis.ts';
 import { RangeBar } from '../../../ui/charts/range-bar.tsx';
@@ -88,8 +90,8 @@ export function HeadlineCard({ run, scenario }: HeadlineCardProps) {
           <Waves size={17} strokeWidth={1.75} className="mt-px flex-none text-verdigris" aria-hidden />
           {enhanced ? (
             <span>
-              <b>{vorticesAdd(enhanced.p50 - plain, currency)}</b> at the centre. Plain is one run without them: no
-              vortex range.
+              <b>{vorticesAdd(enhanced, plain, currency)}</b> at the centre. Plain is one run without them: no vortex
+              range.
             </span>
           ) : (
             <span>
@@ -102,23 +104,34 @@ export function HeadlineCard({ run, scenario }: HeadlineCardProps) {
         </li>
       </ul>
       {result.engineNotices.length > 0 && (
-        <ul className="border-t border-rule px-4.5 py-2.5 text-12 text-ink-2">
-          {result.engineNotices.map((notice) => (
-            <li key={notice.code} className="flex gap-2 py-0.5">
-              <Info size={14} strokeWidth={1.75} className="mt-px flex-none" aria-hidden />
-              {notice.text}
-            </li>
-          ))}
-        </ul>
+        <details className="border-t border-rule text-13">
+          <summary className="px-4.5 py-2.5 text-ink-2">
+            <b className="text-ink">{counted(result.engineNotices.length, 'note')}</b> on how this track was taken
+          </summary>
+          <ul className="px-4.5 pb-3 text-ink-2">
+            {result.engineNotices.map((notice) => (
+              <li key={notice.text} className="flex gap-2.5 py-0.75 leading-snug">
+                <Info size={15} strokeWidth={1.75} className="mt-px flex-none" aria-hidden />
+                {notice.text}
+              </li>
+            ))}
+          </ul>
+        </details>
       )}
     </section>
   );
 }
 
-const vorticesAdd = (difference: number, currency: string) =>
-  difference >= 0
-    ? `Vortices add ${shortMoney(difference, currency)}`
-    : `Vortices take ${shortMoney(-difference, currency)}`;
+const UNITS_OF: Record<string, number> = { billion: 1e9, million: 1e6, thousand: 1e3 };
+/** "Vortices add 19.4 (10.6–54.6) million": what the range is over plain. */
+const vorticesAdd = (enhanced: LossRange, plain: number, currency: string) => {
+  const [low, centre, high] = [enhanced.p5 - plain, enhanced.p50 - plain, enhanced.p95 - plain];
+  const { amount, scale } = moneyRangeParts(low, high, currency);
+  const per = UNITS_OF[scale] ?? 1;
+  const value = centre / minorPerUnit(currency) / per;
+  const text = decimal(value, scale === '' ? 0 : decimalsFor(value));
+  return `Vortices add ${[text, `(${amount})`, scale].filter(Boolean).join(' ')}`;
+};
 
 function Range({ low, high, currency }: { low: number; high: number; currency: string }) {
   const { amount, scale } = moneyRangeParts(low, high, currency);

@@ -1,5 +1,5 @@
 import type { Run, RunScenario } from '#contract/runs.ts';
-import { counted } from '../../../lib/numbers.ts';
+import { count, counted } from '../../../lib/numbers.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { paths } from '../../../paths.ts';
 import { GustHistogram } from '../../../ui/charts/gust-histogram.tsx';
@@ -44,12 +44,12 @@ export function MapTab({ run, scenario, chosenSiteNo, onChooseSite }: MapTabProp
                   className="flex items-baseline gap-3 border-t border-rule py-1.5 first:border-t-0"
                 >
                   <dt className="flex-1 text-13 text-ink-2">
-                    above {gust(above.gustMs)} {label}
+                    above {gust(above.gustMs).replace(/\.0$/, '')} {label}
                   </dt>
                   <dd className="text-right">
                     <b className="text-16">{sitesAboveText(above, vortices)}</b>
                     <span className="block text-12 text-ink-2">
-                      {vortices ? `central ${above.p50}, plain ${above.plain}` : 'plain'}
+                      {vortices ? `central ${count(above.p50)}, plain ${count(above.plain)}` : 'plain'}
                     </span>
                   </dd>
                 </div>

@@ -63,6 +63,9 @@ function Facts({ run, scenario }: { run: Run; scenario: RunScenario }) {
   const { currency } = run;
   const scoredTiv = run.reconciliation.ready.tivMinor + run.reconciliation.notes.tivMinor;
   const vortices = result.gross !== null;
+  const highest = result.above.at(-1);
+  const lower = result.above.length > 1 ? result.above[0] : undefined;
+  const threshold = ({ gustMs }: { gustMs: number }) => gust(gustMs).replace(/\.0$/, '');
   const facts = [
     {
       label: 'Scored',
@@ -83,18 +86,22 @@ function Facts({ run, scenario }: { run: Run; scenario: RunScenario }) {
       value: `${percent(scoredTiv > 0 ? run.assumedTivMinor / scoredTiv : 0, 0)} of TIV`,
       note: counted(run.assumedSites, 'site'),
     },
-    ...result.above.map((above) => ({
-      label: `Gust above ${gust(above.gustMs)} ${label}`,
-      value: `${sitesAboveText(above, vortices)} sites`,
-      note: vortices
-        ? `central ${count(above.p50)}, plain ${count(above.plain)}, TIV ${shortMoney(above.tivMinor, currency)}`
-        : `plain, TIV ${shortMoney(above.tivMinor, currency)}`,
-    })),
+    ...(highest
+      ? [
+          {
+            label: `Gust above ${threshold(highest)} ${label}`,
+            value: `${sitesAboveText(highest, vortices)} sites`,
+            note: `${vortices ? `central ${count(highest.p50)}, TIV` : 'plain, TIV'} ${shortMoney(highest.tivMinor, currency)}${
+              lower ? `; above ${threshold(lower)}: ${sitesAboveText(lower, vortices)}` : ''
+            }`,
+          },
+        ]
+      : []),
   ];
   return (
     <dl
       aria-label="Facts of this track"
-      className="grid grid-cols-5 overflow-hidden rounded-3 border border-rule bg-sheet shadow-1 max-md:grid-cols-2"
+      className="grid grid-cols-4 overflow-hidden rounded-3 border border-rule bg-sheet shadow-1 max-md:grid-cols-2"
     >
       {facts.map((fact, index) => (
         <div

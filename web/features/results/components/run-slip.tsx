@@ -83,7 +83,9 @@ function Slip({ slip }: { slip: RunSlip }) {
             <Row term="Winds">
               averaged over {scenario.windAveragingS} s; {scenario.conversion}
             </Row>
-            <Row term="Filled">{scenario.filled.length === 0 ? 'nothing' : scenario.filled.join('; ')}</Row>
+            <Row term="Filled">
+              {scenario.filled.length === 0 ? 'nothing' : scenario.filled.map(filledWords).join('; ')}
+            </Row>
             <Row term="Result" digest={scenario.resultDigest ?? undefined}>
               {scenario.resultDigest ? 'all sites, as one digest' : 'none yet'}
             </Row>
@@ -120,6 +122,18 @@ function Slip({ slip }: { slip: RunSlip }) {
     </div>
   );
 }
+
+const FIELD_WORDS: Record<string, string> = {
+  ambientPressureHpa: 'pressure outside',
+  centralPressureHpa: 'central pressure',
+  maxWindMs: 'maximum wind',
+  radiusOfMaxWindM: 'radius of maximum wind',
+  ringWidthFraction: 'ring width',
+  eyeVorticityRatio: 'eye vorticity ratio',
+  hoursInland: 'hours inland',
+};
+/** The slip names fields as the file does; here they are words. */
+const filledWords = (line: string) => line.replace(/^\w+/, (field) => FIELD_WORDS[field] ?? field);
 
 function Section({ title, children }: { title: string; children: ReactNode }) {
   return (

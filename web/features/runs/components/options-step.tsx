@@ -23,7 +23,7 @@ const HIGHEST_MS = 85;
 export function OptionsStep({ options, onChange, strongest, departures, calibration }: OptionsStepProps) {
   return (
     <>
-      <div className="mt-1 flex flex-wrap gap-x-5 gap-y-3">
+      <div className="mt-1 flex flex-wrap gap-x-3.5 gap-y-3">
         <Option label="Eyewall vortices">
           <Segmented
             label="Eyewall vortices"
@@ -155,9 +155,9 @@ function Threshold({
           if (text !== null && !fault && text !== shown) onSpeed(Math.round(typed * 1000) / 1000);
           setText(null);
         }}
-        className="h-7.5 w-24 rounded-2 border border-edge bg-sheet pr-11 pl-2.5 text-14 aria-invalid:border-2 aria-invalid:border-error pointer-coarse:h-10.5"
+        className="h-7.5 w-20 rounded-2 border border-edge bg-sheet pr-10 pl-2.5 text-14 aria-invalid:border-2 aria-invalid:border-error pointer-coarse:h-10.5"
       />
-      <span className="pointer-events-none absolute inset-y-0 right-2.5 grid place-items-center text-13 text-ink-2">
+      <span className="pointer-events-none absolute inset-y-0 right-2 grid place-items-center text-13 text-ink-2">
         {label}
       </span>
     </label>

@@ -41,7 +41,10 @@ export function QuoteCard(props: QuoteCardProps) {
   return (
     <section
       aria-label="Quote"
-      className="flex flex-col rounded-3 border border-rule-strong bg-sheet shadow-2 max-wide:order-first"
+      className={classNames(
+        'flex flex-col rounded-3 border border-rule-strong bg-sheet shadow-2 max-wide:order-first',
+        !quote && 'self-start max-wide:self-stretch',
+      )}
     >
       {quote?.identicalRunId && isOpen && <IdenticalRun runId={quote.identicalRunId} />}
       {!quote ? (

@@ -2,10 +2,10 @@ import { Ban, CircleCheck, CircleDashed, ClockAlert, Loader, OctagonAlert, type 
 import { Link, useNavigate } from 'react-router-dom';
 import type { RunState, RunSummary } from '#contract/runs.ts';
 import { clock, shortDay } from '../../../lib/dates.ts';
-import { exactAmount, minorPerUnit, moneyRange, shortMoney } from '../../../lib/money.ts';
+import { exactAmount, minorPerUnit, moneyRange, moneyRangeParts, shortMoney } from '../../../lib/money.ts';
 import { paths } from '../../../paths.ts';
 import { Card } from '../../../ui/card.tsx';
-import { logAxis } from '../../../ui/charts/axis.ts';
+import { logAxis, percentOf, type Axis } from '../../../ui/charts/axis.ts';
 import { RangeBar } from '../../../ui/charts/range-bar.tsx';
 import { Chip, type Tone } from '../../../ui/chip.tsx';
 import { ProgressBar } from '../../../ui/progress-bar.tsx';
@@ -41,6 +41,8 @@ const axisFor = (runs: readonly RunSummary[], currency: string) => {
 export function RunsTable({ runs, loading, linked, failedMore }: RunsTableProps) {
   const navigate = useNavigate();
   const axes = new Map([...new Set(runs.map(({ currency }) => currency))].map((code) => [code, axisFor(runs, code)]));
+  // One currency, one axis: its decades can be written in the header.
+  const onlyAxis = axes.size === 1 ? [...axes.entries()][0]! : null;
   return (
     <Card padded={false} className="overflow-hidden">
       {failedMore && <TableBanner onRetry={failedMore}>The next runs didn’t load.</TableBanner>}
@@ -50,8 +52,9 @@ export function RunsTable({ runs, loading, linked, failedMore }: RunsTableProps)
             <Th>Run</Th>
             <Th>Account and tracks</Th>
             <Th priority={3}>Purpose</Th>
-            <Th priority={3} className="w-52">
+            <Th priority={3} className="w-52 min-w-52">
               Gross, log axis
+              {onlyAxis?.[1] && <Decades currency={onlyAxis[0]} axis={onlyAxis[1]} />}
             </Th>
             <Th numeric>Gross, 5–95 %</Th>
             <Th numeric priority={2}>
@@ -123,6 +126,24 @@ export function RunsTable({ runs, loading, linked, failedMore }: RunsTableProps)
         </tbody>
       </Table>
     </Card>
+  );
+}
+
+const SHORT: Record<string, string> = { thousand: 'k', million: 'm', billion: 'bn' };
+
+function Decades({ currency, axis }: { currency: string; axis: Axis }) {
+  return (
+    <span className="relative mt-0.5 block h-3.5">
+      {axis.ticks.map((tick, index) => {
+        const { amount, scale } = moneyRangeParts(tick, tick, currency);
+        const end = index === 0 ? '' : index === axis.ticks.length - 1 ? '-translate-x-full' : '-translate-x-1/2';
+        return (
+          <span key={tick} className={`absolute leading-none ${end}`} style={{ left: percentOf(axis.at(tick)) }}>
+            {amount.replace(/\.0+$/, '')} {SHORT[scale] ?? scale}
+          </span>
+        );
+      })}
+    </span>
   );
 }
 

@@ -55,7 +55,7 @@ export function DeclarationsStrip({ draft, change, readOnly }: DeclarationsStrip
           ))}
         </select>
       </Cell>
-      <Cell label="Wind unit" note="shown and typed; stored in m/s">
+      <Cell label="Wind unit" note="as shown and typed">
         <span className="block py-0.5 text-16 font-bold">{label}</span>
       </Cell>
       <AmbientPressure {...{ draft, change, readOnly }} />
@@ -136,7 +136,7 @@ function SourceAndTime({ draft, change, readOnly }: DeclarationsStripProps) {
           <input
             id={`${id}-as-of`}
             className="min-w-0 flex-1 rounded-1 border border-transparent bg-transparent px-1 hover:border-edge focus:border-edge"
-            placeholder="advisories only, UTC"
+            placeholder="if an advisory, UTC"
             readOnly={readOnly}
             value={shownAsOf}
             aria-invalid={fault}

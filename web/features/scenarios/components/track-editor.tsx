@@ -69,7 +69,7 @@ export function TrackEditor({ draft, change, sortByTime, onSortByTime, readOnly,
         <div className="flex min-w-0 flex-col gap-3.5">
           <DeclarationsStrip draft={draft} change={change} readOnly={readOnly} />
           <Card padded={false} className="overflow-hidden">
-            <div className="max-h-96 overflow-y-auto">
+            <div className="max-h-86 overflow-y-auto">
               <FixGrid
                 fixes={draft.fixes}
                 resolved={resolved}
