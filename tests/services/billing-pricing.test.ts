@@ -71,8 +71,8 @@ describe('rounding', () => {
 
 describe('settlement', () => {
   it('is free when nothing completed, for cancelled and for failed runs alike', () => {
-    expect(settleRun(TARIFF, 5_520, { units: 0, tracksCompleted: 0, tracksFailed: 0 }).grossMinor).toBe(0);
-    expect(settleRun(TARIFF, 5_520, { units: 0, tracksCompleted: 0, tracksFailed: 3 }).grossMinor).toBe(0);
+    expect(settleRun(TARIFF, 5_520, { units: 1_840, tracksCompleted: 0, tracksFailed: 0 }).grossMinor).toBe(0);
+    expect(settleRun(TARIFF, 5_520, { units: 1_840, tracksCompleted: 0, tracksFailed: 3 }).grossMinor).toBe(0);
   });
   it('is free when every site is out of reach', () =>
     expect(settleRun(TARIFF, 0, { units: 0, tracksCompleted: 3, tracksFailed: 0 }).grossMinor).toBe(0));

@@ -48,7 +48,7 @@ describe('what is only noted', () => {
     expect(codes([fixAt(0, { longitude: 179.8 }), fixAt(6, { longitude: -179.6 })])).toEqual([]));
   it('fixes near the equator, on either side, in one line', () =>
     expect(
-      said([fixAt(0, { latitude: 4.9 }), fixAt(6, { latitude: 4 }), fixAt(12, { latitude: 5 })], 'TRACK-08'),
+      said([fixAt(0, { latitude: 4.9 }), fixAt(6, { latitude: -4 }), fixAt(12, { latitude: 5 })], 'TRACK-08'),
     ).toMatchObject({
       severity: 'note',
       text: expect.stringContaining('Fixes 1–2 are within 5°'),
