@@ -60,8 +60,8 @@ const requestLog = (log: Logger) =>
   pinoHttp({
     logger: log,
     genReqId: (req) => (req as unknown as { requestId: string }).requestId,
-    customLogLevel: (_req, res, error) =>
-      error || res.statusCode >= 500 ? 'error' : res.statusCode >= 400 ? 'info' : 'debug',
+    // What went wrong is logged where it is answered.
+    customLogLevel: (_req, res) => (res.statusCode >= 400 ? 'info' : 'debug'),
     serializers: {
       // Paths without their queries: a search may name a client's site.
       req: ({ id, method, url }: { id: string; method: string; url: string }) => ({

@@ -43,6 +43,8 @@ import { PortfolioStore } from './features/portfolios/portfolio-store.ts';
 import { SealService } from './features/portfolios/seal-service.ts';
 import { SiteStore } from './features/portfolios/site-store.ts';
 import { UploadService } from './features/portfolios/upload-service.ts';
+import { evaluationRoutes } from './features/evaluations/evaluation-routes.ts';
+import { EvaluationService } from './features/evaluations/evaluation-service.ts';
 import { resultRoutes } from './features/results/result-routes.ts';
 import { ResultService } from './features/results/result-service.ts';
 import { ResultStore } from './features/results/result-store.ts';
@@ -118,16 +120,38 @@ const SECRET_PATHS = [
   '*.headers',
 ];
 
+/** Without the driver's connection objects that errors of the database drag along. */
+const errorInBrief = (error: Error & { code?: unknown }) => ({
+  type: error.name,
+  message: error.message,
+  code: error.code,
+  stack: error.stack,
+});
+
 const createLog = (level: string): Logger =>
-  pino({ level, base: { service: 'gustloom' }, redact: { paths: SECRET_PATHS, censor: '[kept back]' } });
+  pino({
+    level,
+    base: { service: 'gustloom' },
+    serializers: { err: errorInBrief },
+    redact: { paths: SECRET_PATHS, censor: '[kept back]' },
+  });
 
 /** Threads the engine runs on. Workers keep theirs; an API process needs one now and then, to explain a site. */
 const THREADS = 2;
 const enginePool = (role: 'api' | 'worker', threads: number): EnginePool =>
   role === 'worker' ? new ThreadPool({ threads, kept: threads }) : new ThreadPool({ threads: 1, kept: 0 });
 
+const fail = (error: Error): void => {
+  throw error;
+};
+
 /** The composition root: builds everything once, hands each part what it needs. `role` says which process it is for. */
-export const createContainer = (config: Config, role: 'api' | 'worker', overrides: Overrides = {}): Container => {
+export const createContainer = (
+  config: Config,
+  role: 'api' | 'worker',
+  overrides: Overrides = {},
+  onLocksLost = fail,
+): Container => {
   const log = overrides.log ?? createLog(config.logLevel);
   const clock = overrides.clock ?? systemClock;
   const ids = overrides.ids ?? randomIds;
@@ -137,7 +161,7 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
 
   const database = createDatabase(config.databaseUrl);
   const transact = createTransact(database);
-  const queue = new Queue({ databaseUrl: config.databaseUrl, log, supervise: role === 'worker' });
+  const queue = new Queue({ databaseUrl: config.databaseUrl, log, supervise: role === 'worker', onLocksLost });
   const blobs = overrides.blobs ?? new PostgresBlobs(transact);
   const audit = new AuditLog(clock, ids);
   const outbox = new Outbox(queue, clock, ids);
@@ -199,6 +223,7 @@ export const createContainer = (config: Config, role: 'api' | 'worker', override
     billingRoutes(billing),
     runRoutes(runServices),
     resultRoutes(resultService),
+    evaluationRoutes(new EvaluationService(landIndex, engineVersion), limitCompute(limits)),
   ];
   const rawRouters: Router[] = [paymentWebhookRoutes(settlement)];
   const { sinkFolder } = config.mail;

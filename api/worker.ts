@@ -7,7 +7,10 @@ import { Reaper } from './jobs/reaper.ts';
 import { whenAskedToStop } from './stopping.ts';
 
 const config = readConfig(process.env);
-const container = createContainer(config, 'worker');
+const container = createContainer(config, 'worker', {}, (error) => {
+  container.log.error({ err: error }, 'starting anew');
+  process.exit(1);
+});
 const { queue, transact, mail, clock, log, checkJob, scoreJob } = container;
 await queue.start();
 await registerOutboxJobs(queue, { transact, mail, clock });

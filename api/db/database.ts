@@ -7,4 +7,6 @@ export const createDatabase = (url: string, max = 10): Knex =>
     connection: { connectionString: url, application_name: 'gustloom' },
     pool: { min: 0, max },
     acquireConnectionTimeout: 15_000,
+    // Whoever asked gets the error and says so once.
+    log: { error: () => undefined, warn: () => undefined },
   });

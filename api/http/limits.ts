@@ -21,6 +21,8 @@ export const DEFAULT_LIMITS: Limits = {
   compute: { windowMs: 60_000, requests: 60 },
 };
 
+const WRONG_SIGN_IN = 401;
+
 const limiter = ({ windowMs, requests }: Limit, message: string, onlyFailures: boolean): RequestHandler =>
   rateLimit({
     windowMs,
@@ -28,6 +30,8 @@ const limiter = ({ windowMs, requests }: Limit, message: string, onlyFailures: b
     standardHeaders: 'draft-7',
     legacyHeaders: false,
     skipSuccessfulRequests: onlyFailures,
+    // A database that is away is nobody's wrong guess.
+    requestWasSuccessful: (_req, res) => res.statusCode !== WRONG_SIGN_IN,
     handler: (req) => {
       const info = (req as typeof req & { rateLimit?: { resetTime?: Date } }).rateLimit;
       const resetAt = info?.resetTime?.getTime() ?? Date.now() + windowMs;

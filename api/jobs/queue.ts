@@ -36,6 +36,8 @@ interface QueueSettings {
   log: Logger;
   /** Looks after the queue's tables; one process in the house is enough, more do no harm. */
   supervise: boolean;
+  /** Without its locks a process would compute what another one has been given: it must end, or start anew. */
+  onLocksLost: (error: Error) => void;
 }
 
 /** Jobs in PostgreSQL: enqueued within transactions, held by an advisory lock so that a killed worker is noticed. */
@@ -137,9 +139,10 @@ export class Queue implements Jobs {
   private async openLocks(): Promise<Client> {
     if (this.locks) return this.locks;
     const locks = new Client({ connectionString: this.settings.databaseUrl, application_name: 'gustloom job locks' });
-    // Without its locks this process would compute what another one has been given: better to start anew.
-    locks.on('error', (error) => {
-      if (this.locks === locks) throw new Error('The connection that holds the job locks was lost', { cause: error });
+    locks.on('error', (cause) => {
+      if (this.locks !== locks) return;
+      this.locks = null;
+      this.settings.onLocksLost(new Error('The connection that holds the job locks was lost', { cause }));
     });
     await locks.connect();
     this.locks = locks;

@@ -8,7 +8,7 @@ import { whenAskedToStop } from '../../api/stopping.ts';
 const databaseUrl = process.env.DATABASE_URL!;
 const log = pino({ level: 'silent' });
 const notes = knex({ client: 'pg', connection: databaseUrl, pool: { min: 0, max: 2 } });
-const queue = new Queue({ databaseUrl, log, supervise: true });
+const queue = new Queue({ databaseUrl, log, supervise: true, onLocksLost: () => process.exit(1) });
 const reaper = new Reaper(databaseUrl, log);
 const note = (jobId: string, what: string) =>
   notes('pgboss.job_notes').insert({ job_id: jobId, what, pid: process.pid });

@@ -162,6 +162,20 @@ describe('limits', () => {
   });
 });
 
+describe('the sign-in limit', () => {
+  it('counts wrong guesses, not what goes well', async () => {
+    const wide = { windowMs: 60_000, requests: 1000 };
+    const limited = await createTestApp({
+      limits: { all: wide, signIn: { windowMs: 60_000, requests: 2 }, compute: wide },
+    });
+    const enter = (password: string) =>
+      request(limited.app).post('/api/v1/session').send({ email: DUNE.people.admin.email, password });
+    for (let count = 0; count < 4; count += 1) await enter(PASSWORD).expect(201);
+    for (let count = 0; count < 2; count += 1) await enter('a guess').expect(401);
+    await enter(PASSWORD).expect(429);
+  });
+});
+
 describe('every page', () => {
   it('carries the strict content security policy', async () => {
     const reply = await request(app).get('/api/docs').expect(200);

@@ -10,7 +10,12 @@ import { testDatabase } from '../helpers/database.ts';
 import { DUNE } from '../helpers/people.ts';
 
 const { app, appUrl, transact } = await testDatabase();
-const queue = new Queue({ databaseUrl: appUrl, log: pino({ level: 'silent' }), supervise: false });
+const queue = new Queue({
+  databaseUrl: appUrl,
+  log: pino({ level: 'silent' }),
+  supervise: false,
+  onLocksLost: () => undefined,
+});
 const workers: ChildProcess[] = [];
 
 interface Note {
