@@ -68,7 +68,7 @@ import { signInCheck } from './http/auth.ts';
 import { SessionCookies } from './http/cookies.ts';
 import { csrfCheck } from './http/csrf.ts';
 import { createOnce } from './http/idempotency.ts';
-import { DEFAULT_LIMITS, limitSignIn, type Limits } from './http/limits.ts';
+import { DEFAULT_LIMITS, limitCompute, limitSignIn, type Limits } from './http/limits.ts';
 import { mailPage } from './http/pages.ts';
 import { Outbox } from './jobs/outbox.ts';
 import { Queue } from './jobs/queue.ts';
