@@ -30,7 +30,7 @@ interface PoolSettings {
   entry?: URL;
 }
 
-const IDLE_MS = 60_000;
+const IDLE_MS = 600_000;
 
 const stopFlag = (): StopFlag => new Int32Array(new SharedArrayBuffer(Int32Array.BYTES_PER_ELEMENT));
 
