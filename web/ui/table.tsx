@@ -1,6 +1,7 @@
 import type { ComponentProps, ReactNode } from 'react';
 import { CircleAlert } from 'lucide-react';
 import { classNames } from '../lib/class-names.ts';
+import { ScrollArea } from './scroll-area.tsx';
 import { Skeleton } from './skeleton.tsx';
 
 /** Scrolls inside itself when it must; the page never scrolls sideways. */
@@ -15,11 +16,14 @@ export function Table({
   children: ReactNode;
 }) {
   return (
-    <div className={classNames('relative min-w-0 overflow-x-auto', className)}>
+    <ScrollArea
+      label={`${label}, scrolls sideways`}
+      className={classNames('relative min-w-0 overflow-x-auto', className)}
+    >
       <table className="w-full border-collapse text-14" aria-label={label}>
         {children}
       </table>
-    </div>
+    </ScrollArea>
   );
 }
 

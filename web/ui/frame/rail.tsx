@@ -145,16 +145,17 @@ function PersonMenu({ person, onSignOut }: Pick<RailProps, 'person' | 'onSignOut
     'flex h-9 w-full items-center gap-2.5 rounded-1 px-2.5 text-14 text-ink data-focus:bg-hover pointer-coarse:h-11';
   return (
     <Menu>
-      <MenuButton
-        aria-label={`${person.name}, ${person.role}: theme and sign out`}
-        className="flex w-full items-center gap-2.5 rounded-2 px-2 py-1.75 text-left leading-tight hover:bg-rail-2 focus-visible:outline-rail-mark data-open:bg-rail-2 max-wide:justify-center max-wide:px-1"
-      >
-        <span className="grid size-7 flex-none place-items-center rounded-pill bg-[#1F5C66] text-12 font-black text-[#FFFDFA]">
+      <MenuButton className="flex w-full items-center gap-2.5 rounded-2 px-2 py-1.75 text-left leading-tight hover:bg-rail-2 focus-visible:outline-rail-mark data-open:bg-rail-2 max-wide:justify-center max-wide:px-1">
+        <span
+          className="grid size-7 flex-none place-items-center rounded-pill bg-[#1F5C66] text-12 font-black text-[#FFFDFA]"
+          aria-hidden
+        >
           {initialsOf(person.name)}
         </span>
-        <span className="min-w-0 max-wide:hidden">
+        <span className="min-w-0 max-wide:sr-only">
           <b className="block truncate text-13">{person.name}</b>
           <span className="block truncate text-12 text-rail-text-2">{person.role}</span>
+          <span className="sr-only">: theme and sign out</span>
         </span>
       </MenuButton>
       <MenuItems

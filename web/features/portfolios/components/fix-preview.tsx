@@ -10,6 +10,7 @@ import { Card } from '../../../ui/card.tsx';
 import { TextField } from '../../../ui/field.tsx';
 import { Message } from '../../../ui/message.tsx';
 import { ProblemNotice } from '../../../ui/problem.tsx';
+import { ScrollArea } from '../../../ui/scroll-area.tsx';
 import { useToast } from '../../../ui/toast.tsx';
 import { SkeletonRows, Table, Td, Th, Tr } from '../../../ui/table.tsx';
 import { rowsQuery, sitePointsQuery, useApplyFix, useUndoFix } from '../edition-queries.ts';
@@ -83,7 +84,10 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
     >
       {why && <p className="px-4 pt-1 pb-2.5 text-13 text-ink-2">{why}</p>}
       {fix && movesPlaces(fix.kind) && <FixMap editionId={edition.id} rows={items} kind={fix.kind} />}
-      <div className="flex-1 overflow-y-auto border-t border-rule max-wide:max-h-120 wide:min-h-32">
+      <ScrollArea
+        label="Rows with this message"
+        className="flex-1 overflow-y-auto border-t border-rule max-wide:max-h-120 wide:min-h-32"
+      >
         {rows.isError ? (
           <ProblemNotice
             title="The rows weren’t read"
@@ -109,7 +113,7 @@ export function FixPreview({ edition, group, canWrite }: FixPreviewProps) {
             </Button>
           </div>
         )}
-      </div>
+      </ScrollArea>
       {fix && (
         <form
           noValidate
@@ -225,7 +229,9 @@ function RowsTable({ group, items, loading, kind, picked, onToggle }: RowsTableP
             <>
               <Th numeric>Lat. received</Th>
               <Th numeric>Lon. received</Th>
-              <Th aria-label="becomes" />
+              <Th>
+                <span className="sr-only">becomes</span>
+              </Th>
               <Th numeric>Latitude</Th>
               <Th numeric>Longitude</Th>
             </>

@@ -205,7 +205,9 @@ function ControlCard({ edition }: { edition: Edition }) {
       <Table label="Control totals" className="mt-1">
         <thead>
           <tr>
-            <Th />
+            <Th>
+              <span className="sr-only">Total</span>
+            </Th>
             <Th numeric priority={2}>
               You expected
             </Th>

@@ -8,6 +8,7 @@ import { Button } from '../../../ui/button.tsx';
 import { Card } from '../../../ui/card.tsx';
 import { Chip, type Tone } from '../../../ui/chip.tsx';
 import { ProblemNotice } from '../../../ui/problem.tsx';
+import { ScrollArea } from '../../../ui/scroll-area.tsx';
 import { Segmented } from '../../../ui/segmented.tsx';
 import { EmptyRow, SkeletonRows, Table, TableBanner, Td, Th, Tr } from '../../../ui/table.tsx';
 import { rowsQuery } from '../edition-queries.ts';
@@ -71,7 +72,7 @@ export function SitesPanel({ edition, filter, onFilter, chosenRef, onChoose }: S
           className="m-4"
         />
       ) : (
-        <div className="flex-1 wide:min-h-0 wide:overflow-y-auto">
+        <ScrollArea label="Rows of the file" className="flex-1 wide:min-h-0 wide:overflow-y-auto">
           {rows.isFetchNextPageError && (
             <TableBanner onRetry={() => void rows.fetchNextPage()}>The next rows didn’t load.</TableBanner>
           )}
@@ -153,7 +154,7 @@ export function SitesPanel({ edition, filter, onFilter, chosenRef, onChoose }: S
               </Button>
             </div>
           )}
-        </div>
+        </ScrollArea>
       )}
     </Card>
   );
