@@ -1,4 +1,4 @@
-import { afterAll, describe, expect, it } from 'vitest';
+import { afterAll, describe, expect, it, vi } from 'vitest';
 import { REFERENCE_CURVE } from '#engine/loss/damage-curve.ts';
 import { DEFAULT_OPTIONS } from '#engine/track/options.ts';
 import { ThreadPool, type EnginePool } from '../../api/compute/pool.ts';
@@ -8,6 +8,8 @@ import { batchOf, ScoredSites } from '../../api/features/runs/scored-sites.ts';
 import { inlinePool } from '../helpers/inline-pool.ts';
 import { workedFixes } from '../helpers/worked-storm.ts';
 
+// A thread takes two seconds of a processor to start, and a busy machine has few to give.
+vi.setConfig({ testTimeout: 180_000 });
 const pool = new ThreadPool({
   threads: 2,
   kept: 0,
