@@ -1,22 +1,22 @@
 import '@testing-library/jest-dom/vitest';
 import { cleanup } from '@testing-library/react';
-import { afterEach, vi } from 'vitest';
+import { afterEach } from 'vitest';
 
-// jsdom has no layout and no media queries; components only ask whether one matches.
-vi.stubGlobal('matchMedia', (query: string) => ({
-  matches: false,
-  media: query,
-  addEventListener: () => undefined,
-  removeEventListener: () => undefined,
-}));
-vi.stubGlobal(
-  'ResizeObserver',
-  class {
+// jsdom has no layout and no media queries; components only ask whether one matches. Set outright, so that a test which
+// takes its own stubs back doesn't take these with them.
+Object.assign(globalThis, {
+  matchMedia: (query: string) => ({
+    matches: false,
+    media: query,
+    addEventListener: () => undefined,
+    removeEventListener: () => undefined,
+  }),
+  ResizeObserver: class {
     observe() {}
     unobserve() {}
     disconnect() {}
   },
-);
+});
 
 afterEach(() => {
   cleanup();
