@@ -105,6 +105,7 @@ export interface Container {
   outbox: Outbox;
   checkJob: CheckJob;
   scoreJob: ScoreJob;
+  services: { quotes: QuoteService; runs: RunService; results: ResultService };
   appParts: AppParts;
   close(): Promise<void>;
 }
@@ -231,6 +232,7 @@ export const createContainer = (
 
   return {
     ...{ config, log, database, transact, queue, clock, ids, mail, blobs, audit, outbox, checkJob, scoreJob },
+    services: { ...runServices, results: resultService },
     appParts: {
       ...{ log, limits, isProduction, routers, rawRouters, devRouters },
       publicUrl: config.publicUrl,

@@ -6,7 +6,6 @@ import { AppError } from '../errors.ts';
 import { parsePart, toProblem } from '../http/problem.ts';
 
 const BAD_INPUT = 2;
-const UNPROCESSABLE = 422;
 
 /** Answers one JSON request on standard output, with the reply or with a problem, and gives the exit status. */
 export function answer<T extends z.ZodType>(text: string, schema: T, reply: (request: z.output<T>) => unknown): number {
@@ -31,7 +30,7 @@ export function answer<T extends z.ZodType>(text: string, schema: T, reply: (req
 }
 
 function refuse(detail: string, faults: Fault[]): number {
-  print({ ...toProblem('invalid_request', detail, randomUUID(), faults), status: UNPROCESSABLE });
+  print(toProblem('invalid_request', detail, randomUUID(), faults));
   return BAD_INPUT;
 }
 

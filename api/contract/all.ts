@@ -1,5 +1,6 @@
 import * as billing from './billing.ts';
 import type { Endpoint } from './endpoint.ts';
+import * as evaluations from './evaluations.ts';
 import * as models from './models.ts';
 import * as portfolios from './portfolios.ts';
 import * as runs from './runs.ts';
@@ -15,6 +16,12 @@ const isEndpoint = (value: unknown): value is Endpoint =>
   'access' in value;
 
 /** Every operation of the API; a new contract file is added to this list. */
-export const ALL_ENDPOINTS: readonly Endpoint[] = [session, portfolios, scenarios, models, runs, billing].flatMap(
-  (file) => Object.values<unknown>(file).filter(isEndpoint),
-);
+export const ALL_ENDPOINTS: readonly Endpoint[] = [
+  session,
+  portfolios,
+  scenarios,
+  models,
+  runs,
+  evaluations,
+  billing,
+].flatMap((file) => Object.values<unknown>(file).filter(isEndpoint));

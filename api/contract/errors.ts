@@ -2,6 +2,7 @@ import { z } from 'zod';
 
 /** Every way a request can fail that its sender can act on. The HTTP status of each stands in http/error-handler.ts. */
 export const ErrorCode = z.enum([
+  'malformed_request',
   'invalid_request',
   'not_signed_in',
   'wrong_sign_in',

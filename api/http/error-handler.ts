@@ -6,12 +6,12 @@ import { toProblem } from './problem.ts';
 
 /** What Express and its parsers throw, in our words. Their own messages may name files of the server. */
 const BODY_FAULTS: Record<string, [ErrorCode, string]> = {
-  'entity.parse.failed': ['invalid_request', 'The body isn’t valid JSON.'],
+  'entity.parse.failed': ['malformed_request', 'The body isn’t valid JSON.'],
   'entity.too.large': ['file_too_large', 'The request is larger than this address takes.'],
-  'encoding.unsupported': ['invalid_request', 'The body’s encoding isn’t supported; send UTF-8.'],
-  'charset.unsupported': ['invalid_request', 'The body’s character set isn’t supported; send UTF-8.'],
-  'request.size.invalid': ['invalid_request', 'The body is shorter or longer than announced.'],
-  'request.aborted': ['invalid_request', 'The request ended before its body did.'],
+  'encoding.unsupported': ['malformed_request', 'The body’s encoding isn’t supported; send UTF-8.'],
+  'charset.unsupported': ['malformed_request', 'The body’s character set isn’t supported; send UTF-8.'],
+  'request.size.invalid': ['malformed_request', 'The body is shorter or longer than announced.'],
+  'request.aborted': ['malformed_request', 'The request ended before its body did.'],
 };
 
 const fromMiddleware = (error: unknown): AppError | null => {
@@ -23,7 +23,7 @@ const fromMiddleware = (error: unknown): AppError | null => {
   const known = type === undefined ? undefined : BODY_FAULTS[type];
   if (known) return new AppError(known[0], known[1], { cause: error });
   if (error instanceof URIError || (status !== undefined && status >= 400 && status < 500))
-    return new AppError(status === 404 ? 'not_found' : 'invalid_request', 'The request couldn’t be read.', {
+    return new AppError(status === 404 ? 'not_found' : 'malformed_request', 'The request couldn’t be read.', {
       cause: error,
     });
   return null;

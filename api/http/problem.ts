@@ -2,7 +2,8 @@ import type { z } from 'zod';
 import type { ErrorCode, Fault, Problem } from '#contract/errors.ts';
 
 const TITLES: Record<ErrorCode, { status: number; title: string }> = {
-  invalid_request: { status: 400, title: 'Something in the request isn’t right' },
+  malformed_request: { status: 400, title: 'The request can’t be read' },
+  invalid_request: { status: 422, title: 'Something in the request isn’t right' },
   not_signed_in: { status: 401, title: 'Not signed in' },
   wrong_sign_in: { status: 401, title: 'Wrong e-mail address or password' },
   too_many_requests: { status: 429, title: 'Too many requests' },

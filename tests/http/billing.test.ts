@@ -101,13 +101,13 @@ it('keeps movements and top-ups to those whose business they are', async () => {
 it('refuses a top-up below the smallest and above the largest', async () => {
   for (const amountMinor of [999, 10_000_001, 12.5]) {
     const reply = await admin.post('/billing/top-ups', { amountMinor });
-    expect(Problem.parse(reply.body)).toMatchObject({ status: 400, faults: [{ path: 'body.amountMinor' }] });
+    expect(Problem.parse(reply.body)).toMatchObject({ status: 422, faults: [{ path: 'body.amountMinor' }] });
   }
 });
 
 it('refuses a cursor that isn’t one of ours', async () => {
-  expect((await admin.get(`${listCharges.path}?cursor=abc`)).status).toBe(400);
+  expect((await admin.get(`${listCharges.path}?cursor=abc`)).status).toBe(422);
   expect((await admin.get(`${listMovements.path}?cursor=${Buffer.from('["x"]').toString('base64url')}`)).status).toBe(
-    400,
+    422,
   );
 });

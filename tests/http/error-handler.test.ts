@@ -107,7 +107,7 @@ describe('a body that can’t be read', () => {
 
   it('is refused when it isn’t JSON, without the parser’s words', async () => {
     const reply = await post('{"a":').expect(400);
-    expect(reply.body).toMatchObject({ code: 'invalid_request', detail: 'The body isn’t valid JSON.' });
+    expect(reply.body).toMatchObject({ code: 'malformed_request', detail: 'The body isn’t valid JSON.' });
   });
   it('is refused when it is too large', async () => {
     const reply = await post(JSON.stringify({ a: 'x'.repeat(2000) })).expect(413);

@@ -189,8 +189,8 @@ describe('states and fixes', () => {
 
   it('refuses a fix that doesn’t help, rows that haven’t the message, and rows somebody fixed meanwhile', async () => {
     const edition = await checked(schedule(SOUND, SOUND.replace('S-1', 'S-2').replace('-81.800001', '81.800001')));
-    await fix(edition.id, 'PLACE-03', 'swap_coordinates').expect(400);
-    await fix(edition.id, 'PLACE-99', 'exclude').expect(400);
+    await fix(edition.id, 'PLACE-03', 'swap_coordinates').expect(422);
+    await fix(edition.id, 'PLACE-99', 'exclude').expect(422);
     await fix(edition.id, 'PLACE-03', 'negate_longitude', { rows: [2, 3] }).expect(409);
     await fix(edition.id, 'PLACE-03', 'negate_longitude').expect(201);
     await fix(edition.id, 'PLACE-03', 'negate_longitude').expect(409);
@@ -315,9 +315,9 @@ describe('portfolios', () => {
       'conflict',
     );
     expect(
-      (await browser.post('/portfolios', { name: 'Yen book', currency: 'JPY' }).expect(400)).body.detail,
+      (await browser.post('/portfolios', { name: 'Yen book', currency: 'JPY' }).expect(422)).body.detail,
     ).toContain('JPY');
-    await browser.post('/portfolios', { name: '  ', currency: 'USD' }).expect(400);
+    await browser.post('/portfolios', { name: '  ', currency: 'USD' }).expect(422);
   });
   it('are listed a page at a time', async () => {
     const first = (await browser.get('/portfolios?limit=2').expect(200)).body;
@@ -381,8 +381,8 @@ describe('files that can’t be taken in', () => {
     await browser
       .post(`/portfolios/${portfolio.id}/files`)
       .attach('other', Buffer.from('a,b\n1,2'), 'a.csv')
-      .expect(400);
-    await browser.post(`/portfolios/${portfolio.id}/files`).field('name', 'x').expect(400);
+      .expect(422);
+    await browser.post(`/portfolios/${portfolio.id}/files`).field('name', 'x').expect(422);
   });
 });
 
@@ -393,7 +393,7 @@ describe('mapping', () => {
       { index: 1, field: 'building_value' },
       { index: 2, field: 'building_value' },
     ];
-    const reply = await browser.put(`/editions/${draft.id}/mapping`, { columns, currency: 'USD' }).expect(400);
+    const reply = await browser.put(`/editions/${draft.id}/mapping`, { columns, currency: 'USD' }).expect(422);
     expect(reply.body.faults).toEqual([
       {
         path: 'body.columns.1',

@@ -132,7 +132,7 @@ describe('a track that isn’t saved', () => {
 
   it('has no declared averaging period', async () => {
     const reply = await modeler.post('/scenarios', { name: 'Undeclared', track: { ...track, declarations: {} } });
-    expect(reply.status).toBe(400);
+    expect(reply.status).toBe(422);
     expect(problemOf(reply).faults[0]).toMatchObject({
       path: 'body.track.declarations.windAveragingS',
       message: expect.stringContaining('Declare how long the winds were averaged'),
@@ -229,6 +229,6 @@ it('gives runs the versions they ask for, in their order, of their organisation 
 it('refuses a cursor that isn’t one of ours', async () => {
   for (const parts of [['x'], ['yesterday', 'me'], ['2030-09-01T00:00:00.000Z', "' or true --"]]) {
     const cursor = Buffer.from(JSON.stringify(parts)).toString('base64url');
-    expect((await modeler.get(`/scenarios?cursor=${cursor}`)).status).toBe(400);
+    expect((await modeler.get(`/scenarios?cursor=${cursor}`)).status).toBe(422);
   }
 });
