@@ -46,7 +46,7 @@ export function GustLadder({ rungs, plainMs, enhanced, vortices, aside, fileName
       title="Why this gust"
       aside={`${label}, ${aside}`}
       summary={`From the gradient wind to the gust, ${label}: ${rungs
-        .map((rung) => `${rung.name} ${stepText(rung, toUnit)} gives ${gust(rung.afterMs)}`)
+        .map((rung) => `${[rung.name, stepText(rung, toUnit)].filter(Boolean).join(' ')} gives ${gust(rung.afterMs)}`)
         .join(
           '; ',
         )}; plain gust ${gust(plainMs)}; ${enhanced ? `with eyewall vortices ${final}` : 'no vortex range: layer off'}.`}

@@ -4,8 +4,9 @@ import type { Position } from 'geojson';
 import { useSyncExternalStore } from 'react';
 import coarseUrl from 'world-atlas/land-110m.json?url';
 import fineUrl from 'world-atlas/land-50m.json?url';
+import finestUrl from 'world-atlas/land-10m.json?url';
 
-export type LandDetail = 'coarse' | 'fine';
+export type LandDetail = 'coarse' | 'fine' | 'finest';
 /** One polygon a land mass: outer ring, then lakes; longitudes continuous along each ring. */
 export type LandPolygons = Position[][][];
 
@@ -59,7 +60,7 @@ export const landPolygons = (topology: LandTopology): LandPolygons =>
     return [];
   });
 
-const URLS: Record<LandDetail, string> = { coarse: coarseUrl, fine: fineUrl };
+const URLS: Record<LandDetail, string> = { coarse: coarseUrl, fine: fineUrl, finest: finestUrl };
 const loading = new Map<LandDetail, Promise<LandPolygons>>();
 const loaded = new Map<LandDetail, LandPolygons>();
 const listeners = new Set<() => void>();

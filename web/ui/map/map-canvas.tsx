@@ -3,7 +3,7 @@ import { Map as MapEngine, setWorkerUrl, type GeoJSONSource, type MapMouseEvent 
 import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?worker&url';
 import type { FeatureCollection } from 'geojson';
 import { longitudeNear, type Bounds, type LonLat } from './geography.ts';
-import { loadLand } from './land.ts';
+import { loadLand, type LandDetail } from './land.ts';
 import {
   byGust,
   countCells,
@@ -59,6 +59,8 @@ export interface MapCanvasProps {
 const PICK_PX = 14;
 /** Wider than this, the coarse land is as good as the fine one. */
 const FINE_BELOW_DEG = 40;
+/** Closer than this, the coast is drawn from the very polygons the wind was computed over. */
+const FINEST_BELOW_DEG = 8;
 const SETTLED_ZOOM = 11;
 
 const NO_SITES: MapSites = {
@@ -186,12 +188,16 @@ export function MapCanvas(props: MapCanvasProps) {
     if (!started) return;
     let current = true;
     setData(started, 'graticule', graticule(10));
-    const show = (detail: 'coarse' | 'fine') =>
+    const show = (detail: LandDetail) =>
       loadLand(detail).then((land) => {
         if (current) setData(started, 'land', landFeatures(land));
       });
     const [west, , east] = boundsIn(started.map);
-    void show('coarse').then(() => (east - west < FINE_BELOW_DEG ? show('fine') : undefined));
+    const better = east - west < FINEST_BELOW_DEG ? 'finest' : east - west < FINE_BELOW_DEG ? 'fine' : null;
+    // A coarse coast at once; should the better one not arrive, it stays.
+    void show('coarse')
+      .then(() => (better ? show(better) : undefined))
+      .catch(() => undefined);
     return () => {
       current = false;
     };

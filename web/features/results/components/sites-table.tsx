@@ -142,7 +142,7 @@ export function SitesTable(props: SitesTableProps) {
 const HIDES: Record<Column['priority'], string> = { 1: '', 2: 'max-md:hidden', 3: 'max-wide:hidden' };
 const cellLook = ({ numeric, priority }: Column) =>
   classNames(
-    'px-2.5 leading-tight first:pl-4 last:pr-4',
+    'px-2 leading-tight first:pl-4 last:pr-4',
     numeric ? 'text-right whitespace-nowrap' : 'text-left',
     HIDES[priority],
   );
@@ -180,7 +180,7 @@ function SortHead({ column, filter, onSort }: { column: Column } & Pick<SitesTab
   );
 }
 
-function useColumns({ currency, vortices, onChoose }: SitesTableProps): Column[] {
+function useColumns({ currency, vortices, onChoose, slim }: SitesTableProps): Column[] {
   const { gust, gustRange, label } = useUnits();
   const scored = (site: SiteResult, text: () => ReactNode) => {
     if (site.reach === 'scored') return text();
@@ -205,7 +205,7 @@ function useColumns({ currency, vortices, onChoose }: SitesTableProps): Column[]
           >
             {site.siteRef}
           </button>
-          <span className="block max-w-72 truncate text-12 text-ink-2">
+          <span className={classNames('block truncate text-12 text-ink-2', slim ? 'max-w-38' : 'max-w-72')}>
             {[site.label, site.town].filter(Boolean).join(', ')}
           </span>
         </>
@@ -262,7 +262,7 @@ function useColumns({ currency, vortices, onChoose }: SitesTableProps): Column[]
           {
             key: 'enhanced',
             sort: 'p50' as const,
-            label: `Enhanced 5–95 %, ${label}`,
+            label: slim ? `5–95 %, ${label}` : `Enhanced 5–95 %, ${label}`,
             numeric: true,
             priority: 1 as const,
             cell: (site: SiteResult) =>
