@@ -121,14 +121,14 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
     guess: 'terrain',
   },
   deductible_kind: {
-    sure: 'deductible kind|deductible type|ded type|deductible basis|ded basis|ded kind|wind ded type|deductible code',
+    sure: 'deductible kind|deductible type|excess type|excess kind|excess basis|ded type|deductible basis|ded basis|ded kind|wind ded type|deductible code',
     likely: 'ded code|wind deductible type|deductible unit',
     guess: 'dedtype|deductibletype',
   },
   deductible_value: {
     sure: 'deductible value|deductible|ded|wind deductible|wind ded|deductible amount|ded amount|ded value|hurricane deductible|named storm deductible|site deductible',
     likely:
-      'excess|retention|wind storm deductible|windstorm deductible|hurricane ded|ns ded|location deductible|loc ded|ded amt',
+      'excess|excess amount|retention|wind storm deductible|windstorm deductible|hurricane ded|ns ded|location deductible|loc ded|ded amt',
     guess: 'deductible',
   },
   site_limit: {
