@@ -1,8 +1,9 @@
 import { engineBench } from './benches/engine-bench.ts';
+import { runBench } from './benches/run-bench.ts';
 import type { Bench, Measured } from './benches/bench.ts';
 
 // npm run bench: a line per measurement; npm run -s bench -- --json: one JSON object and nothing else.
-const BENCHES: readonly Bench[] = [engineBench];
+const BENCHES: readonly Bench[] = [engineBench, runBench];
 
 const asJson = process.argv.includes('--json');
 const measured: Record<string, Measured> = {};
