@@ -58,7 +58,7 @@ export function TabBar({ items, more, person, organisation, onSignOut }: TabBarP
         <DialogPanel className="fixed inset-x-0 bottom-0 rounded-t-3 bg-sheet pb-3 shadow-3">
           <DialogTitle className="px-4 pt-4 pb-2 leading-tight">
             <b className="block text-16">{person.name}</b>
-            <span className="text-13 text-ink-2">
+            <span className="text-13 font-normal tracking-normal text-ink-2">
               {person.role}, {organisation.name}
             </span>
           </DialogTitle>

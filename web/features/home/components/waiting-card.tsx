@@ -66,7 +66,7 @@ export function WaitingCard({ items, loading, quiet }: WaitingCardProps) {
                 to={item.action.to}
                 size="small"
                 variant={index === 0 ? 'filled' : 'outlined'}
-                className="max-rail:col-start-2 max-rail:mt-1.5 max-rail:h-9! max-rail:justify-self-start"
+                className="max-rail:col-start-2 max-rail:mt-1.5 max-rail:justify-self-start"
               >
                 {item.action.label}
               </ButtonLink>
