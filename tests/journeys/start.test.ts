@@ -1,5 +1,5 @@
 import { execFileSync } from 'node:child_process';
-import { readFileSync } from 'node:fs';
+import { readFileSync, rmSync } from 'node:fs';
 import { createServer } from 'node:http';
 import { join } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
@@ -71,11 +71,13 @@ describe('npm start', () => {
     const other = createServer();
     const port = await freePort();
     await new Promise<void>((resolve) => other.listen(port, resolve));
-    const { starter, printed } = runStart(newDataFolder(), port);
+    const elsewhere = newDataFolder();
+    const { starter, printed } = runStart(elsewhere, port);
     expect(await exitOf(starter)).toBe(1);
     expect(printed()).toContain(`Port ${port} is taken`);
     expect(printed()).not.toMatch(/ {4}at /);
     other.close();
+    rmSync(elsewhere, { recursive: true });
   });
 
   it('brings a killed API and a killed worker back', async () => {
