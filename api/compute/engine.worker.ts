@@ -40,11 +40,17 @@ const fillFetch = ({ count, roughnessM, latitude, longitude, fetchM }: SiteBatch
   }
 };
 
-export const score = ({ storm: prepared, sites, curve, stop }: ScoreTask): Answer<Tasks['score']['reply']> =>
+export const score = ({
+  storm: prepared,
+  sites,
+  curve,
+  countAboveMs,
+  stop,
+}: ScoreTask): Answer<Tasks['score']['reply']> =>
   answer(() => {
     if (isStopped(stop)) return STOPPED;
     fillFetch(sites);
-    const scores = scoreSites(prepared, sites, curve, { shouldStop: () => isStopped(stop) });
+    const scores = scoreSites(prepared, sites, curve, { shouldStop: () => isStopped(stop) }, countAboveMs);
     return isStopped(stop) ? STOPPED : { reply: scores };
   });
 

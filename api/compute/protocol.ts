@@ -22,6 +22,8 @@ export type ScoreTask = {
   /** NaN as the first of a site's eight fetches asks for the land polygons. */
   readonly sites: SiteBatch;
   readonly curve: DamageCurve;
+  /** Gusts for which the sites that reach them are counted, draw by draw. */
+  readonly countAboveMs: readonly number[];
   readonly stop: StopFlag;
 };
 

@@ -216,6 +216,20 @@ describe('many sites', () => {
     }
     expect(summed).toEqual(all.eventGross);
   });
+  it('are counted above a gust, and give the strongest gust, draw by draw', () => {
+    const levels = [45, 55];
+    const counted = scoreSites(storm, batchOf(sites), REFERENCE_CURVE, {}, levels);
+    // Alone, a site's strongest gust in a draw is its gust in that draw.
+    const draws = sites.map((site) => scoreSites(storm, batchOf([site]), REFERENCE_CURVE).eventPeak);
+    for (let d = 0; d < 264; d++) {
+      const gusts = draws.map((peaks) => peaks[d]!);
+      expect(counted.eventPeak[d]).toBe(Math.max(...gusts));
+      levels.forEach((level, k) =>
+        expect(counted.eventAbove[k * 264 + d]).toBe(gusts.filter((gust) => gust >= level).length),
+      );
+    }
+    expect(new Set(counted.eventAbove.subarray(264)).size).toBeGreaterThan(1);
+  });
   it('are the same after the storm has been sent to another thread', () => {
     expect(scoreSites(structuredClone(storm), batchOf(sites), REFERENCE_CURVE)).toEqual(all);
   });

@@ -35,11 +35,16 @@ const stormFrom = (engine: EnginePool) => engine.run('storm', { fixes: workedFix
 /** Scores an edition in chunks that are started together, and so finish in whatever order. */
 const scored = async (engine: EnginePool, count: number, chunk: number): Promise<ScoredSites> => {
   const storm = await stormFrom(engine);
-  const gathered = new ScoredSites();
+  const gathered = new ScoredSites(1);
   await Promise.all(
     Array.from({ length: Math.ceil(count / chunk) }, async (_, index) => {
       const part = sites(Math.min(chunk, count - index * chunk), 1 + index * chunk);
-      const scores = await engine.run('score', { storm, sites: batchOf(part), curve: REFERENCE_CURVE });
+      const scores = await engine.run('score', {
+        storm,
+        sites: batchOf(part),
+        curve: REFERENCE_CURVE,
+        countAboveMs: [50],
+      });
       gathered.add(index, part, scores);
     }),
   );
@@ -69,12 +74,16 @@ describe('the engine on threads', () => {
     const storm = await stormFrom(pool);
     const stop = new AbortController();
     const many = batchOf(sites(60_000));
-    const working = pool.run('score', { storm, sites: many, curve: REFERENCE_CURVE }, stop.signal);
+    const working = pool.run('score', { storm, sites: many, curve: REFERENCE_CURVE, countAboveMs: [50] }, stop.signal);
     const begun = performance.now();
     setTimeout(() => stop.abort(), 50);
     await expect(working).rejects.toMatchObject({ name: 'EngineStopped' });
     expect(performance.now() - begun).toBeLessThan(3_000);
-    const late = pool.run('score', { storm, sites: batchOf(sites(10)), curve: REFERENCE_CURVE }, stop.signal);
+    const late = pool.run(
+      'score',
+      { storm, sites: batchOf(sites(10)), curve: REFERENCE_CURVE, countAboveMs: [50] },
+      stop.signal,
+    );
     await expect(late).rejects.toMatchObject({ name: 'EngineStopped' });
   });
 
@@ -88,7 +97,7 @@ describe('the engine on threads', () => {
 
   it('loses a task with its thread, and goes on with another', async () => {
     const storm = await stormFrom(pool);
-    const task = () => ({ storm, sites: batchOf(sites(10)), curve: REFERENCE_CURVE });
+    const task = () => ({ storm, sites: batchOf(sites(10)), curve: REFERENCE_CURVE, countAboveMs: [50] });
     const crash = { ...task(), curve: { ...REFERENCE_CURVE, code: 'crash' } };
     await expect(pool.run('score', crash)).rejects.toThrow();
     await expect(pool.run('score', { ...crash, sites: batchOf(sites(10)) })).rejects.toThrow();

@@ -78,6 +78,10 @@ export type SiteScores = Record<(typeof COLUMNS)[number], Float64Array> & {
   /** Sum over the sites per draw [currency], shape (264,). */
   readonly eventGroundUp: Float64Array;
   readonly eventGross: Float64Array;
+  /** Strongest gust at any of the sites per draw [m s⁻¹], shape (264,). */
+  readonly eventPeak: Float64Array;
+  /** Sites whose peak reaches each of the gusts asked for, per draw [1], shape (gusts, 264) row-major. */
+  readonly eventAbove: Float64Array;
 };
 
 /** Asked every 64 sites: whether to stop, and told how many sites are done. */
@@ -98,15 +102,22 @@ const UPPER_THRESHOLD = 33;
  * @param sites   The sites.
  * @param curve   Damage curve, without faults.
  * @param control Asked for stopping, told of progress.
+ * @param countAboveMs Gusts [m s⁻¹] for which the sites that reach them are counted, draw by draw.
  * @returns The scores; when stopped, sites not reached hold NaN.
  * @throws {DomainError} naming the site when its input is outside its range, or when a gust comes out negative, above
  *         120 m/s or as no number: a result is refused, never clipped.
  * @source The chain: passage.ts, draws-of-site.ts, loss/draw-losses.ts. Each draw's loss of a site is rounded to 1/1024
  *         of a currency unit, so that event sums are exact and do not depend on order or chunks.
  */
-export function scoreSites(storm: Storm, sites: SiteBatch, curve: DamageCurve, control: ScoreControl = {}): SiteScores {
+export function scoreSites(
+  storm: Storm,
+  sites: SiteBatch,
+  curve: DamageCurve,
+  control: ScoreControl = {},
+  countAboveMs: readonly number[] = [],
+): SiteScores {
   const { count } = sites;
-  const scores = emptyScores(count);
+  const scores = emptyScores(count, countAboveMs.length);
   const passage = makePassage(storm);
   const work = makeDrawWork(storm.stateCount);
   const path = reachPath(storm.fixes);
@@ -161,6 +172,8 @@ export function scoreSites(storm: Storm, sites: SiteBatch, curve: DamageCurve, c
     if (touched) drawQuantiles(gusts, GUST_LEVELS, levels);
     else levels.fill(plain);
     requireGust('99th percentile of the gust', s, levels[4]!);
+    if (!touched) gusts.fill(plain);
+    addGusts(scores, gusts, countAboveMs);
     scores.enhancedMean[s] = touched ? drawMean(gusts) : plain;
     scores.p5[s] = levels[0]!;
     scores.p50[s] = levels[1]!;
@@ -232,14 +245,24 @@ export function eventSummary(draws: ArrayLike<number>): EventSummary {
   return { mean: drawMean(draws), p5: p5!, p50: p50!, p95: p95! };
 }
 
-function emptyScores(count: number): SiteScores {
+function emptyScores(count: number, gusts: number): SiteScores {
   const columns = Object.fromEntries(COLUMNS.map((name) => [name, new Float64Array(count).fill(NaN)]));
   return {
     ...(columns as Record<(typeof COLUMNS)[number], Float64Array>),
     reach: new Uint8Array(count),
     eventGroundUp: new Float64Array(DRAW_COUNT),
     eventGross: new Float64Array(DRAW_COUNT),
+    eventPeak: new Float64Array(DRAW_COUNT),
+    eventAbove: new Float64Array(gusts * DRAW_COUNT),
   };
+}
+
+function addGusts({ eventPeak, eventAbove }: SiteScores, gusts: Float64Array, countAboveMs: readonly number[]): void {
+  for (let d = 0; d < DRAW_COUNT; d++) {
+    const gust = gusts[d]!;
+    if (gust > eventPeak[d]!) eventPeak[d] = gust;
+    for (let k = 0; k < countAboveMs.length; k++) if (gust >= countAboveMs[k]!) eventAbove[k * DRAW_COUNT + d]! += 1;
+  }
 }
 
 /** Index of the first maximum. */

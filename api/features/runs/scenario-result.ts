@@ -1,6 +1,7 @@
 import type { ScenarioResult } from '#contract/runs.ts';
 import type { LossRange } from '#contract/common.ts';
 import { eventSummary, SITE_BELOW_FLOOR, SITE_OUT_OF_REACH } from '#engine/footprint/site-peaks.ts';
+import { DRAW_COUNT } from '#engine/ring/draws.ts';
 import type { ResolvedFix } from '#engine/track/fixes.ts';
 import type { Storm } from '#engine/track/storm.ts';
 import { toCents, type ScoredSite, type ScoredSites } from './scored-sites.ts';
@@ -25,6 +26,12 @@ const anchorOf = (fixes: readonly ResolvedFix[]): ScenarioResult['anchor'] => {
   return peak === 0 ? 'mean' : peak === fixes.length ? 'peak' : 'mixed';
 };
 
+/** 5, 50 and 95 % over the draws of a figure of the whole event: sites' own percentiles are never combined. */
+const spreadOf = (draws: Float64Array): { p5: number; p50: number; p95: number } => {
+  const { p5, p50, p95 } = eventSummary(draws);
+  return { p5, p50, p95 };
+};
+
 interface Summing {
   storm: Storm;
   gustThresholdsMs: readonly number[];
@@ -36,8 +43,13 @@ interface Summing {
 export const scenarioResult = (scored: ScoredSites, { storm, gustThresholdsMs, remarks }: Summing): ScenarioResult => {
   const sums = { tiv: 0, groundUpPlain: 0, groundUpMean: 0, grossPlain: 0, grossMean: 0 };
   const reach = { scored: 0, outOfReach: 0, belowFloor: 0 };
-  const peak = { plain: 0, p5: 0, p50: 0, p95: 0 };
-  const above = gustThresholdsMs.map((gustMs) => ({ gustMs, plain: 0, p5: 0, p50: 0, p95: 0, tivMinor: 0 }));
+  let plainPeak = 0;
+  const above = gustThresholdsMs.map((gustMs, i) => ({
+    gustMs,
+    plain: 0,
+    ...spreadOf(scored.above.subarray(i * DRAW_COUNT, (i + 1) * DRAW_COUNT)),
+    tivMinor: 0,
+  }));
   const histogram = { p50: new Array<number>(BINS).fill(0), plain: new Array<number>(BINS).fill(0) };
   let isTouched = false;
   let wide = 0;
@@ -53,15 +65,14 @@ export const scenarioResult = (scored: ScoredSites, { storm, gustThresholdsMs, r
     sums.groundUpMean += site.groundUpMeanMinor ?? 0;
     sums.grossPlain += site.grossPlainMinor ?? 0;
     sums.grossMean += site.grossMeanMinor ?? 0;
-    const { plain, p5, p50, p95, p99 } = site as ScoredSite & Record<'plain' | 'p5' | 'p50' | 'p95' | 'p99', number>;
+    const { plain, p5, p50, p99 } = site as ScoredSite & Record<'plain' | 'p5' | 'p50' | 'p99', number>;
     if (p5 !== plain || p99 !== plain) isTouched = true;
     if (p99 > WIDE_RANGE * plain) wide += 1;
-    const gusts = { plain, p5, p50, p95 };
-    for (const name of ['plain', 'p5', 'p50', 'p95'] as const) {
-      peak[name] = Math.max(peak[name], gusts[name]);
-      for (const level of above) if (gusts[name] >= level.gustMs) level[name] += 1;
+    plainPeak = Math.max(plainPeak, plain);
+    for (const level of above) {
+      if (plain >= level.gustMs) level.plain += 1;
+      if (p50 >= level.gustMs) level.tivMinor += site.tivMinor;
     }
-    for (const level of above) if (p50 >= level.gustMs) level.tivMinor += site.tivMinor;
     if (plain >= FIRST_BIN_MS) histogram.plain[binOf(plain)]! += 1;
     if (p50 >= FIRST_BIN_MS) histogram.p50[binOf(p50)]! += 1;
   }
@@ -94,7 +105,7 @@ export const scenarioResult = (scored: ScoredSites, { storm, gustThresholdsMs, r
     grossPlainMinor: sums.grossPlain,
     groundUp: rangeOf(scored.groundUp, sums.groundUpMean),
     gross: rangeOf(scored.gross, sums.grossMean),
-    peakGustMs: peak,
+    peakGustMs: { plain: plainPeak, ...spreadOf(scored.peak) },
     above,
     histogram,
     wavenumber: storm.wavenumber,

@@ -149,7 +149,8 @@ export class ScoreJob {
   ): Promise<ScoredSites> {
     const { transact, editions, pool } = this.parts;
     const { signal } = stopping;
-    const scored = new ScoredSites();
+    const countAboveMs = run.options.gustThresholdsMs;
+    const scored = new ScoredSites(countAboveMs.length);
     const progress = new Progress(this.parts, payload, stopping);
     await progress.report(0);
     const running = new Set<Promise<void>>();
@@ -164,7 +165,7 @@ export class ScoreJob {
       if (sites.length === 0) break;
       after = sites.at(-1)!.siteNo;
       const chunk = pool
-        .run('score', { storm, sites: batchOf(sites), curve }, signal)
+        .run('score', { storm, sites: batchOf(sites), curve, countAboveMs }, signal)
         .then(async (scores) => {
           scored.add(index, sites, scores);
           await progress.report(sites.length);

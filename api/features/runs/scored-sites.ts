@@ -67,7 +67,15 @@ type Chunk = { sites: Pick<RunSite, 'siteNo' | 'ref' | 'tivMinor'>[]; scores: Si
 export class ScoredSites {
   readonly groundUp = new Float64Array(DRAW_COUNT);
   readonly gross = new Float64Array(DRAW_COUNT);
+  /** Strongest gust at any site, per draw. */
+  readonly peak = new Float64Array(DRAW_COUNT);
+  /** Sites that reach each of the gusts asked for, per draw; gusts by draws. */
+  readonly above: Float64Array;
   private readonly chunks: Chunk[] = [];
+
+  constructor(gusts: number) {
+    this.above = new Float64Array(gusts * DRAW_COUNT);
+  }
 
   add(index: number, sites: readonly RunSite[], scores: SiteScores): void {
     this.chunks[index] = {
@@ -78,7 +86,9 @@ export class ScoredSites {
     for (let d = 0; d < DRAW_COUNT; d++) {
       this.groundUp[d]! += scores.eventGroundUp[d]!;
       this.gross[d]! += scores.eventGross[d]!;
+      this.peak[d] = Math.max(this.peak[d]!, scores.eventPeak[d]!);
     }
+    scores.eventAbove.forEach((sitesAbove, i) => (this.above[i]! += sitesAbove));
   }
 
   /** Site by site in the edition's order. */
@@ -96,7 +106,7 @@ export class ScoredSites {
       const columns = Object.entries(scores).sort(([a], [b]) => (a < b ? -1 : 1));
       for (const [name, column] of columns) if (!name.startsWith('event')) hash.update(name).update(column);
     }
-    return hash.update(this.groundUp).update(this.gross).digest('hex');
+    return hash.update(this.groundUp).update(this.gross).update(this.peak).update(this.above).digest('hex');
   }
 }
 
