@@ -2,7 +2,7 @@ import type { Knex } from 'knex';
 import { expect } from 'vitest';
 
 /** Repeats a question until the answer is what is waited for. */
-export const until = async <T>(ask: () => Promise<T>, isIt: (answer: T) => boolean, limitMs = 120_000): Promise<T> => {
+export const until = async <T>(ask: () => Promise<T>, isIt: (answer: T) => boolean, limitMs = 300_000): Promise<T> => {
   for (const deadline = Date.now() + limitMs; ;) {
     const answer = await ask();
     if (isIt(answer)) return answer;
