@@ -219,7 +219,7 @@ export function Component() {
                         <span className="text-ink-2">
                           {gust(scenario.maxWindMs)} {label}
                         </span>
-                        <span className="w-24 text-right text-ink-2 max-rail:hidden">
+                        <span className="w-28 text-right whitespace-nowrap text-ink-2 max-rail:hidden">
                           {setup.options.mesovortices ? '264 vortex draws' : 'plain only'}
                         </span>
                       </li>

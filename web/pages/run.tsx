@@ -186,8 +186,8 @@ function Provenance({ run }: { run: Run }) {
       </span>
       <span>
         {run.chargedMinor === null
-          ? `reserved ${exactMoney(run.quotedMinor, run.currency)}`
-          : `charged ${exactMoney(run.chargedMinor, run.currency)}`}
+          ? `reserved ${exactMoney(run.quotedMinor, run.priceCurrency)}`
+          : `charged ${exactMoney(run.chargedMinor, run.priceCurrency)}`}
       </span>
     </>
   );

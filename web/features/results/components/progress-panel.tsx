@@ -127,7 +127,7 @@ function Pace({ scenario }: { scenario: RunScenario }) {
 function Costs({ run, canCancel }: { run: Run; canCancel: boolean }) {
   const [asking, setAsking] = useState(false);
   const cancel = useCancelRun(run.id);
-  const { currency, quotedMinor, chargedMinor } = run;
+  const { priceCurrency: currency, quotedMinor, chargedMinor } = run;
   const nothingDone = run.scenariosDone === 0;
   return (
     <section aria-label="Cost" className="flex flex-col rounded-3 border border-rule bg-sheet p-4.5 shadow-1">

@@ -81,7 +81,9 @@ export function SitesTab({ run, scenario, chosenSiteNo, onChooseSite }: SitesTab
               onChange={(event) => setMinGust(event.target.value)}
               onBlur={applyGust}
             />
-            <span className="absolute right-2.5 text-13 text-ink-2">{label}</span>
+            <span className="absolute right-2.5 text-13 text-ink-2" aria-hidden>
+              {label}
+            </span>
           </label>
           <label className="relative flex items-center">
             <Search size={15} strokeWidth={1.75} className="absolute left-2.5 text-ink-2" aria-hidden />

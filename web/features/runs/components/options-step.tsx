@@ -157,7 +157,10 @@ function Threshold({
         }}
         className="h-7.5 w-20 rounded-2 border border-edge bg-sheet pr-10 pl-2.5 text-14 aria-invalid:border-2 aria-invalid:border-error pointer-coarse:h-10.5"
       />
-      <span className="pointer-events-none absolute inset-y-0 right-2 grid place-items-center text-13 text-ink-2">
+      <span
+        aria-hidden
+        className="pointer-events-none absolute inset-y-0 right-2 grid place-items-center text-13 text-ink-2"
+      >
         {label}
       </span>
     </label>

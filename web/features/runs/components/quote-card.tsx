@@ -43,7 +43,7 @@ export function QuoteCard(props: QuoteCardProps) {
       aria-label="Quote"
       className={classNames(
         'flex flex-col rounded-3 border border-rule-strong bg-sheet shadow-2 max-wide:order-first',
-        !quote && 'self-start max-wide:self-stretch',
+        'wide:sticky wide:top-0 wide:self-start',
       )}
     >
       {quote?.identicalRunId && isOpen && <IdenticalRun runId={quote.identicalRunId} />}
@@ -160,7 +160,7 @@ function Decision(props: QuoteCardProps & { quote: Quote; standing: QuoteStandin
             id="accept-quote"
             variant="filled"
             size="large"
-            className="w-full justify-between"
+            className="w-full justify-between max-rail:hidden"
             pending={accepting}
             disabledReason={
               short
@@ -169,8 +169,7 @@ function Decision(props: QuoteCardProps & { quote: Quote; standing: QuoteStandin
             }
             onClick={onAccept}
           >
-            <span>Accept and run</span>
-            <span>{exactMoney(grossMinor, currency)}</span>
+            <span>Accept and run</span> <span>{exactMoney(grossMinor, currency)}</span>
           </Button>
           <p className="text-12 text-ink-2">
             Reserved from the prepaid balance. You pay for what completes, never more than this; the rest is released.

@@ -14,7 +14,11 @@ export function QuoteReceipt({ quote }: { quote: Quote }) {
       <Line term="Site–scenarios" value={count(quote.siteScenarios)} rule />
       <Line term="Out of reach, not charged" value={`− ${count(quote.outOfReach)}`} quiet />
       <Line term="Charged units" value={count(quote.units)} rule strong />
-      <Line term={`Unit price, tariff ${quote.tariffVersion}`} value={quote.unitPrice} quiet />
+      <Line
+        term={`Unit price, tariff ${quote.tariffVersion}`}
+        value={quote.unitPrice.replace(/(\.\d*?)0+$/, '$1')}
+        quiet
+      />
       {quote.minimumApplied && (
         <Line term="Minimum a run, applied" value={exactAmount(quote.minimumMinor, currency)} quiet />
       )}

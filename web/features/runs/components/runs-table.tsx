@@ -108,9 +108,11 @@ export function RunsTable({ runs, loading, linked, failedMore }: RunsTableProps)
                 </Td>
                 <Td numeric priority={2} className="whitespace-nowrap">
                   {run.chargedMinor === null ? (
-                    <span className="text-13 text-ink-2">{exactAmount(run.quotedMinor, run.currency)} reserved</span>
+                    <span className="text-13 text-ink-2">
+                      {exactAmount(run.quotedMinor, run.priceCurrency)} reserved
+                    </span>
                   ) : (
-                    exactAmount(run.chargedMinor, run.currency)
+                    exactAmount(run.chargedMinor, run.priceCurrency)
                   )}
                 </Td>
                 <Td priority={2}>
