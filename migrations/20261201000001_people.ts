@@ -93,7 +93,7 @@ export async function up(knex: Knex): Promise<void> {
     create policy owner_reads on memberships for select to gustloom_owner using (true);
     create function person_for_sign_in(address text)
       returns table (user_id uuid, password_hash text, org_id uuid)
-      language sql stable security definer set search_path = public
+      language sql stable security definer set search_path = public, pg_temp
     as $$
       select users.id, users.password_hash, memberships.org_id
       from users

@@ -33,7 +33,7 @@ export async function up(knex: Knex): Promise<void> {
         entry.id, entry.org_id, entry.at, entry.actor_id, entry.action, entry.object, entry.details)::text, 'UTF8')), 'hex')
     $$;
     -- Runs at commit: the organisation's chain is locked for a moment only, and after every other lock was taken.
-    create function chain_audit_entry() returns trigger language plpgsql security definer set search_path = public as $$
+    create function chain_audit_entry() returns trigger language plpgsql security definer set search_path = public, pg_temp as $$
     declare
       last audit_chain;
     begin

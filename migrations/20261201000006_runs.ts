@@ -120,7 +120,7 @@ export async function up(knex: Knex): Promise<void> {
     alter table site_results_before enable row level security;
     alter table site_results_before force row level security;
     -- The app role owns nothing, so months are opened for it by the owner's function.
-    create function open_site_results_month(moment timestamptz) returns void language plpgsql security definer set search_path = public as $$
+    create function open_site_results_month(moment timestamptz) returns void language plpgsql security definer set search_path = public, pg_temp as $$
     declare
       first date := date_trunc('month', moment at time zone 'UTC')::date;
       part text := 'site_results_' || to_char(first, 'YYYY_MM');
@@ -149,7 +149,9 @@ export async function up(knex: Knex): Promise<void> {
       p90 jsonb not null,
       difference jsonb not null
     );
-    grant select, insert, update on run_numbers, runs, run_scenarios to gustloom_app;
+    grant select, insert, update on run_numbers, run_scenarios to gustloom_app;
+    -- What was quoted, by whom and on which inputs stays as it was accepted.
+    grant select, insert, update (state, cancel_asked, charged_minor, finished_at) on runs to gustloom_app;
     grant select, insert on quotes, site_results, event_results, footprints to gustloom_app;
     ${['run_numbers', 'quotes', 'runs', 'run_scenarios', 'site_results', 'event_results', 'footprints'].map(tenant).join('')}
   `);

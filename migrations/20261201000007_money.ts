@@ -73,7 +73,7 @@ export async function up(knex: Knex): Promise<void> {
       received_at timestamptz not null
     );
     grant select, insert on ledger_entries, provider_events to gustloom_app;
-    grant select, insert, update on payments to gustloom_app;
+    grant select, insert, update (state, reason, provider_session, checkout_url, settled_at) on payments to gustloom_app;
     ${['ledger_entries', 'payments', 'provider_events'].map(tenant).join('')}
     -- One row a tenant to lock while money moves, so that parallel accepts can't jointly overdraw.
     create table balances (
@@ -82,7 +82,7 @@ export async function up(knex: Knex): Promise<void> {
       reserved_minor bigint not null default 0 check (reserved_minor >= 0),
       currency text not null
     );
-    grant select, insert, update on balances to gustloom_app;
+    grant select, insert, update (free_minor, reserved_minor) on balances to gustloom_app;
     ${tenant('balances')}
   `);
 }

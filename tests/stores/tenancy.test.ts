@@ -115,4 +115,29 @@ describe('row-level security', () => {
       'person_for_sign_in',
     ]);
   });
+  it('isn’t fooled by a temporary table that takes the name of a real one', async () => {
+    const found = await app.transaction(async (tx) => {
+      await tx.raw(`create temporary table users (id uuid, email text, password_hash text) on commit drop`);
+      await tx.raw(`insert into pg_temp.users values (?, ?, 'planted')`, [
+        DUNE.people.admin.id,
+        DUNE.people.admin.email,
+      ]);
+      return tx.raw('select password_hash from person_for_sign_in(?)', [DUNE.people.admin.email]);
+    });
+    expect(found.rows).toHaveLength(1);
+    expect(found.rows[0].password_hash).not.toBe('planted');
+    const { rows } = await superUser.raw<{ rows: { name: string }[] }>(`
+      select proname as name from pg_proc where pronamespace = 'public'::regnamespace and prosecdef
+        and pg_get_userbyid(proowner) = 'gustloom_owner' and not 'search_path=public, pg_temp' = any(proconfig)`);
+    expect(rows).toEqual([]);
+  });
+  it('keeps the app from changing what was quoted, asked of a card or sealed into a quote', async () => {
+    const refused = { code: '42501' };
+    const change = (table: string, values: object) => transact(DUNE.id, (tx) => tx(table).update(values));
+    await expect(change('runs', { quoted_minor: 1 })).rejects.toMatchObject(refused);
+    await expect(change('payments', { amount_minor: 1 })).rejects.toMatchObject(refused);
+    await expect(change('quotes', { gross_minor: 1 })).rejects.toMatchObject(refused);
+    await expect(change('balances', { currency: 'AUD' })).rejects.toMatchObject(refused);
+    await expect(change('ledger_entries', { amount_minor: 1 })).rejects.toMatchObject(refused);
+  });
 });
