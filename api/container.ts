@@ -137,10 +137,12 @@ const createLog = (level: string): Logger =>
     redact: { paths: SECRET_PATHS, censor: '[kept back]' },
   });
 
-/** Threads the engine runs on. Workers keep theirs; an API process needs one now and then, to explain a site. */
+/** Threads the engine runs on, kept warm: in a worker for runs, in an API process one to explain a site at once. */
 const THREADS = 2;
-const enginePool = (role: 'api' | 'worker', threads: number): EnginePool =>
-  role === 'worker' ? new ThreadPool({ threads, kept: threads }) : new ThreadPool({ threads: 1, kept: 0 });
+const enginePool = (role: 'api' | 'worker', threads: number): EnginePool => {
+  const kept = role === 'worker' ? threads : 1;
+  return new ThreadPool({ threads: kept, kept });
+};
 
 const fail = (error: Error): void => {
   throw error;

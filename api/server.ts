@@ -1,4 +1,5 @@
 import { createApp } from './app.ts';
+import { landIndex } from './compute/land.ts';
 import { readConfig } from './config.ts';
 import { createContainer } from './container.ts';
 import { Reaper } from './jobs/reaper.ts';
@@ -10,6 +11,8 @@ await container.queue.start();
 // Here as well as in the workers: when the only worker is killed, its job is ready before it is back.
 const reaper = new Reaper(config.databaseUrl, container.log);
 reaper.start();
+// Reading the land polygons takes a second: before anybody waits for it.
+landIndex();
 
 const server = createApp(container.appParts).listen(config.port, (error) => {
   if (!error) {

@@ -10,6 +10,7 @@ import { readConfig } from '../../api/config.ts';
 import { createContainer, type Container, type Overrides } from '../../api/container.ts';
 import { testDatabase, type TestDatabase } from './database.ts';
 import { FakeClock, FakeMail } from './fakes.ts';
+import { inlinePool } from './inline-pool.ts';
 import { addOrganisations, DUNE, PASSWORD, REEF, type TestOrganisation } from './people.ts';
 
 const API = '/api/v1';
@@ -66,7 +67,7 @@ export const createTestApp = async ({ routers = [], config = {}, ...overrides }:
   const clock = new FakeClock();
   const mail = new FakeMail();
   const log = pino({ level: 'silent' });
-  const container = createContainer(testConfig(database.appUrl, config), 'api', { clock, mail, log, ...overrides });
+  const container = createContainer(testConfig(database.appUrl, config), 'api', { clock, mail, log, pool: inlinePool(), ...overrides });
   await container.queue.start();
   afterAll(() => container.close());
   const { appParts } = container;
