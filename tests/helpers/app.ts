@@ -67,7 +67,13 @@ export const createTestApp = async ({ routers = [], config = {}, ...overrides }:
   const clock = new FakeClock();
   const mail = new FakeMail();
   const log = pino({ level: 'silent' });
-  const container = createContainer(testConfig(database.appUrl, config), 'api', { clock, mail, log, pool: inlinePool(), ...overrides });
+  const container = createContainer(testConfig(database.appUrl, config), 'api', {
+    clock,
+    mail,
+    log,
+    pool: inlinePool(),
+    ...overrides,
+  });
   await container.queue.start();
   afterAll(() => container.close());
   const { appParts } = container;
