@@ -39,7 +39,6 @@ export function ChargesCard({ currency, own, linked }: { currency: string; own: 
               <Th>Run</Th>
               <Th priority={3}>Account</Th>
               <Th priority={2}>Person</Th>
-              <Th priority={3}>Cost centre</Th>
               <Th numeric priority={2}>
                 Quoted
               </Th>
@@ -51,9 +50,9 @@ export function ChargesCard({ currency, own, linked }: { currency: string; own: 
             </tr>
           </thead>
           <tbody>
-            {charges.isPending && <SkeletonRows columns={9} rows={5} />}
+            {charges.isPending && <SkeletonRows columns={8} rows={5} />}
             {charges.isSuccess && rows.length === 0 && (
-              <EmptyRow columns={9}>
+              <EmptyRow columns={8}>
                 No run has been accepted yet. The first charge stands here once one completes.
               </EmptyRow>
             )}
@@ -62,7 +61,7 @@ export function ChargesCard({ currency, own, linked }: { currency: string; own: 
                 <Td priority={2} className="text-13 whitespace-nowrap">
                   {shortDay(charge.acceptedAt)} {clock(charge.acceptedAt)}
                 </Td>
-                <Td>
+                <Td className="whitespace-nowrap">
                   {linked ? (
                     <Link to={paths.run(charge.runId)} className="no-underline hover:underline">
                       {charge.runNumber}
@@ -71,14 +70,12 @@ export function ChargesCard({ currency, own, linked }: { currency: string; own: 
                     charge.runNumber
                   )}
                 </Td>
-                <Td priority={3} className="max-w-48 truncate">
-                  {charge.portfolioName}
+                <Td priority={3} className="max-w-48 py-1 leading-snug">
+                  <span className="block truncate">{charge.portfolioName}</span>
+                  {charge.costCentre && <span className="block truncate text-12 text-ink-2">{charge.costCentre}</span>}
                 </Td>
                 <Td priority={2} className="max-w-40 truncate">
                   {charge.acceptedBy}
-                </Td>
-                <Td priority={3} className="max-w-36 truncate text-13">
-                  {charge.costCentre || 'none'}
                 </Td>
                 <Td numeric priority={2}>
                   {exactAmount(charge.quotedMinor, charge.currency)}

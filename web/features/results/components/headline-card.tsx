@@ -136,10 +136,10 @@ const vorticesAdd = (enhanced: LossRange, plain: number, currency: string) => {
 function Range({ low, high, currency }: { low: number; high: number; currency: string }) {
   const { amount, scale } = moneyRangeParts(low, high, currency);
   return (
-    <p className="mt-2 flex flex-wrap items-baseline gap-x-2.5">
-      <span className="text-20 text-ink-2">{currency}</span>
-      <span className="text-52 font-black tracking-tight max-rail:text-44">{amount}</span>
-      <b className="text-22">{scale}</b>
+    <p className="mt-2 flex flex-wrap items-baseline gap-x-2.5 max-rail:gap-x-2">
+      <span className="text-20 text-ink-2 max-rail:text-16">{currency}</span>
+      <span className="text-52 font-black tracking-tight max-rail:text-40">{amount}</span>
+      <b className="text-22 max-rail:text-18">{scale}</b>
     </p>
   );
 }

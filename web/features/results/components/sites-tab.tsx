@@ -100,6 +100,10 @@ export function SitesTab({ run, scenario, chosenSiteNo, onChooseSite }: SitesTab
               onBlur={() => setFilter((before) => ({ ...before, search: search.trim() || undefined }))}
             />
           </label>
+          {/* Two fields: without a submit button Enter would do nothing. */}
+          <button type="submit" className="sr-only">
+            Apply the filters
+          </button>
           <p className="text-13 text-ink-2" aria-live="polite">
             {page && (
               <>

@@ -5,6 +5,7 @@ import type { SiteResult } from '#contract/runs.ts';
 import { classNames } from '../../../lib/class-names.ts';
 import { moneyRangeParts, shortMoney } from '../../../lib/money.ts';
 import { count, percent, range } from '../../../lib/numbers.ts';
+import { useNarrow } from '../../../lib/use-narrow.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { gustToken } from '../../../ui/charts/gust-scale.ts';
 import { TableBanner } from '../../../ui/table.tsx';
@@ -46,7 +47,8 @@ interface Column {
 export function SitesTable(props: SitesTableProps) {
   const { total, rowAt, onRange, filter, onSort, chosenSiteNo, onChoose, slim, loading, failedPage } = props;
   const frame = useRef<HTMLDivElement>(null);
-  const columns = useColumns(props).filter(({ priority }) => !slim || priority < 3);
+  const narrow = useNarrow();
+  const columns = useColumns({ ...props, slim: slim || narrow }).filter(({ priority }) => !slim || priority < 3);
   const rows = useVirtualizer({
     count: loading ? 0 : total,
     getScrollElement: () => frame.current,
@@ -205,7 +207,12 @@ function useColumns({ currency, vortices, onChoose, slim }: SitesTableProps): Co
           >
             {site.siteRef}
           </button>
-          <span className={classNames('block truncate text-12 text-ink-2', slim ? 'max-w-38' : 'max-w-72')}>
+          <span
+            className={classNames(
+              'block truncate text-12 text-ink-2',
+              slim ? 'max-w-38 max-rail:max-w-28' : 'max-w-72',
+            )}
+          >
             {[site.label, site.town].filter(Boolean).join(', ')}
           </span>
         </>

@@ -1,7 +1,7 @@
 import { useNavigate } from 'react-router-dom';
 import type { Run, RunScenario } from '#contract/runs.ts';
-import { millionsRange } from '../../../lib/money.ts';
-import { millions } from '../../../lib/money.ts';
+
+import { millions, millionsRange } from '../../../lib/money.ts';
 import { countInWords } from '../../../lib/numbers.ts';
 import { classNames } from '../../../lib/class-names.ts';
 import { paths } from '../../../paths.ts';
@@ -52,7 +52,9 @@ export function TracksCard({ run, chosen }: { run: Run; chosen: RunScenario }) {
                   <b className="text-right">
                     {scenario.result.gross
                       ? millionsRange(scenario.result.gross.p5, scenario.result.gross.p95, currency)
-                      : `plain ${millions(scenario.result.grossPlainMinor, currency)}`}
+                      : scenario.result.grossPlainMinor === 0
+                        ? 'no loss'
+                        : `plain ${millions(scenario.result.grossPlainMinor, currency)}`}
                   </b>
                 </>
               ) : (

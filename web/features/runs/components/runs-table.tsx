@@ -56,7 +56,9 @@ export function RunsTable({ runs, loading, linked, failedMore }: RunsTableProps)
               Gross, log axis
               {onlyAxis?.[1] && <Decades currency={onlyAxis[0]} axis={onlyAxis[1]} />}
             </Th>
-            <Th numeric>Gross, 5–95 %</Th>
+            <Th numeric priority={2}>
+              Gross, 5–95 %
+            </Th>
             <Th numeric priority={2}>
               Charged
             </Th>
@@ -86,11 +88,16 @@ export function RunsTable({ runs, loading, linked, failedMore }: RunsTableProps)
                     <StateCell run={run} />
                   </span>
                 </Td>
-                <Td className="max-w-72 py-1.5 leading-snug">
-                  <span className="block truncate">
+                <Td className="max-w-72 py-1.5 leading-snug max-md:max-w-none">
+                  <span className="block truncate max-md:whitespace-normal">
                     {run.portfolioName}, edition {run.editionNumber}
                   </span>
-                  <span className="block truncate text-12 text-ink-2">{run.scenarioNames.join(', ')}</span>
+                  <span className="block truncate text-12 text-ink-2 max-md:whitespace-normal">
+                    {run.scenarioNames.join(', ')}
+                  </span>
+                  <span className="block md:hidden">
+                    <GrossCell run={run} />
+                  </span>
                   {run.stamped && (
                     <Chip tone="event" icon={ClockAlert} className="mt-0.5">
                       Unsigned calibration
@@ -103,7 +110,7 @@ export function RunsTable({ runs, loading, linked, failedMore }: RunsTableProps)
                 <Td priority={3}>
                   <Bar run={run} axis={axes.get(run.currency) ?? null} />
                 </Td>
-                <Td numeric className="text-13 leading-snug rail:text-14">
+                <Td numeric priority={2} className="text-13 leading-snug rail:text-14">
                   <GrossCell run={run} />
                 </Td>
                 <Td numeric priority={2} className="whitespace-nowrap">
@@ -151,8 +158,7 @@ function Decades({ currency, axis }: { currency: string; axis: Axis }) {
 
 function GrossCell({ run }: { run: RunSummary }) {
   const { gross, grossPlainMinor, currency } = run;
-  if (gross)
-    return <b className="whitespace-nowrap max-rail:whitespace-normal">{moneyRange(gross.p5, gross.p95, currency)}</b>;
+  if (gross) return <b className="whitespace-nowrap">{moneyRange(gross.p5, gross.p95, currency)}</b>;
   if (grossPlainMinor !== null)
     return (
       <>

@@ -76,7 +76,7 @@ function Cell({
   children: ReactNode;
 }) {
   return (
-    <div className="min-w-0 border-l border-rule px-4 py-2.5 first:border-l-0">
+    <div className="min-w-0 border-rule px-4 py-2.5 not-first:border-l max-wide:odd:border-l-0 max-wide:nth-[n+3]:border-t">
       <div className="text-12 text-ink-2">{label}</div>
       {children}
       {note && <div className={classNames('text-12', caution ? 'font-bold text-caution' : 'text-ink-2')}>{note}</div>}
