@@ -91,6 +91,11 @@ export const createApp = (parts: AppParts): Express => {
   for (const router of parts.rawRouters) app.use(API_PATH, router);
 
   app.use(docsPages(parts.publicUrl));
+  app.use(API_PATH, (_req, res, next) => {
+    // The cautions in full, for whoever reads a reply without the screens around it.
+    res.set('Link', `<${parts.publicUrl}/limits>; rel="terms-of-service"`);
+    next();
+  });
   app.use(API_PATH, limitAll(parts.limits), cookieParser(), parts.signInCheck, parts.csrfCheck);
   app.use(API_PATH, express.json({ limit: JSON_LIMIT }));
   for (const router of parts.routers) app.use(API_PATH, router);

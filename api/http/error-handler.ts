@@ -46,6 +46,17 @@ const fromDatabase = (error: unknown): AppError | null => {
   });
 };
 
+/** PostgreSQL holds no zero byte, in text (22021) or in JSON (22P05); no pattern of the contract rules one out. */
+const ZERO_BYTE = new Set(['22021', '22P05']);
+const fromText = (error: unknown): AppError | null =>
+  error instanceof Error && ZERO_BYTE.has(String((error as { code?: unknown }).code))
+    ? new AppError(
+        'invalid_request',
+        'A text in the request holds a character that can’t be stored, such as a zero byte. Take it out and send the request again.',
+        { cause: error },
+      )
+    : null;
+
 /** Nothing answered at this address. */
 export const noSuchAddress: RequestHandler = () => {
   throw new AppError('not_found', 'There is nothing at this address.');
@@ -55,7 +66,7 @@ export const noSuchAddress: RequestHandler = () => {
 export const errorHandler =
   (log: Logger): ErrorRequestHandler =>
   (error: unknown, req, res, _next) => {
-    const known = error instanceof AppError ? error : (fromMiddleware(error) ?? fromDatabase(error));
+    const known = error instanceof AppError ? error : (fromMiddleware(error) ?? fromDatabase(error) ?? fromText(error));
     const requestId = req.requestId ?? '';
     if (!known || known.code === 'unavailable')
       log.error({ err: error, requestId, method: req.method, path: req.path }, 'request failed');

@@ -184,6 +184,10 @@ describe('every page', () => {
     expect(policy).not.toMatch(/unsafe|https?:|blob:|\*/);
     expect(reply.get('X-Powered-By')).toBeUndefined();
   });
+  it('of the API leads to the limits of use', async () => {
+    const reply = await request(app).get('/api/v1/session').expect(401);
+    expect(reply.get('Link')).toMatch(/^<https?:\/\/[^>]+\/limits>; rel="terms-of-service"$/);
+  });
   it('under the API that isn’t there is a problem, not the client', async () => {
     const reply = await request(app).get('/api/v1/no-such-thing').expect(404);
     expect(reply.body.code).toBe('not_found');

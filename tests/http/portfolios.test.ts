@@ -454,3 +454,8 @@ it('reads the same sites from every delimiter and encoding', async () => {
   ).toEqual(plain);
   expect(await sites(accented(made({ delimiter: '\t' }), 'utf8'), 'utf-8', '\t')).toEqual(plain);
 });
+
+it('asks for names without zero bytes, which no database holds', async () => {
+  const reply = await browser.post('/portfolios', { name: 'Cedar\u0000Key', currency: 'USD' }).expect(422);
+  expect(reply.body).toMatchObject({ code: 'invalid_request', detail: expect.stringContaining('zero byte') });
+});
