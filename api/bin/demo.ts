@@ -165,7 +165,7 @@ const sealed = async (editionId: string): Promise<void> => {
   }
   await call(sealEdition, {
     params,
-    body: { asAt: AS_AT, heldReason: 'Asked back from the agent; not scored until answered', controlReason: null },
+    body: { asAt: AS_AT, heldReason: 'Asked back from the broker; not scored until answered', controlReason: null },
   });
 };
 

@@ -1,6 +1,7 @@
 import { EARTH_RADIUS } from '../constants.ts';
 import { DomainError } from '../errors.ts';
 import { degrees, radians } from '../units.ts';
+import { betweenPlaces, greatCircleDistance, type Place } from './geodesy.ts';
 
 const CELL_DEG = 0.25;
 const COLUMNS = 1440;
@@ -364,7 +365,7 @@ export function inlandSpells(
     for (let k = 0; k + 1 < shares.length; k++) {
       const from = shares[k]!;
       const to = shares[k + 1]!;
-      const middle = between(a, b, (from + to) / 2);
+      const middle = betweenPlaces(a, b, (from + to) / 2);
       if (!isLand(index, middle.latitude, middle.longitude)) continue;
       const enterS = a.timeS + from * duration;
       const leaveS = to === 1 ? b.timeS : a.timeS + to * duration;
@@ -391,16 +392,14 @@ export function inlandHours(spells: readonly InlandSpell[], timeS: number): numb
   return 0;
 }
 
-type Point = { readonly latitude: number; readonly longitude: number };
-
 /** 0, the shares of a leg at which it crosses a coast in ascending order, and 1. */
-function coastShares(index: LandIndex, a: Point, b: Point): number[] {
+function coastShares(index: LandIndex, a: Place, b: Place): number[] {
   const shares = [0];
-  const distance = EARTH_RADIUS * angleBetween(a, b);
+  const distance = greatCircleDistance(a, b);
   const pieces = Math.max(Math.ceil(distance / PIECE), 1);
   let from = a;
   for (let p = 1; p <= pieces; p++) {
-    const to = p === pieces ? b : between(a, b, p / pieces);
+    const to = p === pieces ? b : betweenPlaces(a, b, p / pieces);
     const dx = nearest(to.longitude - from.longitude);
     const dy = to.latitude - from.latitude;
     // Step over each crossing of the piece in turn.
@@ -418,34 +417,6 @@ function coastShares(index: LandIndex, a: Point, b: Point): number[] {
   }
   shares.push(1);
   return shares.filter((share, k) => k === 0 || share > shares[k - 1]!);
-}
-
-function angleBetween(a: Point, b: Point): number {
-  const dPhi = radians(b.latitude - a.latitude) / 2;
-  const dLambda = radians(b.longitude - a.longitude) / 2;
-  const h =
-    Math.sin(dPhi) ** 2 + Math.cos(radians(a.latitude)) * Math.cos(radians(b.latitude)) * Math.sin(dLambda) ** 2;
-  return 2 * Math.asin(Math.min(1, Math.sqrt(h)));
-}
-
-function between(a: Point, b: Point, share: number): Point {
-  const angle = angleBetween(a, b);
-  if (angle < 1e-12) return a;
-  const wa = Math.sin((1 - share) * angle) / Math.sin(angle);
-  const wb = Math.sin(share * angle) / Math.sin(angle);
-  const [ax, ay, az] = unitVector(a);
-  const [bx, by, bz] = unitVector(b);
-  const x = wa * ax + wb * bx;
-  const y = wa * ay + wb * by;
-  return {
-    latitude: degrees(Math.atan2(wa * az + wb * bz, Math.hypot(x, y))),
-    longitude: degrees(Math.atan2(y, x)),
-  };
-}
-
-function unitVector({ latitude, longitude }: Point): [number, number, number] {
-  const c = Math.cos(radians(latitude));
-  return [c * Math.cos(radians(longitude)), c * Math.sin(radians(longitude)), Math.sin(radians(latitude))];
 }
 
 function rowOf(latitude: number): number {

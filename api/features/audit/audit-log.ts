@@ -2,14 +2,6 @@ import type { Clock } from '../../ports/clock.ts';
 import type { Ids } from '../../ports/ids.ts';
 import type { Tx } from '../../transact.ts';
 
-export interface AuditEntry {
-  at: Date;
-  actorId: string | null;
-  action: string;
-  object: string;
-  details: Record<string, unknown>;
-}
-
 /**
  * What happened, by whom, in an order nobody can change afterwards: entries are only added, and each organisation's
  * entries form a chain of hashes. The database makes the links itself when the transaction commits.

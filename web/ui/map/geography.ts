@@ -67,9 +67,3 @@ export const placeByTrack = (path: readonly LonLat[], [longitude, latitude]: Lon
   }
   return nearest;
 };
-
-/** "27.4° N, 82.1° W" */
-export const placeText = ([longitude, latitude]: LonLat): string => {
-  const east = longitudeNear(longitude, 0);
-  return `${Math.abs(latitude).toFixed(2)}° ${latitude < 0 ? 'S' : 'N'}, ${Math.abs(east).toFixed(2)}° ${east < 0 ? 'W' : 'E'}`;
-};
