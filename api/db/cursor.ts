@@ -28,12 +28,27 @@ export const decodeCursor = (cursor: string, length: number): CursorPart[] => {
   throw notOurs();
 };
 
-/** Cursor of a list ordered by a counted number; null at its start. */
-export const decodeNumberCursor = (cursor: string | undefined): number | null => {
+/** Greatest number a column of type integer holds; the database fails on a greater one. */
+export const MOST_INTEGER = 2 ** 31 - 1;
+
+/** Cursor of a list ordered by a counted number, at most `most`; null at its start. */
+export const decodeNumberCursor = (
+  cursor: string | undefined,
+  most: number = Number.MAX_SAFE_INTEGER,
+): number | null => {
   if (cursor === undefined) return null;
   const [number] = decodeCursor(cursor, 1);
-  if (!Number.isSafeInteger(number)) throw notOurs();
+  if (!Number.isSafeInteger(number) || Math.abs(Number(number)) > most) throw notOurs();
   return Number(number);
+};
+
+/** Cursor of a list ordered by name, then id; null at its start. */
+export const decodeNameCursor = (cursor: string | undefined): { name: string; id: string } | null => {
+  if (cursor === undefined) return null;
+  const [name, id] = decodeCursor(cursor, 2);
+  // The database holds no text with a zero byte.
+  if (typeof name !== 'string' || name.includes('\0') || !Id.safeParse(id).success) throw notOurs();
+  return { name, id: String(id) };
 };
 
 /** Cursor of a list ordered by time, then id; null at its start. */

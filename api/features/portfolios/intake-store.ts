@@ -1,6 +1,6 @@
 import type { Fix, IntakeMessage, IntakeRow, RowState, SitePoints } from '#contract/portfolios.ts';
 import { copyInto, type CopyCell } from '../../db/copy.ts';
-import { decodeCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
+import { decodeNumberCursor, encodeCursor, MOST_INTEGER, pageFrom } from '../../db/cursor.ts';
 import { toMinor } from '../../db/mapping.ts';
 import type { Tx } from '../../transact.ts';
 import { Tallier, type Tally } from './intake/check.ts';
@@ -146,7 +146,8 @@ export class IntakeStore {
       .limit(limit + 1);
     if (state) void query.where({ state });
     if (code) void query.whereRaw('codes @> array[?]::text[]', [code]);
-    if (cursor) void query.where('file_row', '>', Number(decodeCursor(cursor, 1)[0]));
+    const after = decodeNumberCursor(cursor, MOST_INTEGER);
+    if (after !== null) void query.where('file_row', '>', after);
     const page = pageFrom(await query.select<Row[]>(), limit, (row) => encodeCursor(row.file_row));
     return { items: page.items.map(toIntakeRow), nextCursor: page.nextCursor };
   }

@@ -1,5 +1,5 @@
 import type { Portfolio, Reconciliation } from '#contract/portfolios.ts';
-import { pageFrom, decodeCursor, encodeCursor } from '../../db/cursor.ts';
+import { pageFrom, decodeNameCursor, encodeCursor } from '../../db/cursor.ts';
 import { toInstant } from '../../db/mapping.ts';
 import { AppError } from '../../errors.ts';
 import type { Tx } from '../../transact.ts';
@@ -85,10 +85,8 @@ export class PortfolioStore {
       .where({ org_id: orgId })
       .orderBy([{ column: 'portfolios.name' }, { column: 'portfolios.id' }])
       .limit(limit + 1);
-    if (cursor) {
-      const [name, id] = decodeCursor(cursor, 2);
-      void query.whereRaw('(portfolios.name, portfolios.id::text) > (?, ?)', [String(name), String(id)]);
-    }
+    const after = decodeNameCursor(cursor);
+    if (after) void query.whereRaw('(portfolios.name, portfolios.id) > (?, ?::uuid)', [after.name, after.id]);
     const page = pageFrom(await query.select<PortfolioRow[]>(), limit, (row) => encodeCursor(row.name, row.id));
     const editions = await this.editionsOf(
       tx,
