@@ -1,8 +1,8 @@
 import { mkdirSync, readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import { join } from 'node:path';
-import { chromium, type Browser, type Page } from 'playwright-core';
-import { expect } from 'vitest';
+import { chromium, type Browser, type Locator, type Page } from 'playwright-core';
+import { afterEach, expect } from 'vitest';
 
 const AXE = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
 
@@ -27,7 +27,13 @@ export const openBrowser = (): Promise<Browser> =>
 
 /** A page of its own session that fails the test when the client throws or breaks the content security policy. */
 export const openPage = async (browser: Browser, url: string, viewport = DESKTOP): Promise<Page> => {
-  const context = await browser.newContext({ baseURL: url, viewport, acceptDownloads: true, reducedMotion: 'reduce' });
+  const context = await browser.newContext({
+    baseURL: url,
+    viewport,
+    hasTouch: viewport.width < DESKTOP.width,
+    acceptDownloads: true,
+    reducedMotion: 'reduce',
+  });
   const page = await context.newPage();
   page.setDefaultTimeout(60_000);
   page.on('pageerror', (error) => {
@@ -61,6 +67,14 @@ export const picture = async (page: Page, name: string, fullPage = false): Promi
   await page.screenshot({ path: join(folder, `${name}.png`), fullPage });
 };
 
+/** Keeps a picture of where a journey failed, too. */
+export const pictureFailures = (journey: string, page: () => Page | undefined): void => {
+  afterEach(async ({ task }) => {
+    const at = page();
+    if (task.result?.state === 'fail' && at && !at.isClosed()) await picture(at, `${journey}-failed`);
+  });
+};
+
 /** No serious or critical finding of axe-core on the page as it stands, and no sideways scroll. */
 export const expectAccessible = async (page: Page): Promise<void> => {
   await page.evaluate(AXE);
@@ -78,4 +92,37 @@ export const expectAccessible = async (page: Page): Promise<void> => {
     () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
   );
   expect(overflow, `sideways scroll at ${page.url()}`).toBeLessThanOrEqual(0);
+};
+
+/** How many different colours an element shows: one or two where a map or chart stayed blank. */
+export const coloursIn = async (page: Page, element: Locator): Promise<number> => {
+  const png = (await element.screenshot()).toString('base64');
+  return page.evaluate(async (base64) => {
+    const image = new Image();
+    image.src = `data:image/png;base64,${base64}`;
+    await image.decode();
+    const canvas = document.createElement('canvas');
+    [canvas.width, canvas.height] = [image.width, image.height];
+    const context = canvas.getContext('2d')!;
+    context.drawImage(image, 0, 0);
+    return new Set(new Uint32Array(context.getImageData(0, 0, image.width, image.height).data.buffer)).size;
+  }, png);
+};
+
+/** Presses Tab until the control has the focus, as one does without a mouse; it must show that it has it. */
+export const tabTo = async (page: Page, control: Locator, most = 80): Promise<void> => {
+  await control.waitFor();
+  for (let pressed = 0; pressed <= most; pressed += 1) {
+    const hasFocus = await control.evaluate((element) => element === document.activeElement);
+    if (hasFocus) {
+      const look = await control.evaluate((element) => {
+        const { outlineStyle, boxShadow } = getComputedStyle(element);
+        return outlineStyle !== 'none' || boxShadow !== 'none';
+      });
+      expect(look, 'the focus is visible').toBe(true);
+      return;
+    }
+    await page.keyboard.press('Tab');
+  }
+  throw new Error(`${String(control)} wasn’t reached with ${most} presses of Tab`);
 };

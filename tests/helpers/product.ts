@@ -1,16 +1,15 @@
-import { spawn } from 'node:child_process';
-import { chmodSync, mkdtempSync, rmSync } from 'node:fs';
-import { createServer } from 'node:net';
-import { tmpdir } from 'node:os';
+import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { TestProject } from 'vitest/node';
-import { destroyCluster, ROOT } from '../../api/bin/postgres.mjs';
-
-const READY_MS = 180_000;
+import { startCluster } from '../../api/bin/postgres.mjs';
+import { discard, startProduct } from './own-product.ts';
 
 export interface Product {
   url: string;
+  /** Of every demo person and of everyone a journey brings in. */
   password: string;
+  /** For journeys that bring in people of their own. */
+  databaseUrl: string;
 }
 declare module 'vitest' {
   interface ProvidedContext {
@@ -18,54 +17,30 @@ declare module 'vitest' {
   }
 }
 
-const freePort = () =>
-  new Promise<number>((resolve, reject) => {
-    const probe = createServer();
-    probe.once('error', reject);
-    probe.listen(0, '127.0.0.1', () => {
-      const address = probe.address();
-      probe.close(() =>
-        address && typeof address === 'object' ? resolve(address.port) : reject(new Error('no port')),
-      );
-    });
-  });
+const readJson = <T>(...path: string[]): T => JSON.parse(readFileSync(join(...path), 'utf8')) as T;
+const databaseUrl = async (folder: string) => (await startCluster({ folder })).ownerUrl('gustloom');
 
-/** Vitest's global set-up of the journeys: the product as `npm start` makes it, on data of its own, without the demo run. */
-export default async function setup(project: TestProject): Promise<() => Promise<void>> {
-  const folder = mkdtempSync(join(tmpdir(), 'gustloom-journeys-'));
-  chmodSync(folder, 0o755);
-  const port = await freePort();
-  const product = { url: `http://localhost:${port}`, password: 'high-water-in-march' };
-  const child = spawn(process.execPath, [join(ROOT, 'api/bin/start.mjs')], {
-    cwd: ROOT,
-    env: {
-      ...process.env,
-      NODE_ENV: 'development',
-      GUSTLOOM_DATA: folder,
-      PORT: String(port),
-      DEMO_PASSWORD: product.password,
-      DEMO_RUN: 'off',
-    },
-    stdio: ['ignore', 'pipe', 'pipe'],
-  });
-  let said = '';
-  for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk: Buffer) => (said += chunk.toString()));
-  await new Promise<void>((resolve, reject) => {
-    const fail = (why: string) => reject(new Error(`The product ${why}:\n${said}`));
-    const timer = setTimeout(() => fail('did not get ready'), READY_MS);
-    child.once('exit', (code) => fail(`stopped with ${code}`));
-    child.stdout.on('data', () => {
-      if (!said.includes('Gustloom is running at')) return;
-      clearTimeout(timer);
-      resolve();
-    });
-  });
-  project.provide('product', product);
-  return async () => {
-    const gone = new Promise((resolve) => child.once('exit', resolve));
-    child.kill('SIGTERM');
-    await gone;
-    await destroyCluster({ folder });
-    rmSync(folder, { recursive: true, force: true });
-  };
-}
+/** A product that already runs, by its data folder: quicker while a journey is being written. */
+const runningProduct = async (folder: string): Promise<Product> => ({
+  url: readJson<{ address: string }>(folder, 'start.json').address,
+  password: readJson<{ demoPassword: string }>(folder, 'secrets.json').demoPassword,
+  databaseUrl: await databaseUrl(folder),
+});
+
+let started: Awaited<ReturnType<typeof startProduct>> | undefined;
+
+/**
+ * Vitest's global set-up of the journeys: the product as `npm start` makes it, on data of its own, without the demo run.
+ * PRODUCT_FOLDER names the data folder of one that already runs instead.
+ */
+export const setup = async (project: TestProject): Promise<void> => {
+  const running = process.env.PRODUCT_FOLDER;
+  if (running) return project.provide('product', await runningProduct(running));
+  started = await startProduct();
+  const { url, password, folder } = started;
+  project.provide('product', { url, password, databaseUrl: await databaseUrl(folder) });
+};
+
+export const teardown = async (): Promise<void> => {
+  if (started) await discard(started);
+};
