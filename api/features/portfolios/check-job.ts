@@ -31,8 +31,8 @@ const TRIES = 3;
 class Superseded extends Error {}
 
 /**
- * The checks of an uploaded file: read, compare, judge, store. Everything is stored in one transaction that first makes
- * sure that this check is still wanted, so a killed or repeated job leaves its rows once or not at all.
+ * The checks of an uploaded file: read, compare, judge, store. Everything is stored in one transaction that makes sure
+ * in the end that this check is still wanted, so a killed or repeated job leaves its rows once or not at all.
  */
 export class CheckJob {
   constructor(private readonly parts: CheckParts) {}

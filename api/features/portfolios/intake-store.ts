@@ -128,8 +128,12 @@ const FIXABLE: Record<Fix, { states: RowState[]; lines: LineKind[] }> = {
 
 /** The lines of a draft's file: their state, their messages, and what was done to them. */
 export class IntakeStore {
-  /** Replaces the rows of an edition, so that a check done twice leaves them once. */
+  /**
+   * Replaces the rows of an edition, so that a check done twice leaves them once: whoever comes second waits. Not by the
+   * edition's own row, in which progress is noted from another transaction meanwhile.
+   */
   async replace(tx: Tx, orgId: string, editionId: string, rows: AsyncIterable<CopyCell[]>): Promise<void> {
+    await tx.raw('select pg_advisory_xact_lock(hashtextextended(?, 0))', [`intake rows ${editionId}`]);
     await tx('intake_rows').where({ org_id: orgId, edition_id: editionId }).delete();
     await copyInto(tx, 'intake_rows', COPIED, rows);
   }
