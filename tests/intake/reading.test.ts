@@ -76,7 +76,7 @@ describe('coordinates', () => {
 describe('columns', () => {
   it('are suggested whatever their case, spaces and punctuation, with a word of confidence', () => {
     const headers = [
-      'LOC_ID',
+      'SITE_ID',
       'Lat.',
       'long',
       'Bldg Value',

@@ -7,14 +7,14 @@ type Words = { sure: string; likely: string; guess: string };
 /** Headers we know: those that say the field outright, those that usually mean it, and words inside that hint at it. */
 const HEADERS: Readonly<Record<SiteField, Words>> = {
   site_ref: {
-    sure: 'site reference|site ref|site id|site number|site no|location id|location number|location no|location ref|loc id|loc no|loc num|loc number|loc ref|risk id|property id|asset id',
+    sure: 'site reference|site ref|site id|site number|site no|location id|location number|location no|location ref|loc ref|risk id|property id|asset id',
     likely: 'id|ref|reference|no|number|row id|item|item no|building id|unique id|key',
-    guess: 'siteid|locid|propertyref',
+    guess: 'siteid|propertyref',
   },
   site_label: {
-    sure: 'site label|site name|location name|loc name|property name|building name',
+    sure: 'site label|site name|location name|property name|building name',
     likely: 'name|label|description|location|property|site|asset',
-    guess: 'sitename|locname',
+    guess: 'sitename',
   },
   account_ref: {
     sure: 'account reference|account ref|account|account id|account number|account no|acct|acct no',
@@ -22,7 +22,7 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
     guess: 'account|acct',
   },
   policy_ref: {
-    sure: 'policy reference|policy ref|policy|policy id|policy number|policy no|pol no|pol num|polnumber',
+    sure: 'policy reference|policy ref|policy|policy id|policy number|policy no|pol no',
     likely: 'contract|contract no|certificate|cert no|slip',
     guess: 'policy',
   },
@@ -57,7 +57,7 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
     guess: 'state',
   },
   postcode: {
-    sure: 'postcode|post code|postal code|zip|zip code|zipcode|zip5',
+    sure: 'postcode|post code|postal code|zip|zip code|zipcode',
     likely: 'postal|pin code|pincode|plz',
     guess: 'zip',
   },
@@ -67,42 +67,42 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
     guess: 'country',
   },
   building_value: {
-    sure: 'building value|building|buildings|bldg|bldg value|building rc|building replacement cost|building sum insured|building si|bldg tiv|building tiv|building limit value|building replacement value',
+    sure: 'building value|building|buildings|bldg|bldg value|building rc|building replacement cost|building sum insured|building si|building limit value|building replacement value',
     likely:
       'structure|structure value|real property|replacement cost|rcv|dwelling value|coverage a|cov a|property value|building amount|replacement value',
     guess: 'building|bldg|structure',
   },
   other_structures_value: {
     sure: 'other structures value|other structures|other structure|appurtenant structures|appurtenant|other value',
-    likely: 'outbuildings|coverage b|cov b|other|other tiv|site improvements',
+    likely: 'outbuildings|coverage b|cov b|other|site improvements',
     guess: 'otherstruct|appurt',
   },
   contents_value: {
-    sure: 'contents value|contents|content|contents sum insured|contents si|contents tiv|content value',
+    sure: 'contents value|contents|content|contents sum insured|contents si|content value',
     likely:
       'personal property|bpp|stock|equipment|inventory|coverage c|cov c|machinery|plant and machinery|stock value',
     guess: 'content',
   },
   time_element_value: {
-    sure: 'time element value|time element|business interruption|business interruption value|bi|bi value|bi tiv|business income',
+    sure: 'time element value|time element|business interruption|business interruption value|bi|bi value|business income',
     likely:
-      'loss of rent|rent|rental income|rents|ale|additional living expense|loss of use|coverage d|cov d|extra expense|bi ee|revenue',
+      'loss of rent|rent|rental income|rents|ale|additional living expense|loss of use|coverage d|cov d|extra expense|revenue',
     guess: 'interruption|timeelement|income',
   },
   total_value: {
-    sure: 'total value|tiv|total insured value|total|sum insured|total sum insured|total tiv|tsi',
+    sure: 'total value|tiv|total insured value|total|sum insured|total sum insured|tsi',
     likely: 'insured value|total si|total amount|total values|values total',
     guess: 'tiv|totalvalue',
   },
   currency: { sure: 'currency|currency code|ccy|curr', likely: 'iso currency|cur|currency iso', guess: 'currency' },
   construction: {
     sure: 'construction|construction type|construction class|construction code|const type|constr|construction description',
-    likely: 'structure type|const|building type|building construction|frame|wall type|iso class|cons',
+    likely: 'structure type|const|building type|building construction|frame|wall type|cons',
     guess: 'construct',
   },
   occupancy: {
     sure: 'occupancy|occupancy type|occupancy class|occupancy code|occ|occ type|occupancy description',
-    likely: 'use|usage|building use|property type|occupation|occ code|trade',
+    likely: 'use|usage|building use|property type|occupation|trade',
     guess: 'occupan',
   },
   year_built: {
@@ -121,9 +121,9 @@ const HEADERS: Readonly<Record<SiteField, Words>> = {
     guess: 'terrain',
   },
   deductible_kind: {
-    sure: 'deductible kind|deductible type|excess type|excess kind|excess basis|ded type|deductible basis|ded basis|ded kind|wind ded type|deductible code',
-    likely: 'ded code|wind deductible type|deductible unit',
-    guess: 'dedtype|deductibletype',
+    sure: 'deductible kind|deductible type|excess type|excess kind|excess basis|ded type|deductible basis|ded basis|ded kind|wind ded type',
+    likely: 'wind deductible type|deductible unit',
+    guess: 'deductibletype',
   },
   deductible_value: {
     sure: 'deductible value|deductible|ded|wind deductible|wind ded|deductible amount|ded amount|ded value|hurricane deductible|named storm deductible|site deductible',
