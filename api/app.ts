@@ -30,7 +30,7 @@ export interface AppParts {
   webFolder: string;
 }
 
-export const API_PATH = '/api/v1';
+const API_PATH = '/api/v1';
 /** A track or a mapping is text of some hundred kilobytes; portfolio files come as multipart and are streamed. */
 const JSON_LIMIT = '4mb';
 

@@ -14,7 +14,7 @@ export function landIndex(): LandIndex {
 }
 
 /** Outlines of the land polygons, laid out on the flat plane, as flat longitude, latitude pairs [deg]. */
-export function landRings(): Float64Array[] {
+function landRings(): Float64Array[] {
   const file = createRequire(import.meta.url).resolve('world-atlas/land-10m.json');
   const topology = JSON.parse(readFileSync(file, 'utf8')) as Topology<{ land: GeometryCollection }>;
   const rings: Float64Array[] = [];

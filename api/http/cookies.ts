@@ -1,7 +1,7 @@
 import type { CookieOptions, Request, Response } from 'express';
 
-export const ACCESS_COOKIE = 'gustloom_access';
-export const REFRESH_COOKIE = 'gustloom_refresh';
+const ACCESS_COOKIE = 'gustloom_access';
+const REFRESH_COOKIE = 'gustloom_refresh';
 const CSRF_COOKIE = 'gustloom_csrf';
 const SESSION_PATH = '/api/v1/session';
 

@@ -1,6 +1,6 @@
 /** Numbers as the screens write them: comma thousands, a true minus, an en dash without spaces in ranges. */
-export const EN_DASH = '–';
-export const NO_BREAK_SPACE = '\u00a0';
+const EN_DASH = '–';
+const NO_BREAK_SPACE = '\u00a0';
 
 const formats = new Map<number, Intl.NumberFormat>();
 const formatFor = (decimals: number) => {

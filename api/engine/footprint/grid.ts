@@ -8,7 +8,7 @@ import { floorCircles, outerTimesOver, strongWindArea, type Area } from './stron
 /** Roughness length taken for every land node [m]: open country. */
 export const GRID_ROUGHNESS = 0.03;
 /** Greatest number of nodes unless told otherwise. */
-export const MOST_NODES = 16_000;
+const MOST_NODES = 16_000;
 const FINEST_STEP = 0.02;
 const BLOCK_DEG = 0.6;
 // Coarser than this the ring of strongest wind of a small storm would fall between the nodes.

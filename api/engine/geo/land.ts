@@ -15,7 +15,7 @@ const PIECE = 4_000;
 /** Greatest overland distance looked for [m]. */
 export const FETCH_LIMIT = 100_000;
 /** Directions the wind comes from, in the order of the fetches [deg]. */
-export const FETCH_SECTORS = [0, 45, 90, 135, 180, 225, 270, 315] as const;
+const FETCH_SECTORS = [0, 45, 90, 135, 180, 225, 270, 315] as const;
 
 /** Coast segments sorted into cells of a quarter degree; plain data that can be sent to another thread. */
 export type LandIndex = {

@@ -2,7 +2,7 @@ import { DomainError } from '../errors.ts';
 import { regularisedBeta } from '../numerics/beta.ts';
 
 /** Sum of the two shapes of the beta spread around a mean damage ratio [1]: variance mu (1 - mu) / 5. */
-export const CONCENTRATION = 4;
+const CONCENTRATION = 4;
 const SMALL_SHAPE = 0.05;
 
 /**

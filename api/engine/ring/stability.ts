@@ -3,18 +3,18 @@ import { DomainError } from '../errors.ts';
 /** Growth rates below this share of the ring's average vorticity count as stable [1]. */
 export const GROWTH_FLOOR = 0.02;
 /** Wavenumbers whose growth is examined. */
-export const FIRST_WAVENUMBER = 3;
-export const LAST_WAVENUMBER = 12;
+const FIRST_WAVENUMBER = 3;
+const LAST_WAVENUMBER = 12;
 /** Ring width over the radius of maximum wind when nothing is known [1]. Judgement. */
 export const DEFAULT_RING_WIDTH = 0.35;
 /** Eye vorticity over average vorticity when nothing is known [1]. Judgement. */
 export const DEFAULT_EYE_RATIO = 0.2;
 /** Range of inner over outer ring radius in which the solver is used [1]. */
-export const RADIUS_RATIO_RANGE = [0.55, 0.9] as const;
+const RADIUS_RATIO_RANGE = [0.55, 0.9] as const;
 /** Range of eye vorticity over average vorticity in which the solver is used [1]. */
-export const EYE_RATIO_RANGE = [0, 0.9] as const;
+const EYE_RATIO_RANGE = [0, 0.9] as const;
 /** Half width of each smooth shoulder over the ring width [1]. */
-export const SHOULDER_SHARE = 0.375;
+const SHOULDER_SHARE = 0.375;
 
 const NODES_PER_SHOULDER = 48;
 // Counting line a little under the floor, so that a mode sitting on the floor is counted and then judged by its own value.

@@ -2,7 +2,7 @@ import { REFERENCE_HEIGHT } from '../constants.ts';
 import { DomainError } from '../errors.ts';
 
 /** Roughness length of the reference terrain, category II [m]. EN 1991-1-4:2005, table 4.1. */
-export const REFERENCE_ROUGHNESS = 0.05;
+const REFERENCE_ROUGHNESS = 0.05;
 
 /**
  * Terrain factor kr.

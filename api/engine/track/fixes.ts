@@ -1,7 +1,7 @@
 import { DomainError } from '../errors.ts';
 
 /** Averaging periods in which a maximum wind may be reported [s]. */
-export const WIND_AVERAGING = [60, 120, 180, 600] as const;
+const WIND_AVERAGING = [60, 120, 180, 600] as const;
 export type WindAveraging = (typeof WIND_AVERAGING)[number];
 
 /** One fix of a track as given; null = not given. */

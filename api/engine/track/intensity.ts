@@ -40,7 +40,7 @@ export type IntensityFix = {
  * @returns Factor [1].
  * @source At-sea gust factors of Harper, Kepert & Ginger (2010), WMO/TD-1555: 1.05 (60 s), 1.02 (120 s), 1.00 (180 s).
  */
-export function oneMinuteFactor(averaging: WindAveraging): number {
+function oneMinuteFactor(averaging: WindAveraging): number {
   if (averaging === 60) return 1;
   return averaging === 120 ? ONE_MINUTE_OVER_TEN / 1.02 : ONE_MINUTE_OVER_TEN;
 }

@@ -71,7 +71,7 @@ export function layVortices(
  * @returns Axisymmetric 1-min maximum [m s⁻¹].
  * @source Lin & Chavas (2012) motion share, as in symmetricWind.
  */
-export function axisymmetricWind(maxWind: number, speed: number): number {
+function axisymmetricWind(maxWind: number, speed: number): number {
   return ONE_MINUTE_OVER_TEN * symmetricWind(maxWind, speed);
 }
 

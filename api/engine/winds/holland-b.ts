@@ -1,7 +1,7 @@
 import { AIR_DENSITY } from '../constants.ts';
 
 /** Range in which the shape parameter is used [1]. */
-export const B_RANGE = [0.8, 2.5] as const;
+const B_RANGE = [0.8, 2.5] as const;
 
 const DRY_AIR = 287;
 const SEA_TEMPERATURE = 300.15;

@@ -1,7 +1,7 @@
 import { PA_PER_HPA } from '../units.ts';
 
 /** Range in which an estimated radius of maximum wind is used [m]. */
-export const RADIUS_RANGE = [8_000, 150_000] as const;
+const RADIUS_RANGE = [8_000, 150_000] as const;
 
 /**
  * Radius of maximum wind from pressure deficit and latitude, all hurricanes.

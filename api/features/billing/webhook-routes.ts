@@ -2,7 +2,7 @@ import express, { Router } from 'express';
 import type { PaymentSettlement } from './payment-settlement.ts';
 
 /** Where the payment provider posts its signed messages. Outside the contract: its form is the provider's. */
-export const WEBHOOK_PATH = '/webhooks/payments';
+const WEBHOOK_PATH = '/webhooks/payments';
 
 /** Mount before any JSON parser: the signature covers the bytes as they came. */
 export const paymentWebhookRoutes = (settlement: PaymentSettlement): Router => {

@@ -247,11 +247,11 @@ const CHECKS_AFTER_RESOLVING: ResolvedRule[] = [
 ];
 
 /** Every rule, for the help pages and the tests. TRACK-10 is the engine's own; 11 and 14 to 17 belong to reading. */
-export const ENTRY_RULES: readonly EntryRule[] = CHECKS_BEFORE_RESOLVING;
-export const RESOLVED_RULES: readonly ResolvedRule[] = CHECKS_AFTER_RESOLVING;
+const ENTRY_RULES: readonly EntryRule[] = CHECKS_BEFORE_RESOLVING;
+const RESOLVED_RULES: readonly ResolvedRule[] = CHECKS_AFTER_RESOLVING;
 
 /** Puts the fixes in time order; the same array when they already are. */
-export const sortedByTime = (fixes: readonly Fix[]): Fix[] => [...fixes].sort((a, b) => seconds(a) - seconds(b));
+const sortedByTime = (fixes: readonly Fix[]): Fix[] => [...fixes].sort((a, b) => seconds(a) - seconds(b));
 
 /** Findings of the track as entered. With consent, a disorder has been mended and is only noted. */
 export const checkEntry = (fixes: readonly Fix[], sortByTime: boolean): { fixes: Fix[]; findings: TrackFinding[] } => {

@@ -3,11 +3,11 @@ import { count, counted } from '../../lib/numbers.ts';
 import { paths, type IntakeStep } from '../../paths.ts';
 import type { Step } from '../../ui/stepper.tsx';
 
-export const isIntakeStep = (text: string | null): text is IntakeStep =>
+const isIntakeStep = (text: string | null): text is IntakeStep =>
   text === 'columns' || text === 'checks' || text === 'readiness' || text === 'sites';
 
 /** Where a draft stands when its address doesn't say. */
-export const naturalStep = (edition: Edition): IntakeStep => {
+const naturalStep = (edition: Edition): IntakeStep => {
   if (edition.state === 'mapping') return 'columns';
   return edition.state === 'sealed' ? 'sites' : 'checks';
 };

@@ -22,7 +22,7 @@ interface ChartFrameProps {
 }
 
 const quoted = (text: string) => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text);
-export const csvOf = ({ columns, rows }: ChartTable): string =>
+const csvOf = ({ columns, rows }: ChartTable): string =>
   [columns, ...rows].map((row) => row.map(quoted).join(',')).join('\r\n');
 
 /** Hands a text over as a file. */

@@ -10,7 +10,7 @@ export const DIFFERENCE_TOKENS = Array.from({ length: 11 }, (_, index) => `--dif
 const ZERO_STEP = 5;
 
 /** Index of the step a gust falls in, -1 below the scale. */
-export const gustStep = (speedMs: number): number =>
+const gustStep = (speedMs: number): number =>
   Math.min(GUST_EDGES_MS.length - 1, Math.floor((speedMs - GUST_EDGES_MS[0]) / GUST_STEP_MS));
 
 /** Token of a gust's colour, null below the scale. */

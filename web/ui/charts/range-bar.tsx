@@ -15,7 +15,7 @@ interface RangeTextInput {
 }
 
 /** What the two marks say, in words: the text alternative of every range bar. */
-export const rangeText = ({ enhanced, plain, format }: RangeTextInput): string => {
+const rangeText = ({ enhanced, plain, format }: RangeTextInput): string => {
   const parts = [
     enhanced
       ? `enhanced ${format(enhanced.p5)} to ${format(enhanced.p95)}, central ${format(enhanced.p50)}`

@@ -36,7 +36,7 @@ const TRIPLE = /^\D*\d{1,3}\.\d{3}\D*$/;
 const SECOND_STYLE = 0.2;
 
 /** Which sign parts decimals in a file, from cells that can be read one way only. */
-export function decimalEvidence(rows: readonly FileRow[]): DecimalEvidence {
+function decimalEvidence(rows: readonly FileRow[]): DecimalEvidence {
   let commas = 0;
   let points = 0;
   let triples = 0;

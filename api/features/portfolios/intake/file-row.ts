@@ -109,7 +109,7 @@ export function amountsOf(received: Received, facts: Pick<FileFacts, 'decimal' |
   return { values, total, totalOnly, otherCurrency, tivMinor };
 }
 
-export const rowReference = (row: number): string => `ROW-${String(row).padStart(6, '0')}`;
+const rowReference = (row: number): string => `ROW-${String(row).padStart(6, '0')}`;
 
 const negated = (coordinate: Coordinate): Coordinate =>
   coordinate.kind === 'degrees' ? { ...coordinate, degrees: -coordinate.degrees } : coordinate;

@@ -147,7 +147,7 @@ export function judgeRow(
 }
 
 /** Whether a row takes part in the question who else has its reference. */
-export const competesForReference = (surveyed: readonly Surveyed[], corrections: readonly Correction[]): boolean =>
+const competesForReference = (surveyed: readonly Surveyed[], corrections: readonly Correction[]): boolean =>
   !corrections.some(({ kind, code }) => kind === 'exclude' || (kind === 'keep_all' && code === 'SAME-01')) &&
   !surveyed.some(
     ({ code }) =>

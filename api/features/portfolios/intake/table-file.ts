@@ -47,7 +47,7 @@ export class FileRefused extends Error {
 const unreadable = (message: string) => new FileRefused('unreadable', message);
 const tooLarge = (message: string) => new FileRefused('too_large', message);
 
-export const megabytes = (bytes: number): string => {
+const megabytes = (bytes: number): string => {
   const size = bytes / (1024 * 1024);
   return `${size < 10 ? size.toFixed(1).replace(/\.0$/, '') : Math.floor(size)} MB`;
 };

@@ -25,7 +25,7 @@ export const isMissing = (cell: string): boolean =>
   MISSING_WORDS.has(cell.toLowerCase()) || MISSING_CODES.has(decimal(cell));
 
 /** Longitude as −180…180, whatever the turn it was written in. */
-export const wrapLongitude = (longitude: number): number =>
+const wrapLongitude = (longitude: number): number =>
   longitude >= -180 && longitude <= 180 ? longitude : ((((longitude + 180) % 360) + 360) % 360) - 180;
 
 /** A coordinate in degrees with a sign, or with its letter behind it. */

@@ -100,7 +100,7 @@ export const thousands = fileRule({
 });
 
 /** Whether the totals a person expects and those read agree; null when none were given. */
-export function controlTies({
+function controlTies({
   expectedRows,
   expectedTivMinor,
   rowsRead,
