@@ -29,13 +29,18 @@ const Environment = z
     /** Threads a worker scores sites with; absent, two. Results don't depend on it. */
     COMPUTE_THREADS: optional(z.coerce.number().int().min(1).max(256)),
   })
-  .superRefine((values, check) => {
-    if (values.NODE_ENV !== 'production') return;
-    const refuse = (path: string, message: string) => check.addIssue({ code: 'custom', path: [path], message });
-    if (values.STRIPE_API_URL) refuse('STRIPE_API_URL', 'the payment stand-in is not for production');
-    if (values.MAIL_SINK_FOLDER) refuse('MAIL_SINK_FOLDER', 'the mail sink is not for production');
-    if (!values.PUBLIC_URL.startsWith('https://')) refuse('PUBLIC_URL', 'must be https:// in production');
-  });
+  .superRefine(
+    (values, check) => {
+      if (values.NODE_ENV !== 'production') return;
+      const refuse = (path: string, message: string) => check.addIssue({ code: 'custom', path: [path], message });
+      if (values.STRIPE_API_URL) refuse('STRIPE_API_URL', 'the payment stand-in is not for production');
+      if (values.MAIL_SINK_FOLDER) refuse('MAIL_SINK_FOLDER', 'the mail sink is not for production');
+      if (URL.canParse(values.PUBLIC_URL) && !values.PUBLIC_URL.startsWith('https://'))
+        refuse('PUBLIC_URL', 'must be https:// in production');
+    },
+    // Also when single values are at fault, so that one start names everything.
+    { when: () => true },
+  );
 
 export interface Config {
   readonly environment: 'development' | 'test' | 'production';
