@@ -23,7 +23,8 @@ export type Notice = z.infer<typeof Notice>;
 export const pageOf = <T extends z.ZodType>(item: T) =>
   z.object({ items: z.array(item), nextCursor: z.string().nullable() });
 export const PageQuery = z.object({
-  cursor: z.string().max(200).optional(),
+  /** Holds up to 120 characters of a name, six bytes each at worst, and an id, in base64. */
+  cursor: z.string().max(1024).optional(),
   limit: z.coerce.number().int().min(1).max(500).default(50),
 });
 export const Nothing = z.null();

@@ -36,6 +36,15 @@ describe('a list read page by page', () => {
     expect(new Set(names).size).toBe(5);
     expect(names).toEqual([...names].sort());
   });
+  it('goes on after the longest names there can be, whatever is in them', async () => {
+    const endings = ['a', 'b', 'c'];
+    for (const filling of ['"', '\u0001', '台', 'x'])
+      for (const ending of endings)
+        await browser.post('/portfolios', { name: filling.repeat(119) + ending, currency: 'USD' }).expect(201);
+    const { items, sizes } = await walk('/portfolios', 1);
+    expect(sizes).toHaveLength(5 + 12);
+    expect(new Set(items.map(({ id }) => id)).size).toBe(5 + 12);
+  });
   it('gives every row of a file once, in the file’s order', async () => {
     const { items, sizes } = await walk(rows, 3);
     expect(sizes).toEqual([3, 3, 1]);
