@@ -46,11 +46,14 @@ function WorkHome({ session }: { session: Session }) {
   const working = runItems.filter((run) => run.state === 'waiting' || run.state === 'working').length;
   const lastFinished = runItems.map((run) => run.finishedAt).find((at) => at !== null);
 
-  const title = !canWrite
-    ? `Good to see you, ${firstName(session)}`
-    : waiting.length === 0
-      ? `Nothing waits for you, ${firstName(session)}`
-      : `${countInWords(waiting.length)} ${waiting.length === 1 ? 'thing waits' : 'things wait'} for you, ${firstName(session)}`;
+  // Nothing is said of what waits before it is known.
+  const isReading = portfolios.isPending || runs.isPending;
+  const title =
+    !canWrite || isReading
+      ? `Good to see you, ${firstName(session)}`
+      : waiting.length === 0
+        ? `Nothing waits for you, ${firstName(session)}`
+        : `${countInWords(waiting.length)} ${waiting.length === 1 ? 'thing waits' : 'things wait'} for you, ${firstName(session)}`;
   const runsSentence =
     working === 0
       ? lastFinished && `The last run finished ${day(lastFinished)} ${clock(lastFinished)} UTC.`
@@ -90,7 +93,7 @@ function WorkHome({ session }: { session: Session }) {
           {canWrite && (
             <WaitingCard
               items={waiting}
-              loading={portfolios.isPending || runs.isPending}
+              loading={isReading}
               quiet={
                 portfolios.data?.items.length === 0
                   ? 'Start by uploading a schedule of locations; you will be led through columns, checks and the seal.'

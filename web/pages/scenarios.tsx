@@ -1,9 +1,10 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
 import { Plus } from 'lucide-react';
-import { TRACK_WRITERS, UNDERWRITERS } from '#contract/roles.ts';
+import { READERS, TRACK_WRITERS, UNDERWRITERS } from '#contract/roles.ts';
 import { failureOf } from '../api/failure.ts';
 import { ScenarioTable } from '../features/scenarios/components/scenario-table.tsx';
 import { scenariosQuery } from '../features/scenarios/scenario-queries.ts';
+import { requireOneOf, SITE_DATA_DETAIL } from '../features/session/guard.ts';
 import { holdsOneOf, useSession } from '../features/session/session-queries.ts';
 import { counted } from '../lib/numbers.ts';
 import { paths } from '../paths.ts';
@@ -13,6 +14,11 @@ import { Page } from '../ui/page.tsx';
 import { ProblemNotice } from '../ui/problem.tsx';
 
 export { RouteError as ErrorBoundary } from './route-error.tsx';
+
+export const loader = async () => {
+  await requireOneOf(READERS, SITE_DATA_DETAIL);
+  return null;
+};
 
 export function Component() {
   const scenarios = useInfiniteQuery(scenariosQuery());
