@@ -138,8 +138,8 @@ it('lists runs newest first, a page at a time', async () => {
     seen.push(...body.items.map(({ id }: { id: string }) => id));
     cursor = body.nextCursor;
   }
-  const [{ count }] = await superUser('runs').where({ org_id: DUNE.id }).count();
-  expect(seen).toHaveLength(Number(count));
+  const stored = await superUser('runs').where({ org_id: DUNE.id }).select('id');
+  expect(seen).toHaveLength(stored.length);
   expect(new Set(seen).size).toBe(seen.length);
   const other = await underwriter.get(`/runs?portfolioId=${DUNE.id}`).expect(200);
   expect(other.body.items).toEqual([]);

@@ -277,15 +277,11 @@ export class ResultStore {
     for await (const row of rows as AsyncIterable<SiteRow>) yield toRecord(row);
   }
 
+  /** Column by column, put together by the database: a hundred thousand rows as objects would take seconds. */
   async points(tx: Tx, orgId: string, place: Place): Promise<ResultPoints> {
-    const rows = await this.joined(tx, orgId, place)
+    const sites = this.joined(tx, orgId, place)
       .orderBy('result.site_no')
-      .select<
-        Pick<
-          SiteRow,
-          'site_no' | 'site_ref' | 'longitude' | 'latitude' | 'tiv_minor' | 'state' | 'plain' | 'p5' | 'p95'
-        >[]
-      >(
+      .select(
         'result.site_no',
         'result.site_ref',
         'site.longitude',
@@ -296,17 +292,12 @@ export class ResultStore {
         'result.p5',
         'result.p95',
       );
-    return {
-      siteNo: rows.map((row) => row.site_no),
-      ref: rows.map((row) => row.site_ref),
-      longitude: rows.map((row) => row.longitude),
-      latitude: rows.map((row) => row.latitude),
-      tivMinor: rows.map((row) => toMinor(row.tiv_minor)),
-      state: rows.map((row) => row.state),
-      plainMs: rows.map((row) => row.plain),
-      p5Ms: rows.map((row) => row.p5),
-      p95Ms: rows.map((row) => row.p95),
-    };
+    const columns = await tx.from(sites.as('point')).first<ResultPoints>(
+      tx.raw(`json_agg(site_no) as "siteNo", json_agg(site_ref) as ref, json_agg(longitude) as longitude,
+          json_agg(latitude) as latitude, json_agg(tiv_minor) as "tivMinor", json_agg(state) as state,
+          json_agg(plain) as "plainMs", json_agg(p5) as "p5Ms", json_agg(p95) as "p95Ms"`),
+    );
+    return columns;
   }
 
   /** Null when the storm never reaches the lowest band. */
