@@ -2,9 +2,11 @@ import { render, screen, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { MemoryRouter } from 'react-router-dom';
 import { describe, expect, it } from 'vitest';
+import { NOTICE_VERSION } from '#contract/notices.ts';
 import { UnitsProvider, useUnits } from '../../web/lib/units.tsx';
 import { linearAxis, logAxis } from '../../web/ui/charts/axis.ts';
 import { differenceToken, GUST_EDGES_MS, gustToken } from '../../web/ui/charts/gust-scale.ts';
+import { ChartFrame } from '../../web/ui/charts/chart-frame.tsx';
 import { binLabels, GustHistogram, stepOutline } from '../../web/ui/charts/gust-histogram.tsx';
 import { GustLadder } from '../../web/ui/charts/gust-ladder.tsx';
 import { RangeBar } from '../../web/ui/charts/range-bar.tsx';
@@ -139,5 +141,25 @@ describe('land along the track', () => {
       [0, 5],
       [15, 20],
     ]);
+  });
+});
+
+describe('a chart’s table', () => {
+  it('leaves as a file that keeps to its columns and names the version of the cautions', async () => {
+    const made: Blob[] = [];
+    // The test page's own browser has neither.
+    Object.assign(URL, {
+      createObjectURL: (blob: Blob) => `blob:${made.push(blob)}`,
+      revokeObjectURL: () => undefined,
+    });
+    const table = { columns: ['gust, m/s', 'sites'], rows: [['30 to 35, "open"', '12']] };
+    render(
+      <ChartFrame title="Sites" summary="Sites by gust" table={table} fileName="sites">
+        {null}
+      </ChartFrame>,
+    );
+    await userEvent.click(screen.getByRole('button', { name: 'Download' }));
+    expect(made).toHaveLength(1);
+    expect(await made[0]!.text()).toBe(`"gust, m/s",sites,notice_version\r\n"30 to 35, ""open""",12,${NOTICE_VERSION}`);
   });
 });

@@ -1,5 +1,6 @@
 import { useId, useState, type ReactNode } from 'react';
 import { Download, Table2 } from 'lucide-react';
+import { NOTICE_VERSION } from '#contract/notices.ts';
 import { classNames } from '../../lib/class-names.ts';
 
 export interface ChartTable {
@@ -22,8 +23,11 @@ interface ChartFrameProps {
 }
 
 const quoted = (text: string) => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text);
+/** The table with the version of the cautions it was made under in each row: a file travels without its screen. */
 const csvOf = ({ columns, rows }: ChartTable): string =>
-  [columns, ...rows].map((row) => row.map(quoted).join(',')).join('\r\n');
+  [[...columns, 'notice_version'], ...rows.map((row) => [...row, NOTICE_VERSION])]
+    .map((row) => row.map(quoted).join(','))
+    .join('\r\n');
 
 /** Hands a text over as a file. */
 export const saveText = (name: string, text: string, type: string): void => {
