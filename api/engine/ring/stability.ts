@@ -51,6 +51,7 @@ export type SharpRingMode = {
  * @param eyeRatio      Eye vorticity over average vorticity [1].
  * @returns Inner over outer radius in 0.55..0.90 and eye ratio in 0..0.9 [1].
  * @throws {DomainError} when either is not finite.
+ * @source Definition; the bounds are those of this product.
  */
 export function ringShape(widthFraction: number, eyeRatio: number): { delta: number; gamma: number } {
   if (!Number.isFinite(widthFraction)) throw new DomainError('ring width fraction', widthFraction, 'a finite number');
