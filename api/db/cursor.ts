@@ -55,7 +55,9 @@ export const decodeNameCursor = (cursor: string | undefined): { name: string; id
 export const decodeMomentCursor = (cursor: string | undefined): { at: string; id: string } | null => {
   if (cursor === undefined) return null;
   const [at, id] = decodeCursor(cursor, 2);
-  if (!Instant.safeParse(at).success || !Id.safeParse(id).success) throw notOurs();
+  // The database knows no year 0, though ISO 8601 does.
+  const isInstant = Instant.safeParse(at).success && !String(at).startsWith('0000');
+  if (!isInstant || !Id.safeParse(id).success) throw notOurs();
   return { at: String(at), id: String(id) };
 };
 

@@ -61,6 +61,8 @@ describe('a cursor that isn’t one of ours', () => {
     ['no id', '/portfolios', encodeCursor('Lodging 1', 'x')],
     ['a name with a zero byte', '/portfolios', encodeCursor('Lodging\0', randomUUID())],
     ['an object for a name', '/portfolios', text(`[{},"${randomUUID()}"]`)],
+    ['no time', '/scenarios', encodeCursor('yesterday', randomUUID())],
+    ['a time before any calendar of the database', '/scenarios', encodeCursor('0000-01-01T00:00:00Z', randomUUID())],
     ['no cursor at all', rows, 'nonsense'],
     ['a cursor of another list', rows, encodeCursor('Lodging 1', randomUUID())],
     ['a word for a row', rows, encodeCursor('three')],
