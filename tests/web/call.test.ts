@@ -2,7 +2,7 @@ import { beforeEach, expect, it, vi } from 'vitest';
 import { createTopUp, getBalance } from '#contract/billing.ts';
 import { uploadFile } from '#contract/portfolios.ts';
 import { getRun, listSites } from '#contract/runs.ts';
-import { acceptNotes, getSession } from '#contract/session.ts';
+import { acceptNotes, getSession, signIn, signOut } from '#contract/session.ts';
 import { ApiError } from '../../web/api/api-error.ts';
 import { addressOf, call, upload, whenSignedOut } from '../../web/api/call.ts';
 import { newIdempotencyKey } from '../../web/api/idempotency-key.ts';
@@ -107,6 +107,26 @@ it('reports the end of the session when it can’t be renewed, without trying ag
   expect((await failure(call(getBalance))).code).toBe('not_signed_in');
   expect(over).toHaveBeenCalledOnce();
   expect(asked).toHaveLength(2);
+});
+
+it('says once that the session is over, and not at all to whoever has signed out', async () => {
+  let isSignedIn = true;
+  answerRequests(({ path, method }) => {
+    if (path === '/session' && method === 'DELETE') return { status: 204, body: null };
+    if (path === '/session' && method === 'POST') return ok(testSession({ csrfToken: 'csrf-3' }), 201);
+    return isSignedIn ? ok(balance) : refusal(401, 'not_signed_in', 'Sign in.');
+  });
+  const over = vi.fn();
+  whenSignedOut(over);
+  const body = { email: 'ines@saltmarsh.example', password: 'high water' };
+  await call(signIn, { body });
+  isSignedIn = false;
+  await Promise.all([failure(call(getBalance)), failure(call(getBalance))]);
+  expect(over).toHaveBeenCalledOnce();
+  await call(signIn, { body });
+  await call(signOut);
+  await failure(call(getBalance));
+  expect(over).toHaveBeenCalledOnce();
 });
 
 it('uploads a file as form data, with progress in bytes', async () => {

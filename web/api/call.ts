@@ -1,6 +1,6 @@
 import type { z } from 'zod';
 import type { Endpoint } from '#contract/endpoint.ts';
-import { refreshSession, Session } from '#contract/session.ts';
+import { refreshSession, Session, signOut } from '#contract/session.ts';
 import { errorFrom, unexpected, unreachable } from './api-error.ts';
 import { newIdempotencyKey } from './idempotency-key.ts';
 
@@ -22,7 +22,9 @@ type Reply<E extends Endpoint> = z.output<E['response']>;
 
 let csrfToken = '';
 let signedOut: () => void = () => undefined;
-/** What to do when the session is over and can't be renewed. */
+/** Known to be over, and said: until the next session, further refusals say nothing new. */
+let isOver = false;
+/** What to do, once, when the session is over and can't be renewed. */
 export const whenSignedOut = (listener: () => void): void => {
   signedOut = listener;
 };
@@ -87,7 +89,12 @@ const parse = <E extends Endpoint>(endpoint: E, { status, json }: Answer): Reply
   if (status < 200 || status >= 300) throw errorFrom(status, json);
   const reply = endpoint.response.safeParse(json);
   if (!reply.success) throw unexpected(status, reply.error);
-  if (endpoint.response === Session) csrfToken = (reply.data as Session).csrfToken;
+  if (endpoint.response === Session) {
+    csrfToken = (reply.data as Session).csrfToken;
+    isOver = false;
+  }
+  // Whoever signs out knows.
+  if (endpoint.id === signOut.id) isOver = true;
   return reply.data as Reply<E>;
 };
 
@@ -110,7 +117,10 @@ const withRenewal = async (endpoint: Endpoint, attempt: () => Promise<Answer>): 
   const first = await attempt();
   if (first.status !== 401 || endpoint.access === 'public') return first;
   if (await renew()) return attempt();
-  signedOut();
+  if (!isOver) {
+    isOver = true;
+    signedOut();
+  }
   return first;
 };
 

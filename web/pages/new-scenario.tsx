@@ -1,4 +1,4 @@
-import { useRef, useState } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import { ArrowLeft, Save, Undo2 } from 'lucide-react';
 import { redirect, useNavigate, type LoaderFunctionArgs } from 'react-router-dom';
 import { TRACK_WRITERS } from '#contract/roles.ts';
@@ -68,12 +68,21 @@ function NewTrack({ started, onBack }: { started: Started; onBack: () => void })
   const [name, setName] = useState(started.name);
   const [asked, setAsked] = useState(false);
   const [sortByTime, setSortByTime] = useState(false);
-  const [isSaved, setIsSaved] = useState(false);
+  const [savedAs, setSavedAs] = useState<string | null>(null);
   const create = useCreateScenario();
   const key = useRef(newIdempotencyKey());
   const navigate = useNavigate();
+  // In an effect, so that the guard below has seen that all is saved before the page is left.
+  useEffect(() => {
+    if (savedAs) void navigate(paths.scenario(savedAs), { replace: true });
+  }, [savedAs, navigate]);
   const missing = missingFrom(draft);
   const nameFault = asked && name.trim() === '' ? 'Give the scenario a name.' : undefined;
+
+  // Effects of the guard run before this one: it knows that all is saved when the page is left.
+  useEffect(() => {
+    if (savedAs !== null) void navigate(paths.scenario(savedAs), { replace: true });
+  }, [savedAs, navigate]);
 
   const save = () => {
     setAsked(true);
@@ -82,11 +91,7 @@ function NewTrack({ started, onBack }: { started: Started; onBack: () => void })
     create.mutate(
       { body: { name: name.trim(), track, sortByTime }, key: key.current },
       {
-        onSuccess: (version) => {
-          setIsSaved(true);
-          // The guard must see the saved state before the page is left.
-          setTimeout(() => void navigate(paths.scenario(version.scenarioId), { replace: true }));
-        },
+        onSuccess: ({ scenarioId }) => setSavedAs(scenarioId),
         // What was refused may be mended and sent as another intent.
         onError: () => (key.current = newIdempotencyKey()),
       },
@@ -121,7 +126,7 @@ function NewTrack({ started, onBack }: { started: Started; onBack: () => void })
           <Button
             variant="filled"
             icon={Save}
-            pending={create.isPending}
+            pending={create.isPending || savedAs !== null}
             disabledReason={missing ?? undefined}
             onClick={save}
           >
@@ -130,7 +135,7 @@ function NewTrack({ started, onBack }: { started: Started; onBack: () => void })
         </>
       }
     >
-      <LeaveGuard when={!isSaved} what="the new track" />
+      <LeaveGuard when={savedAs === null} what="the new track" />
       <div className="mb-3.5 flex flex-col gap-3">
         {create.isError && <SaveProblem error={create.error} />}
         {asked && missing && <Message tone="error">{missing}</Message>}
