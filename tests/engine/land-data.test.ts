@@ -61,3 +61,47 @@ it('serves thousands of coastal sites a second', () => {
   });
   expect(Math.max(...rates)).toBeGreaterThan(3_000);
 });
+
+it('knows the Caspian Sea, a hole in a continent that runs across 180 degrees, as water in any turn', () => {
+  // Off Mangyshlak, Baku's roads and the deep south; Baku, Aktau and the Ustyurt plateau ashore.
+  const water: [number, number][] = [
+    [41.5, 50.5],
+    [40.2, 50.6],
+    [38, 51],
+  ];
+  const shore: [number, number][] = [
+    [40.4, 49.8],
+    [43.65, 51.2],
+    [43, 55],
+  ];
+  for (const turn of [-360, 0, 360]) {
+    for (const [latitude, longitude] of water) expect(isLand(index, latitude, longitude + turn)).toBe(false);
+    for (const [latitude, longitude] of shore) expect(isLand(index, latitude, longitude + turn)).toBe(true);
+  }
+  // Either shore is farther than is looked for.
+  expect(distanceToLandM(index, 41.5, 50.5)).toBe(Infinity);
+});
+
+it('lays no ring out over more than one turn, and none with a step of more than half of one', () => {
+  const { segments, artificial } = index;
+  const spans: number[] = [];
+  let step = 0;
+  let [west, east] = [Infinity, -Infinity];
+  for (let s = 0; s < segments.length; s += 4) {
+    const [x0, x1] = [segments[s]!, segments[s + 2]!];
+    // The edges that close Antarctica along the pole are no coast.
+    if (artificial[s / 4] === 0) step = Math.max(step, Math.abs(x1 - x0));
+    [west, east] = [Math.min(west, x0, x1), Math.max(east, x0, x1)];
+    // A ring's edges follow one another; the next ring starts elsewhere.
+    if (segments[s + 4] === x1 && segments[s + 5] === segments[s + 3]) continue;
+    spans.push(east - west);
+    [west, east] = [Infinity, -Infinity];
+  }
+  expect(step).toBeLessThanOrEqual(180);
+  expect(spans.length).toBeGreaterThan(4000);
+  // Antarctica goes round once; the old world and America come next.
+  const [first, second, third] = spans.sort((a, b) => b - a);
+  expect(first).toBeCloseTo(360, 9);
+  expect(second).toBeLessThan(210);
+  expect(third).toBeLessThan(140);
+});
