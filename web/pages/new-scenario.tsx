@@ -72,10 +72,6 @@ function NewTrack({ started, onBack }: { started: Started; onBack: () => void })
   const create = useCreateScenario();
   const key = useRef(newIdempotencyKey());
   const navigate = useNavigate();
-  // In an effect, so that the guard below has seen that all is saved before the page is left.
-  useEffect(() => {
-    if (savedAs) void navigate(paths.scenario(savedAs), { replace: true });
-  }, [savedAs, navigate]);
   const missing = missingFrom(draft);
   const nameFault = asked && name.trim() === '' ? 'Give the scenario a name.' : undefined;
 

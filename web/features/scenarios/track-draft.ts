@@ -38,6 +38,15 @@ export const draftOf = ({ fixes, declarations }: Track): TrackDraft => ({
 
 const isComplete = (fix: DraftFix): fix is Fix => fix.time !== null && fix.latitude !== null && fix.longitude !== null;
 
+/** Where a track is looked at first: its largest entered wind, else its lowest pressure. */
+export const strongestFix = (fixes: readonly DraftFix[]): number =>
+  fixes.reduce((best, fix, index) => {
+    const strongest = fixes[best]!;
+    const byWind = (fix.maxWindMs ?? 0) - (strongest.maxWindMs ?? 0);
+    const byPressure = (strongest.centralPressureHpa ?? Infinity) > (fix.centralPressureHpa ?? Infinity);
+    return byWind > 0 || (byWind === 0 && byPressure) ? index : best;
+  }, 0);
+
 /** The draft as it is sent, or null while something that can't be filled is missing. */
 export const trackOf = (draft: TrackDraft): Track | null => {
   if (draft.windAveragingS === null || draft.fixes.length === 0 || !draft.fixes.every(isComplete)) return null;

@@ -144,7 +144,7 @@ export function SitesTable(props: SitesTableProps) {
 const HIDES: Record<Column['priority'], string> = { 1: '', 2: 'max-md:hidden', 3: 'max-wide:hidden' };
 const cellLook = ({ numeric, priority }: Column) =>
   classNames(
-    'px-2 leading-tight first:pl-4 last:pr-4',
+    'px-2 leading-tight first:pl-4 last:pr-4 max-rail:px-1.5 max-rail:first:pl-3 max-rail:last:pr-3',
     numeric ? 'text-right whitespace-nowrap' : 'text-left',
     HIDES[priority],
   );
@@ -210,7 +210,7 @@ function useColumns({ currency, vortices, onChoose, slim }: SitesTableProps): Co
           <span
             className={classNames(
               'block truncate text-12 text-ink-2',
-              slim ? 'max-w-38 max-rail:max-w-28' : 'max-w-72',
+              slim ? 'max-w-38 max-rail:max-w-25' : 'max-w-72',
             )}
           >
             {[site.label, site.town].filter(Boolean).join(', ')}

@@ -9,7 +9,15 @@ import { Card } from '../../../ui/card.tsx';
 import { ProblemNotice } from '../../../ui/problem.tsx';
 import { filledSummary } from '../filled-summary.ts';
 import { resolutionQuery } from '../scenario-queries.ts';
-import { missingFrom, trackOf, withFix, withFixAfter, withoutFix, type TrackDraft } from '../track-draft.ts';
+import {
+  missingFrom,
+  strongestFix,
+  trackOf,
+  withFix,
+  withFixAfter,
+  withoutFix,
+  type TrackDraft,
+} from '../track-draft.ts';
 import { useSettled } from '../use-settled.ts';
 import type { ChangeDraft } from '../use-draft.ts';
 import { DeclarationsStrip } from './declarations-strip.tsx';
@@ -32,7 +40,7 @@ const SETTLE_MS = 350;
 
 /** Map left; declarations, fixes, findings right; wind and radius along the track at the foot. */
 export function TrackEditor({ draft, change, sortByTime, onSortByTime, readOnly, fileName }: TrackEditorProps) {
-  const [chosen, setChosen] = useState(0);
+  const [chosen, setChosen] = useState(() => strongestFix(draft.fixes));
   const row = Math.min(chosen, Math.max(0, draft.fixes.length - 1));
   const settled = useSettled(draft, SETTLE_MS);
   const track = trackOf(settled);
