@@ -148,9 +148,7 @@ function Decision(props: QuoteCardProps & { quote: Quote; standing: QuoteStandin
       <dl className="text-13" aria-label="Balance">
         <Line term="Free now" value={exactAmount(freeBalanceMinor, currency)} />
         <Line term="Reserved by this run" value={`− ${exactAmount(grossMinor, currency)}`} />
-        <div className="mt-1 border-t border-rule pt-1 font-bold">
-          <Line term="Free after acceptance" value={exactAmount(after, currency)} caution={short} />
-        </div>
+        <Line term="Free after acceptance" value={exactAmount(after, currency)} caution={short} result />
       </dl>
       {acceptError && <Message tone="error">{acceptError}</Message>}
       {quoteError && <Message tone="error">{quoteError}</Message>}
@@ -201,9 +199,23 @@ function Decision(props: QuoteCardProps & { quote: Quote; standing: QuoteStandin
   );
 }
 
-function Line({ term, value, caution = false }: { term: string; value: string; caution?: boolean }) {
+interface LineProps {
+  term: string;
+  value: string;
+  caution?: boolean;
+  /** Below the rule, what the lines above come to. */
+  result?: boolean;
+}
+
+function Line({ term, value, caution = false, result = false }: LineProps) {
   return (
-    <div className={classNames('flex justify-between gap-3 py-0.5', caution && 'text-caution')}>
+    <div
+      className={classNames(
+        'flex justify-between gap-3',
+        result ? 'mt-1 border-t border-rule pt-1.5 pb-0.5 font-bold' : 'py-0.5',
+        caution && 'text-caution',
+      )}
+    >
       <dt>{term}</dt>
       <dd>{value}</dd>
     </div>

@@ -24,9 +24,7 @@ export function QuoteReceipt({ quote }: { quote: Quote }) {
       )}
       <Line term="Net" value={exactAmount(quote.netMinor, currency)} rule />
       <Line term={quote.taxLabel} value={exactAmount(quote.taxMinor, currency)} quiet />
-      <div className="mt-1 border-t-2 border-ink">
-        <Line term={`Total, ${currency}`} value={exactAmount(quote.grossMinor, currency)} strong large />
-      </div>
+      <Line term={`Total, ${currency}`} value={exactAmount(quote.grossMinor, currency)} strong large />
     </dl>
   );
 }
@@ -45,7 +43,7 @@ function Line({ term, value, rule = false, strong = false, quiet = false, large 
     <div
       className={classNames(
         'flex items-baseline justify-between gap-3 px-5',
-        large ? 'py-2 text-16' : 'py-1.25',
+        large ? 'mt-1 border-t-2 border-ink py-2 text-16' : 'py-1.25',
         rule && 'border-t border-rule',
         strong && 'font-bold',
       )}
