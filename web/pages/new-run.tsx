@@ -331,7 +331,7 @@ export function Component() {
         />
       </div>
       {quote && standing === 'open' && quote.freeBalanceMinor >= quote.grossMinor && (
-        <div className="fixed inset-x-0 bottom-[calc(3.625rem+2.375rem)] z-10 flex items-center gap-3 border-t border-rule-strong bg-sheet px-3.5 py-2 shadow-3 rail:hidden">
+        <div className="fixed inset-x-0 bottom-[calc(3.625rem+2.875rem)] z-10 flex items-center gap-3 border-t border-rule-strong bg-sheet px-3.5 py-2 shadow-3 rail:hidden">
           <span className="min-w-0 flex-1 text-12 text-ink-2">{quoteInShort(quote)}</span>
           <Button variant="filled" pending={acceptQuote.isPending} onClick={accept}>
             Accept and run, {exactMoney(quote.grossMinor, quote.currency)}
