@@ -118,9 +118,11 @@ describe('the CSV export', () => {
         'latitude_deg',
         'notice_version',
         'hours_above_33_m_s',
+        'track_as_of_utc',
       ]),
     );
     expect(rows.every((row) => row.notice_version === NOTICE_VERSION)).toBe(true);
+    expect(new Set(rows.map((row) => row.calibration_state))).toEqual(new Set(['signed']));
     expect(first).not.toMatch(/2026-12-01T/);
   });
 

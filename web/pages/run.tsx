@@ -45,6 +45,7 @@ const tracksText = (run: Run): string =>
 export function Component() {
   const { runId } = useParams();
   const { data: run } = useSuspenseQuery(runQuery(runId!));
+  const provisional = run.notices.filter(({ code }) => code === 'provisional').map(({ text }) => text);
   const liveness = useRunProgress(run.id, run.state);
   const [search, setSearch] = useSearchParams();
   const navigate = useNavigate();
@@ -98,6 +99,12 @@ export function Component() {
             <b>Unsigned calibration, exploratory.</b> {run.calibration.code} version {run.calibration.version} is{' '}
             {run.calibration.state}; every output of this run says so.
           </span>
+        </p>
+      )}
+      {provisional.length > 0 && (
+        <p className="mb-3 flex flex-none items-center gap-2.5 rounded-2 bg-event-tint px-3.5 py-2 text-13 text-event">
+          <ClockAlert size={16} strokeWidth={1.75} className="flex-none" aria-hidden />
+          <span>{provisional.join(' ')}</span>
         </p>
       )}
       <Tabs

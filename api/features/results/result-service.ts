@@ -23,6 +23,10 @@ export interface FinishedTrack extends Place {
   options: ChainOptions;
   gustThresholdsMs: readonly number[];
   curve: string;
+  calibration: string;
+  calibrationState: string;
+  /** When the track is an advisory: its issue time. */
+  trackAsOf: string | null;
   path: readonly [number, number][];
   notices: Notice[];
 }
@@ -44,11 +48,16 @@ export interface ResultParts {
 export type At = { runId: string; runScenarioId: string };
 type Query = z.output<typeof SitesQuery>;
 
+/** Each holds a connection of the database while its reader takes its time. */
+const EXPORTS_AT_ONCE = 4;
+
 const GUST_DEFINITION =
   'Peak 3-second gust at 10 m in m/s: over land in open country (roughness 0.03 m) with its own distance to the sea, over water at sea. Sites are scored with their own terrain, so a site and the field around it may differ.';
 
 /** Answers questions about what a finished track left behind. */
 export class ResultService {
+  private exporting = 0;
+
   constructor(private readonly parts: ResultParts) {}
 
   sites(actor: Actor, at: At, query: Query): Promise<SitesPage> {
@@ -106,16 +115,26 @@ export class ResultService {
   }
 
   /** All sites one after another, with what the export says about them; the caller writes them out as they come. */
-  export(
+  async export(
     actor: Actor,
     at: At,
     write: (track: FinishedTrack, sites: AsyncIterable<SiteRecord>) => Promise<void>,
   ): Promise<void> {
     const { results, audit } = this.parts;
-    return this.read(actor, at, async (tx, track) => {
-      await audit.record(tx, actor, 'result.exported', `run:${at.runId}`, { ...at, format: 'csv' });
-      await write(track, results.all(tx, actor.orgId, track));
-    });
+    if (this.exporting >= EXPORTS_AT_ONCE) {
+      const retryAfterS = 15;
+      throw new AppError('unavailable', 'Several exports are being written. Try again in a moment.', { retryAfterS });
+    }
+    this.exporting += 1;
+    try {
+      // In a transaction of its own: whoever hangs up at the last byte has been given the file all the same.
+      await this.read(actor, at, (tx) =>
+        audit.record(tx, actor, 'result.exported', `run:${at.runId}`, { ...at, format: 'csv' }),
+      );
+      await this.read(actor, at, (tx, track) => write(track, results.all(tx, actor.orgId, track)));
+    } finally {
+      this.exporting -= 1;
+    }
   }
 
   private read<T>(

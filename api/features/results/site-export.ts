@@ -10,7 +10,7 @@ type Cell = string | number | null;
 type Column = readonly [header: string, value: (site: SiteRecord, track: FinishedTrack) => Cell];
 
 /** A spreadsheet takes a text that begins like this for a formula; an apostrophe in front makes it text again. */
-const FORMULA_START = /^[=+\-@\t\r]/;
+const FORMULA_START = /^[=+\-@\t\r\n＝＋－＠]/;
 export const safeText = (text: string): string => (FORMULA_START.test(text) ? `'${text}` : text);
 
 const text =
@@ -80,6 +80,9 @@ const columnsFor = (currency: string): readonly Column[] => {
     [`gross_p95_${unit}`, ({ grossP95Minor }) => money(grossP95Minor)],
     ['run', (_site, { runNumber }) => safeText(runNumber)],
     ['track', (_site, { trackName }) => safeText(trackName)],
+    ['track_as_of_utc', (_site, { trackAsOf }) => trackAsOf],
+    ['calibration', (_site, { calibration }) => safeText(calibration)],
+    ['calibration_state', (_site, { calibrationState }) => safeText(calibrationState)],
     ['engine_version', (_site, { engineVersion }) => safeText(engineVersion)],
     ['notice_version', () => NOTICE_VERSION],
   ];

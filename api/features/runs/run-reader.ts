@@ -21,6 +21,10 @@ export interface FinishedTrack {
   options: ChainOptions;
   gustThresholdsMs: readonly number[];
   curve: string;
+  calibration: string;
+  calibrationState: string;
+  /** When the track is an advisory: its issue time. */
+  trackAsOf: string | null;
   path: readonly [number, number][];
   notices: Notice[];
 }
@@ -53,6 +57,9 @@ export class RunReader {
       options: chainOptions(run.options),
       gustThresholdsMs: run.options.gustThresholdsMs,
       curve: `${curveSet.curve.name} (${curveSet.name}, version ${curveSet.version})`,
+      calibration: `${calibration.code} version ${calibration.version}`,
+      calibrationState: calibration.state,
+      trackAsOf: track!.asOf,
       path: track!.path,
       notices: runNotices(run, [track!]),
     };

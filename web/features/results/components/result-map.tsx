@@ -72,7 +72,7 @@ export function ResultMap({ run, scenario, chosenSiteNo, onChooseSite, fullSize,
           : footprint.isError
             ? `The footprint wasn’t read: ${footprint.error.message}`
             : bands && bands.features.length === 0
-              ? 'No footprint: nowhere above 20 m/s near these sites.'
+              ? `No footprint: nowhere above ${gust(20)} ${label} near these sites.`
               : null
       }
       sites={sites}

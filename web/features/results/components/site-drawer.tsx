@@ -93,6 +93,7 @@ function DrawerSkeleton() {
 }
 
 function SiteBody({ run, site }: { run: Run; site: SiteDetail }) {
+  const { gust, label } = useUnits();
   const building = buildingText(site);
   return (
     <>
@@ -105,7 +106,7 @@ function SiteBody({ run, site }: { run: Run; site: SiteDetail }) {
         <p className="border-t border-rule px-4 py-6">
           {site.reach === 'out_of_reach'
             ? 'Out of reach: more than 1,000 km from the track throughout, so not scored and not charged.'
-            : 'Below the floor: the gust stays under 20 m/s throughout the storm, so there is no loss.'}
+            : `Below the floor: the gust stays under ${gust(20)} ${label} throughout the storm, so there is no loss.`}
         </p>
       ) : (
         <ScoredSite run={run} site={site} />
@@ -115,12 +116,12 @@ function SiteBody({ run, site }: { run: Run; site: SiteDetail }) {
 }
 
 function ScoredSite({ run, site }: { run: Run; site: SiteDetail }) {
-  const { gust } = useUnits();
+  const { gust, label } = useUnits();
   const vortices = site.p5Ms !== null && site.p50Ms !== null && site.p95Ms !== null;
   const plainMs = site.plainMs ?? 0;
   const spread = vortices ? { p5: site.p5Ms!, p50: site.p50Ms!, p95: site.p95Ms! } : null;
   const place = `${site.distanceToTrackKm === null ? '' : `${decimal(site.distanceToTrackKm, 0)} km ${site.sideOfTrack ?? 'from'} of the track; `}${
-    site.secondsAbove25 === null ? '' : `above ${gust(25)} for ${decimal(site.secondsAbove25 / 3600, 1)} h`
+    site.secondsAbove25 === null ? '' : `above ${gust(25)} ${label} for ${decimal(site.secondsAbove25 / 3600, 1)} h`
   }`;
   return (
     <>
