@@ -13,7 +13,7 @@ const notOurs = () =>
   });
 
 /** The parts of a cursor we gave out; anything else is refused, never guessed at. */
-export const decodeCursor = (cursor: string, length: number): CursorPart[] => {
+const decodeCursor = (cursor: string, length: number): CursorPart[] => {
   try {
     const parts: unknown = JSON.parse(Buffer.from(cursor, 'base64url').toString('utf8'));
     if (

@@ -56,6 +56,9 @@ describe('a cursor that isn’t one of ours', () => {
   const text = (word: string) => Buffer.from(word).toString('base64url');
   it.each([
     ['no cursor at all', '/portfolios', 'nonsense'],
+    ['no cursor at all, of runs', '/runs', 'nonsense'],
+    ['no moment, of runs', '/runs', encodeCursor('yesterday', randomUUID())],
+    ['no id, of runs', '/runs', encodeCursor('2026-12-01T00:00:00.000Z', 'x')],
     ['a cursor of another list', '/portfolios', encodeCursor(7)],
     ['no name', '/portfolios', encodeCursor(7, randomUUID())],
     ['no id', '/portfolios', encodeCursor('Lodging 1', 'x')],

@@ -122,10 +122,14 @@ describe('row-level security', () => {
         DUNE.people.admin.id,
         DUNE.people.admin.email,
       ]);
-      return tx.raw('select password_hash from person_for_sign_in(?)', [DUNE.people.admin.email]);
+      const { rows } = await tx.raw<{ rows: { password_hash: string }[] }>(
+        'select password_hash from person_for_sign_in(?)',
+        [DUNE.people.admin.email],
+      );
+      return rows.map((row) => row.password_hash);
     });
-    expect(found.rows).toHaveLength(1);
-    expect(found.rows[0].password_hash).not.toBe('planted');
+    expect(found).toHaveLength(1);
+    expect(found[0]).not.toBe('planted');
     const { rows } = await superUser.raw<{ rows: { name: string }[] }>(`
       select proname as name from pg_proc where pronamespace = 'public'::regnamespace and prosecdef
         and pg_get_userbyid(proowner) = 'gustloom_owner' and not 'search_path=public, pg_temp' = any(proconfig)`);

@@ -1,6 +1,6 @@
 import type { Run, RunEvent, RunSlip, RunSummary } from '#contract/runs.ts';
 import type { Actor } from '../../actor.ts';
-import { decodeCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
+import { decodeMomentCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
 import { AppError, notFound } from '../../errors.ts';
 import type { Jobs } from '../../jobs/queue.ts';
 import type { BillingDesk } from '../../ports/billing-desk.ts';
@@ -147,9 +147,8 @@ export class RunService {
     { cursor, limit, portfolioId }: { cursor?: string; limit: number; portfolioId?: string },
   ): Promise<{ items: RunSummary[]; nextCursor: string | null }> {
     const { transact, runs, tracks } = this.parts;
-    const [at, id] = cursor === undefined ? [] : (decodeCursor(cursor, 2) as [string, string]);
+    const before = decodeMomentCursor(cursor);
     return transact(actor, async (tx) => {
-      const before = at === undefined || id === undefined ? null : { at, id };
       const found = await runs.list(tx, actor.orgId, { portfolioId: portfolioId ?? null, before, limit: limit + 1 });
       const page = pageFrom(found, limit, (run) => encodeCursor(run.acceptedAt.toISOString(), run.id));
       const scenarios = await runs.scenarios(
