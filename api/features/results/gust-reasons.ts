@@ -21,6 +21,7 @@ const from = (degrees: number) => POINTS[Math.round(degrees / 45) % POINTS.lengt
 /** Why this gust: the rungs from the wind above the friction layer to the plain gust, each with its reason. */
 export const ladderOf = ({ wind, upwindFetchM }: GustLadder, { terrain }: Pick<SiteDetail, 'terrain'>): Rung[] => {
   const flat = wind.meanMs * wind.gustFactor;
+  const motion = wind.seaWindMs - wind.surfaceMs;
   const land =
     upwindFetchM === null
       ? 'at sea: no land is felt'
@@ -44,9 +45,9 @@ export const ladderOf = ({ wind, upwindFetchM }: GustLadder, { terrain }: Pick<S
     },
     {
       key: 'motion',
-      reason: 'The storm’s own motion, added on its stronger side',
+      reason: motion < 0 ? 'This side moves against the storm' : 'This side moves with the storm',
       operation: 'plus',
-      amount: wind.seaWindMs - wind.surfaceMs,
+      amount: motion,
       afterMs: wind.seaWindMs,
     },
     {
