@@ -38,6 +38,8 @@ beforeAll(async () => {
   const email = await newcomer(product, 'Birk Tallow', 'underwriter');
   browser = await openBrowser();
   page = await openPage(browser, product.url);
+  // A track left unsaved asks before it lets one go.
+  page.on('dialog', (dialog) => void dialog.accept());
   await signIn(page, email, product.password);
 });
 afterAll(async () => {
@@ -119,8 +121,6 @@ describe('a track that can’t be run', () => {
   };
 
   beforeEach(async () => {
-    // A track left unsaved asks before it lets one go.
-    page.once('dialog', (dialog) => void dialog.accept());
     await page.goto('/scenarios/new');
     await page.getByLabel(/Best-track text/).waitFor();
     before = await scenarios();

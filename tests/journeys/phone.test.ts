@@ -51,10 +51,7 @@ pictureFailures('phone', () => page);
 describe('an underwriter with a phone', () => {
   it('finds the way by the bar at the foot', async () => {
     await page.getByRole('heading', { name: /for you, Runa/ }).waitFor();
-    await page
-      .getByText(/Billing|Free balance/)
-      .first()
-      .waitFor();
+    await page.getByText(/ balance − /).waitFor();
     await station('02-home');
     for (const place of ['Scenarios', 'Runs', 'Portfolios']) {
       await goTo(place);
@@ -141,7 +138,7 @@ describe('an underwriter with a phone', () => {
     expect(await region(`Gross loss, ${scenario}`).innerText()).toMatch(/USD\s+[\d.,]+–[\d.,]+\s+(million|billion)/);
     await station('19-overview');
     await page.getByRole('link', { name: /^Sites/ }).click();
-    await page.getByRole('columnheader', { name: /Enhanced 5–95 %, mph/ }).waitFor();
+    await page.getByRole('columnheader', { name: /5–95 %, mph/ }).waitFor();
     await station('20-sites');
     const site = page
       .getByRole('table', { name: 'Site results' })
