@@ -38,8 +38,12 @@ export const shortMoney = (minor: number, currency: string): string => {
   return [currency, decimal(value, word === '' ? 0 : decimalsFor(value)), word].filter(Boolean).join(' ');
 };
 
-const rangeWith = (low: number, high: number, decimals: number) =>
-  range(decimal(low, decimals), decimal(high, decimals));
+const MOST_DECIMALS = 6;
+/** A range is never printed as one number while its ends differ: it gets as many decimals as that takes. */
+const rangeWith = (low: number, high: number, decimals: number): string => {
+  const isTooCoarse = low !== high && decimals < MOST_DECIMALS && decimal(low, decimals) === decimal(high, decimals);
+  return isTooCoarse ? rangeWith(low, high, decimals + 1) : range(decimal(low, decimals), decimal(high, decimals));
+};
 
 /** Three figures at the high end, and at least two at the low end: "4.1–12.6", "0.41–12.60". */
 const figures = (low: number, high: number): string => {

@@ -21,7 +21,11 @@ export const counted = (value: number, one: string, many = `${one}s`): string =>
   `${count(value)} ${value === 1 ? one : many}`;
 /** A share of 0–1 in percent, one decimal unless said otherwise. */
 export const percent = (share: number, decimals = 1): string => `${decimal(share * 100, decimals)}${NO_BREAK_SPACE}%`;
-export const range = (low: string, high: string): string => (low === high ? low : `${low}${EN_DASH}${high}`);
+/** "63.6–67.8"; with a minus in it "−3 to 4", since a dash beside a minus can't be read. */
+export const range = (low: string, high: string): string => {
+  if (low === high) return low;
+  return /^−/.test(low) || /^−/.test(high) ? `${low} to ${high}` : `${low}${EN_DASH}${high}`;
+};
 
 /** Decimals that leave three significant figures, at most two of them after the point. */
 export const decimalsFor = (value: number): number => {

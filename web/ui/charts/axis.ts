@@ -27,6 +27,13 @@ export const linearAxis = (from: number, to: number, wanted = 5): Axis => {
   return { low, high, at: (value) => hold((value - low) / (high - low)), ticks };
 };
 
+/** A linear axis from 0 for things that are counted: only whole numbers along it. */
+export const countAxis = (most: number, wanted: number): Axis => {
+  const { ticks } = linearAxis(0, Math.max(1, most), wanted);
+  const step = Math.max(1, Math.ceil(ticks[1]!));
+  return linearAxis(0, step * Math.ceil(Math.max(1, most) / step), Math.ceil(Math.max(1, most) / step));
+};
+
 /** A logarithmic axis over whole decades, for lists that mix small and large accounts. */
 export const logAxis = (from: number, to: number): Axis => {
   const low = 10 ** Math.floor(Math.log10(Math.max(from, 1)));

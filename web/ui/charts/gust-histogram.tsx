@@ -1,6 +1,6 @@
 import { count, decimal } from '../../lib/numbers.ts';
 import { useUnits } from '../../lib/units.tsx';
-import { linearAxis, percentOf } from './axis.ts';
+import { countAxis, percentOf } from './axis.ts';
 import { ChartFrame } from './chart-frame.tsx';
 import { GUST_EDGES_MS, GUST_STEP_MS, GUST_TICKS_MS } from './gust-scale.ts';
 
@@ -32,7 +32,7 @@ export const stepOutline = (counts: readonly number[], top: number): string =>
 export function GustHistogram({ enhanced, plain, thresholdsMs = [], vortices, fileName }: GustHistogramProps) {
   const { gust, label, toUnit } = useUnits();
   const bars = vortices ? enhanced : plain;
-  const axis = linearAxis(0, Math.max(1, ...enhanced, ...plain), 3);
+  const axis = countAxis(Math.max(...enhanced, ...plain), 3);
   const labels = binLabels(gust);
   const total = bars.reduce((sum, sites) => sum + sites, 0);
   const fullest = bars.indexOf(Math.max(...bars));

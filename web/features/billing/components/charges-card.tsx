@@ -52,9 +52,7 @@ export function ChargesCard({ currency, own, linked }: { currency: string; own: 
           <tbody>
             {charges.isPending && <SkeletonRows columns={8} rows={5} />}
             {charges.isSuccess && rows.length === 0 && (
-              <EmptyRow columns={8}>
-                No run has been accepted yet. The first charge stands here once one completes.
-              </EmptyRow>
+              <EmptyRow columns={8}>No run is listed yet. A charge stands here once its run completes.</EmptyRow>
             )}
             {rows.map((charge) => (
               <Tr key={charge.runId}>

@@ -126,8 +126,8 @@ function IdenticalRun({ runId }: { runId: string }) {
       <History size={17} strokeWidth={1.75} className="mt-px flex-none text-done" aria-hidden />
       <div>
         <p>
-          <b>This very run exists.</b> Same edition, tracks, calibration, options and engine: its digits would be the
-          same. Opening it is free.
+          <b>This very run exists.</b> The same sites and terms, tracks, calibration, options and engine: its digits
+          would be the same. Opening it is free.
         </p>
         <ButtonLink size="small" to={paths.run(runId)} className="mt-2">
           Open it, free
