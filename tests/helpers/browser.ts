@@ -78,6 +78,7 @@ export const pictureFailures = (journey: string, page: () => Page | undefined): 
 /** No serious or critical finding of axe-core on the page as it stands, and no sideways scroll. */
 export const expectAccessible = async (page: Page): Promise<void> => {
   await page.evaluate(AXE);
+  await page.evaluate(() => new Promise((settled) => requestAnimationFrame(() => requestAnimationFrame(settled))));
   const found = await page.evaluate(async () => {
     const { axe } = globalThis as unknown as {
       axe: { run: () => Promise<{ violations: { id: string; impact: string; nodes: { html: string }[] }[] }> };
