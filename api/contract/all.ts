@@ -6,6 +6,7 @@ import * as portfolios from './portfolios.ts';
 import * as runs from './runs.ts';
 import * as scenarios from './scenarios.ts';
 import * as session from './session.ts';
+import * as studies from './studies.ts';
 
 const isEndpoint = (value: unknown): value is Endpoint =>
   typeof value === 'object' &&
@@ -23,5 +24,6 @@ export const ALL_ENDPOINTS: readonly Endpoint[] = [
   models,
   runs,
   evaluations,
+  studies,
   billing,
 ].flatMap((file) => Object.values<unknown>(file).filter(isEndpoint));

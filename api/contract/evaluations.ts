@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { Instant } from './common.ts';
 import { endpoint } from './endpoint.ts';
 import { Anchor, Averaging, Intensity } from './scenarios.ts';
+import { WindChoices } from './wind-choices.ts';
 
 /** Greatest number of sites in one evaluation. */
 export const MOST_EVALUATED_SITES = 200;
@@ -56,18 +57,14 @@ export const EvaluationSite = z.strictObject({
   limit: missing(money),
 });
 
-/** A choice of formula; values other than these aren’t available yet. */
-const only = <T extends string>(value: T) => z.literal(value, `Available: ${value}.`).default(value);
-
+/** Every choice of the chain; what is left out takes its default. */
 export const EvaluationOptions = z.strictObject({
   intensity: Intensity.default('pressure'),
   anchor: Anchor.default('auto'),
   mesovortices: z.boolean().default(true),
   timeStepS: between(5, 3600, ' s').default(300),
   innerTimeStepS: between(5, 3600, ' s').default(60),
-  profile: only('holland-1980'),
-  asymmetry: only('lin-chavas'),
-  gustFactor: only('turbulence'),
+  ...WindChoices.shape,
 });
 
 /** The objects of a list that may not have passed its own checks. */

@@ -4,6 +4,7 @@ import { endpoint } from './endpoint.ts';
 import { LocationQuality, Reconciliation, RowState } from './portfolios.ts';
 import { EVERY_ROLE, READERS, UNDERWRITERS } from './roles.ts';
 import { Anchor, Intensity } from './scenarios.ts';
+import { WindChoices } from './wind-choices.ts';
 
 export const Purpose = z.enum(['exploratory', 'underwriting_file', 'event', 'placement']);
 export type Purpose = z.infer<typeof Purpose>;
@@ -12,6 +13,8 @@ export const RunOptions = z.object({
   mesovortices: z.boolean().default(true),
   intensity: Intensity.default('pressure'),
   anchor: Anchor.default('auto'),
+  /** Published relations of the wind field other than the defaults; runs stored before there was a choice have none. */
+  wind: WindChoices.optional(),
   /** Gusts whose chance of being exceeded is counted per site [m/s]. */
   gustThresholdsMs: z.tuple([z.number().min(20).max(85), z.number().min(20).max(85)]).default([40, 50]),
 });

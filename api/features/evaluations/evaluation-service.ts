@@ -52,12 +52,11 @@ export class EvaluationService {
   }
 
   private compute(request: EvaluationRequest, ground: readonly Ground[]): { storm: Storm; scores: SiteScores } {
-    const { intensity, anchor, mesovortices, timeStepS, innerTimeStepS } = request.options;
     const asksForLand = request.track.some(({ hoursInland }) => hoursInland === null);
     try {
       const storm = prepareStorm(
         request.track.map(engineFix),
-        { intensity, anchor, mesovortices, timeStepS, innerTimeStepS },
+        request.options,
         asksForLand ? this.land() : null,
       );
       return { storm, scores: scoreSites(storm, batchOf(request.sites, ground), REFERENCE_CURVE) };

@@ -28,12 +28,14 @@ export const inputsDigest = ({ edition, tracks, calibration, curveSet, options }
         calibration.digest,
         curveSet.digest,
         [options.mesovortices, options.intensity, options.anchor, options.gustThresholdsMs],
+        ...(options.wind ? [options.wind] : []),
       ]),
     )
     .digest('hex');
 
-export const chainOptions = ({ mesovortices, intensity, anchor }: RunOptions): ChainOptions => ({
+export const chainOptions = ({ mesovortices, intensity, anchor, wind }: RunOptions): ChainOptions => ({
   ...DEFAULT_OPTIONS,
+  ...wind,
   mesovortices,
   intensity,
   anchor,

@@ -1,0 +1,263 @@
+import { z } from 'zod';
+import { Currency, Id, Instant, Minor, Notice } from './common.ts';
+import { endpoint } from './endpoint.ts';
+import { EvaluationSite, MOST_EVALUATED_SITES } from './evaluations.ts';
+import { UNDERWRITERS } from './roles.ts';
+import { Anchor, Intensity } from './scenarios.ts';
+import { WindChoices } from './wind-choices.ts';
+
+/** Everything about the chain that a person may set, around which one switch at a time is tried. */
+export const ChainSettings = z.strictObject({
+  intensity: Intensity.default('pressure'),
+  anchor: Anchor.default('auto'),
+  mesovortices: z.boolean().default(true),
+  wind: WindChoices.prefault({}),
+});
+export type ChainSettings = z.infer<typeof ChainSettings>;
+
+const ScenarioParams = z.object({ scenarioId: Id });
+/** The latest version when left out. */
+const Version = z.int().min(1).optional();
+
+/** Strongest gust at any of the sites: plain, and 5, 50, 95 % over the draws of the event [m/s]. */
+const GustRange = z.object({ plain: z.number(), p5: z.number(), p50: z.number(), p95: z.number() });
+const Money = z.object({ plain: Minor, p5: Minor, p50: Minor, p95: Minor, mean: Minor });
+
+/** Sites come from an edition (the largest values within reach) or with the request; not both. */
+export const SpreadRequest = z
+  .strictObject({
+    version: Version,
+    editionId: Id.optional(),
+    sites: z.array(EvaluationSite).min(1).max(MOST_EVALUATED_SITES).optional(),
+    curveSetId: Id.optional(),
+    settings: ChainSettings.prefault({}),
+  })
+  .refine(({ editionId, sites }) => (editionId === undefined) !== (sites === undefined), {
+    path: ['editionId'],
+    message: 'Give either an edition or a list of sites.',
+  });
+export type SpreadRequest = z.infer<typeof SpreadRequest>;
+
+/** One switch tried alone; `choice` names a wind choice or a setting of the chain. */
+export const SpreadRow = z.object({
+  choice: z.string(),
+  title: z.string(),
+  from: z.object({ value: z.string(), title: z.string() }),
+  to: z.object({ value: z.string(), title: z.string(), source: z.string() }),
+  peakGustMs: GustRange.nullable(),
+  /** Change of the centre (the median over draws; plain where the layer is off). */
+  peakGustChangeMs: z.number().nullable(),
+  grossMinor: Money.nullable(),
+  grossChangeMinor: Minor.nullable(),
+  /** Why a switch has no effect here, or why it can’t be computed; null when it changes something. */
+  reason: z.string().nullable(),
+});
+export type SpreadRow = z.infer<typeof SpreadRow>;
+
+export const SpreadReply = z.object({
+  engineVersion: z.string(),
+  scenario: z.object({ id: Id, name: z.string(), version: z.int() }),
+  settings: ChainSettings,
+  sites: z.object({ used: z.int(), of: z.int(), rule: z.string() }),
+  /** Null when the sites came without an edition. */
+  currency: Currency.nullable(),
+  curve: z.string(),
+  base: z.object({
+    peakGustMs: GustRange,
+    strongestSite: z.string(),
+    grossMinor: Money.nullable(),
+  }),
+  /** Widest change of the event’s gross first, then of the peak gust; those without effect last. */
+  rows: z.array(SpreadRow),
+  /** Both readings of the strongest fix. */
+  intensity: z.object({
+    fix: z.int(),
+    centralPressureHpa: z.number(),
+    pressure: z.object({ maxWindMs: z.number(), radiusOfMaxWindM: z.number(), shapeB: z.number() }).nullable(),
+    wind: z.object({ maxWindMs: z.number(), radiusOfMaxWindM: z.number(), shapeB: z.number() }).nullable(),
+    /** B of the relation, beside which the B of the reported wind is judged. */
+    relationB: z.number(),
+    differ: z.boolean(),
+  }),
+  notices: z.array(Notice),
+});
+export type SpreadReply = z.infer<typeof SpreadReply>;
+
+export const spread = endpoint({
+  id: 'spread',
+  method: 'post',
+  path: '/scenarios/:scenarioId/spread',
+  summary: 'What each setting does, changed alone, at up to 200 sites; free, exploratory, stored nowhere',
+  access: UNDERWRITERS,
+  params: ScenarioParams,
+  body: SpreadRequest,
+  response: SpreadReply,
+  status: 200,
+});
+
+/** Most points along one side of the picture. */
+export const MOST_FIELD_POINTS = 121;
+
+export const WindFieldRequest = z.strictObject({
+  version: Version,
+  /** Between the first and the last fix. */
+  time: Instant,
+  settings: ChainSettings.prefault({}),
+  /** Half the side of the picture [m]. */
+  halfWidthM: z.number().min(20_000).max(600_000).default(200_000),
+  /** Points along one side; odd, so that one is the centre. */
+  points: z
+    .int()
+    .min(11)
+    .max(MOST_FIELD_POINTS)
+    .refine((n) => n % 2 === 1, 'Give an odd number.')
+    .default(81),
+});
+export type WindFieldRequest = z.infer<typeof WindFieldRequest>;
+
+export const WindFieldReply = z.object({
+  engineVersion: z.string(),
+  scenario: z.object({ id: Id, name: z.string(), version: z.int() }),
+  firstTime: Instant,
+  lastTime: Instant,
+  time: Instant,
+  settings: ChainSettings,
+  state: z.object({
+    latitude: z.number(),
+    longitude: z.number(),
+    headingDeg: z.number(),
+    translationMs: z.number(),
+    hemisphere: z.enum(['north', 'south']),
+    maxWindMs: z.number(),
+    radiusOfMaxWindM: z.number(),
+    shapeB: z.number(),
+    pressureDeficitPa: z.number(),
+    hoursInland: z.number(),
+  }),
+  /** Over open sea, along rays to the right and left of the motion, ahead and astern, and the mean around the circle. */
+  profile: z.object({
+    radiusM: z.array(z.number()),
+    gradientMs: z.array(z.number()),
+    meanMs: z.array(z.number()),
+    rightMs: z.array(z.number()),
+    leftMs: z.array(z.number()),
+    aheadMs: z.array(z.number()),
+    asternMs: z.array(z.number()),
+  }),
+  /** Rows from north to south, points from west to east, square in metres about the centre. */
+  field: z.object({
+    halfWidthM: z.number(),
+    points: z.int(),
+    /** 10-min wind at 10 m over open sea [m/s], direction it comes FROM [deg], 3-s gust over open sea [m/s]. */
+    seaWindMs: z.array(z.number()),
+    directionDeg: z.array(z.number()),
+    gustMs: z.array(z.number()),
+  }),
+  notices: z.array(Notice),
+});
+export type WindFieldReply = z.infer<typeof WindFieldReply>;
+
+export const windField = endpoint({
+  id: 'windField',
+  method: 'post',
+  path: '/scenarios/:scenarioId/wind-field',
+  summary: 'Radial profile and wind field over open sea at one time of a track; stored nowhere',
+  access: UNDERWRITERS,
+  params: ScenarioParams,
+  body: WindFieldRequest,
+  response: WindFieldReply,
+  status: 200,
+});
+
+/** How a track is changed; what is left out stays. */
+export const TrackChange = z.strictObject({
+  /** Sideways, to the right of the motion when positive [km]. */
+  offsetKm: z.number().min(-500).max(500).default(0),
+  /** Turns the whole track about its first fix, clockwise when positive [deg]. */
+  headingDeg: z.number().min(-60).max(60).default(0),
+  /** Times the maximum wind; the pressure deficit moves with its square. */
+  windFactor: z.number().min(0.5).max(1.5).default(1),
+  /** Times the forward speed, from the first fix on. */
+  speedFactor: z.number().min(0.4).max(2.5).default(1),
+  /** Times the radius of maximum wind and every wind radius. */
+  radiusFactor: z.number().min(0.4).max(2.5).default(1),
+});
+export type TrackChange = z.infer<typeof TrackChange>;
+
+/** Spread of an ensemble, one standard deviation each; the members follow from the seed. */
+export const EnsembleRequest = z.strictObject({
+  seed: z.int().min(0).max(2_147_483_647),
+  members: z.int().min(2).max(20),
+  offsetKm: z.number().min(0).max(200).default(0),
+  headingDeg: z.number().min(0).max(30).default(0),
+  /** Of the natural logarithm of each factor. */
+  windLog: z.number().min(0).max(0.3).default(0),
+  speedLog: z.number().min(0).max(0.5).default(0),
+  radiusLog: z.number().min(0).max(0.6).default(0),
+});
+export type EnsembleRequest = z.infer<typeof EnsembleRequest>;
+
+/** What a variant was made from; kept with it and shown on every output. */
+export const Derivation = z.object({
+  scenarioId: Id,
+  name: z.string(),
+  version: z.int(),
+  change: TrackChange,
+  ensemble: z.object({ seed: z.int(), member: z.int(), members: z.int(), spread: EnsembleRequest }).nullable(),
+});
+export type Derivation = z.infer<typeof Derivation>;
+
+export const VariantsRequest = z
+  .strictObject({
+    version: Version,
+    changes: z.array(TrackChange).min(1).max(20).optional(),
+    ensemble: EnsembleRequest.optional(),
+  })
+  .refine(({ changes, ensemble }) => (changes === undefined) !== (ensemble === undefined), {
+    path: ['changes'],
+    message: 'Give either changes or an ensemble.',
+  });
+export type VariantsRequest = z.infer<typeof VariantsRequest>;
+
+export const Variant = z.object({
+  name: z.string(),
+  change: TrackChange,
+  /** Continuous longitudes, [longitude, latitude]. */
+  path: z.array(z.tuple([z.number(), z.number()])),
+  maxWindMs: z.number(),
+  /** First crossing from sea onto land; null when there is none. */
+  landfall: z.object({ time: Instant, latitude: z.number(), longitude: z.number(), maxWindMs: z.number() }).nullable(),
+  /** Set when the variant was saved. */
+  scenarioId: Id.nullable(),
+});
+export type Variant = z.infer<typeof Variant>;
+export const VariantsReply = z.object({
+  base: Variant,
+  variants: z.array(Variant),
+  notices: z.array(Notice),
+});
+export type VariantsReply = z.infer<typeof VariantsReply>;
+
+export const previewVariants = endpoint({
+  id: 'previewVariants',
+  method: 'post',
+  path: '/scenarios/:scenarioId/variants/preview',
+  summary: 'Changed copies of a track, or a seeded ensemble, without saving',
+  access: UNDERWRITERS,
+  params: ScenarioParams,
+  body: VariantsRequest,
+  response: VariantsReply,
+  status: 200,
+});
+export const saveVariants = endpoint({
+  id: 'saveVariants',
+  method: 'post',
+  path: '/scenarios/:scenarioId/variants',
+  summary: 'Save changed copies of a track, each as a scenario of its own that names what it was made from',
+  access: UNDERWRITERS,
+  idempotent: true,
+  params: ScenarioParams,
+  body: VariantsRequest,
+  response: VariantsReply,
+  status: 201,
+});
