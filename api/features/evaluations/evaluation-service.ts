@@ -54,11 +54,7 @@ export class EvaluationService {
   private compute(request: EvaluationRequest, ground: readonly Ground[]): { storm: Storm; scores: SiteScores } {
     const asksForLand = request.track.some(({ hoursInland }) => hoursInland === null);
     try {
-      const storm = prepareStorm(
-        request.track.map(engineFix),
-        request.options,
-        asksForLand ? this.land() : null,
-      );
+      const storm = prepareStorm(request.track.map(engineFix), request.options, asksForLand ? this.land() : null);
       return { storm, scores: scoreSites(storm, batchOf(request.sites, ground), REFERENCE_CURVE) };
     } catch (error) {
       if (!(error instanceof DomainError)) throw error;
