@@ -1,11 +1,20 @@
 /** Every URL of the client; nobody writes one by hand. */
-const withQuery = (path: string, query: Record<string, string | undefined>) => {
+const withQuery = (path: string, query: Record<string, string | readonly string[] | undefined>) => {
   const search = new URLSearchParams();
-  for (const [key, value] of Object.entries(query)) if (value !== undefined) search.set(key, value);
+  for (const [key, value] of Object.entries(query))
+    for (const one of value === undefined ? [] : [value].flat()) search.append(key, one);
   return search.size === 0 ? path : `${path}?${search.toString()}`;
 };
 
 export type IntakeStep = 'columns' | 'checks' | 'readiness' | 'sites';
+export type ScenarioTab = 'track' | 'variants' | 'settings' | 'wind-field';
+/** What a view of a scenario shows; `set` names each setting that isn’t the default, as "key.value". */
+export interface ScenarioView {
+  tab?: ScenarioTab;
+  set?: readonly string[];
+  edition?: string;
+  time?: string;
+}
 export type RunTab = 'overview' | 'sites' | 'map' | 'slip';
 
 export const paths = {
@@ -18,7 +27,7 @@ export const paths = {
   edition: (editionId: string, step?: IntakeStep) => withQuery(`/editions/${editionId}`, { step }),
   scenarios: () => '/scenarios',
   newScenario: () => '/scenarios/new',
-  scenario: (scenarioId: string) => `/scenarios/${scenarioId}`,
+  scenario: (scenarioId: string, view: ScenarioView = {}) => withQuery(`/scenarios/${scenarioId}`, { ...view }),
   runs: () => '/runs',
   newRun: (from: { edition?: string; scenario?: string; quote?: string } = {}) => withQuery('/runs/new', from),
   run: (runId: string, view: { tab?: RunTab; scenario?: string; site?: string } = {}) =>

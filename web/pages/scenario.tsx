@@ -1,7 +1,7 @@
 import { useRef, useState } from 'react';
 import { useQueryClient, useSuspenseQuery } from '@tanstack/react-query';
 import { Pencil, Play, RefreshCw, Save, Undo2 } from 'lucide-react';
-import { useParams, type LoaderFunctionArgs } from 'react-router-dom';
+import { useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
 import { TRACK_WRITERS, UNDERWRITERS } from '#contract/roles.ts';
 import type { ScenarioVersion } from '#contract/scenarios.ts';
 import { ApiError } from '../api/api-error.ts';
@@ -15,11 +15,12 @@ import { useDraft } from '../features/scenarios/use-draft.ts';
 import { holdsOneOf, useSession } from '../features/session/session-queries.ts';
 import { utc } from '../lib/dates.ts';
 import { counted } from '../lib/numbers.ts';
-import { paths } from '../paths.ts';
+import { paths, type ScenarioTab } from '../paths.ts';
 import { queryClient } from '../query-client.ts';
 import { Button, ButtonLink } from '../ui/button.tsx';
 import { Chip } from '../ui/chip.tsx';
 import { Page } from '../ui/page.tsx';
+import { Tabs } from '../ui/tabs.tsx';
 
 export { RouteError as ErrorBoundary } from './route-error.tsx';
 
@@ -28,6 +29,8 @@ export const loader = async ({ params }: LoaderFunctionArgs) => {
   await queryClient.fetchQuery({ ...scenarioQuery(params.scenarioId!), staleTime: 0 });
   return null;
 };
+
+const TABS: readonly { tab: ScenarioTab; label: string }[] = [{ tab: 'track', label: 'Track' }];
 
 export function Component() {
   const { scenarioId } = useParams();
@@ -40,6 +43,8 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
   const [base, setBase] = useState(fetched);
   const { draft, change, undo, reset, canUndo, isDirty } = useDraft(draftOf(base.track));
   const [sortByTime, setSortByTime] = useState(false);
+  const [search] = useSearchParams();
+  const tab = TABS.find((one) => one.tab === search.get('tab'))?.tab ?? 'track';
   const session = useSession();
   const client = useQueryClient();
   const canWrite = holdsOneOf(session, TRACK_WRITERS);
@@ -130,14 +135,31 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
           />
         </div>
       )}
-      <TrackEditor
-        draft={draft}
-        change={change}
-        sortByTime={sortByTime}
-        onSortByTime={setSortByTime}
-        readOnly={!canWrite}
-        fileName={`${base.name}-v${base.number}`}
-      />
+      {TABS.length > 1 && (
+        <Tabs
+          label="Views of this scenario"
+          tabs={TABS.map((one) => ({
+            to: paths.scenario(base.scenarioId, {
+              tab: one.tab === 'track' ? undefined : one.tab,
+              set: search.getAll('set'),
+              edition: search.get('edition') ?? undefined,
+              time: search.get('time') ?? undefined,
+            }),
+            label: one.label,
+            current: one.tab === tab,
+          }))}
+        />
+      )}
+      {tab === 'track' && (
+        <TrackEditor
+          draft={draft}
+          change={change}
+          sortByTime={sortByTime}
+          onSortByTime={setSortByTime}
+          readOnly={!canWrite}
+          fileName={`${base.name}-v${base.number}`}
+        />
+      )}
     </Page>
   );
 }
