@@ -3,6 +3,7 @@ import { useQuery } from '@tanstack/react-query';
 import { Minus, Plus } from 'lucide-react';
 import { failureOf } from '../../../api/failure.ts';
 import { useDelayed } from '../../../lib/use-delayed.ts';
+import { useSettled } from '../../../lib/use-settled.ts';
 import { TrackChart } from '../../../ui/charts/track-chart.tsx';
 import { Button } from '../../../ui/button.tsx';
 import { Card } from '../../../ui/card.tsx';
@@ -18,7 +19,7 @@ import {
   withoutFix,
   type TrackDraft,
 } from '../track-draft.ts';
-import { useSettled } from '../use-settled.ts';
+
 import type { ChangeDraft } from '../use-draft.ts';
 import { DeclarationsStrip } from './declarations-strip.tsx';
 import { FindingsList } from './findings-list.tsx';
