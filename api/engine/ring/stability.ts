@@ -1,4 +1,5 @@
 import { DomainError } from '../errors.ts';
+import { ringVorticity, SHOULDER_SHARE, smoothRingRotation } from './profile.ts';
 
 /** Growth rates below this share of the ring's average vorticity count as stable [1]. */
 export const GROWTH_FLOOR = 0.02;
@@ -13,8 +14,6 @@ export const DEFAULT_EYE_RATIO = 0.2;
 const RADIUS_RATIO_RANGE = [0.55, 0.9] as const;
 /** Range of eye vorticity over average vorticity in which the solver is used [1]. */
 const EYE_RATIO_RANGE = [0, 0.9] as const;
-/** Half width of each smooth shoulder over the ring width [1]. */
-const SHOULDER_SHARE = 0.375;
 
 const NODES_PER_SHOULDER = 48;
 // Counting line a little under the floor, so that a mode sitting on the floor is counted and then judged by its own value.
@@ -146,8 +145,8 @@ export function ringNodes(
   if (!(half > 0 && shoulderShare <= 0.5 && delta > half)) {
     throw new DomainError('delta', delta, 'such that both shoulders lie between the axis and each other');
   }
-  const eye = gamma;
-  const ring = (1 - gamma * delta * delta) / (1 - delta * delta);
+  const shape = { delta, gamma };
+  const ring = ringVorticity(shape);
   const count = 2 * nodesPerShoulder;
   const radius = new Float64Array(count);
   const spacing = new Float64Array(count).fill((2 * half) / nodesPerShoulder);
@@ -158,22 +157,10 @@ export function ringNodes(
     const s = ((i % nodesPerShoulder) + 0.5) / nodesPerShoulder;
     const r = (outer ? 1 : delta) + half * (2 * s - 1);
     radius[i] = r;
-    gradient[i] = ((outer ? -ring : ring - eye) * 6 * s * (1 - s)) / (2 * half);
-    const inner = shoulderMoment(r, delta, half);
-    rotation[i] = (eye * inner + ring * (shoulderMoment(r, 1, half) - inner)) / (r * r);
+    gradient[i] = ((outer ? -ring : ring - gamma) * 6 * s * (1 - s)) / (2 * half);
+    rotation[i] = smoothRingRotation(r, shape, shoulderShare);
   }
   return { radius, spacing, gradient, rotation };
-}
-
-/** Integral of x S(x) from 0 to r for a falling shoulder S of half width d around rc. */
-function shoulderMoment(r: number, rc: number, d: number): number {
-  const lo = rc - d;
-  if (r <= lo) return (r * r) / 2;
-  const s = Math.min((r - lo) / (2 * d), 1);
-  const s2 = s * s;
-  return (
-    (lo * lo) / 2 + 2 * d * (lo * (s - s * s2 + (s2 * s2) / 2) + 2 * d * (s2 / 2 - 0.75 * s2 * s2 + 0.4 * s2 * s2 * s))
-  );
 }
 
 /**
