@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import type { Calibration, CalibrationSettings, CurveSet } from '#contract/models.ts';
+import type { Calibration, CurveSet } from '#contract/models.ts';
 import type { RunOptions } from '#contract/runs.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import { DEFAULT_OPTIONS, type ChainOptions } from '#engine/track/options.ts';
@@ -40,17 +40,6 @@ export const chainOptions = ({ mesovortices, intensity, anchor, wind }: RunOptio
   intensity,
   anchor,
 });
-
-/** The calibration's ring where a fix leaves its own open. */
-export const fixesWithRing = (
-  fixes: readonly TrackFix[],
-  { ringWidthFraction, eyeVorticityRatio }: CalibrationSettings,
-): TrackFix[] =>
-  fixes.map((fix) => ({
-    ...fix,
-    ringWidthFraction: fix.ringWidthFraction ?? ringWidthFraction,
-    eyeVorticityRatio: fix.eyeVorticityRatio ?? eyeVorticityRatio,
-  }));
 
 /** Where the options of a run leave what the calibration was signed for, in words; empty when they don't. */
 export const departures = (

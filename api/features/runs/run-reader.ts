@@ -1,9 +1,10 @@
 import type { Notice } from '#contract/common.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
+import { fixesWithRing } from '../../compute/ring-defaults.ts';
 import { AppError, notFound } from '../../errors.ts';
 import type { Tx } from '../../transact.ts';
-import { chainOptions, fixesWithRing } from './run-inputs.ts';
+import { chainOptions } from './run-inputs.ts';
 import type { Models, Tracks } from './run-ports.ts';
 import type { RunStore } from './run-store.ts';
 import { runNotices } from './run-view.ts';

@@ -4,7 +4,8 @@ import { eventSummary, SITE_BELOW_FLOOR, SITE_OUT_OF_REACH } from '#engine/footp
 import { DRAW_COUNT } from '#engine/ring/draws.ts';
 import type { ResolvedFix } from '#engine/track/fixes.ts';
 import type { Storm } from '#engine/track/storm.ts';
-import { toCents, type ScoredSite, type ScoredSites } from './scored-sites.ts';
+import { toCents } from '../../compute/minor-units.ts';
+import type { ScoredSite, ScoredSites } from './scored-sites.ts';
 
 const BIN_MS = 5;
 const FIRST_BIN_MS = 20;

@@ -5,11 +5,12 @@ import type { Storm } from '#engine/track/storm.ts';
 import type { DamageCurve } from '#engine/loss/damage-curve.ts';
 import { EngineRefusal, type EnginePool } from '../../compute/pool.ts';
 import { CHUNK_SITES } from '../../compute/protocol.ts';
+import { fixesWithRing } from '../../compute/ring-defaults.ts';
 import type { Job, Queue } from '../../jobs/queue.ts';
 import type { Clock } from '../../ports/clock.ts';
 import type { Transact, Tx } from '../../transact.ts';
 import type { RunClosing } from './run-closing.ts';
-import { chainOptions, fixesWithRing, setUpRemarks } from './run-inputs.ts';
+import { chainOptions, setUpRemarks } from './run-inputs.ts';
 import type {
   AuditTrail,
   Editions,

@@ -2,13 +2,8 @@ import { createHash } from 'node:crypto';
 import type { SiteBatch, SiteScores } from '#engine/footprint/site-peaks.ts';
 import { DRAW_COUNT } from '#engine/ring/draws.ts';
 import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
+import { MINOR_PER_UNIT, toCents } from '../../compute/minor-units.ts';
 import type { RunSite } from './run-ports.ts';
-
-export const MINOR_PER_UNIT = 100;
-
-/** Half-up to the minor unit; null where there is no loss to speak of. */
-export const toCents = (amount: number): number | null =>
-  Number.isNaN(amount) ? null : Math.floor(amount * MINOR_PER_UNIT + 0.5);
 
 const numberOrNull = (value: number): number | null => (Number.isNaN(value) ? null : value);
 
