@@ -7,9 +7,9 @@ export type ChoiceValue = {
   readonly source: string;
 };
 
-/** A choice among published relations; the first value is the default. */
-export type WindChoice = {
-  readonly key: keyof WindChoices;
+/** Something that can be chosen; the first value is the default. */
+export type Choice<Key extends string> = {
+  readonly key: Key;
   readonly title: string;
   /** What the choice decides, in one sentence. */
   readonly meaning: string;
@@ -17,6 +17,8 @@ export type WindChoice = {
   readonly reason: string;
   readonly values: readonly ChoiceValue[];
 };
+/** A choice among published relations. */
+export type WindChoice = Choice<keyof WindChoices>;
 
 const oneOf = <const T extends readonly [string, ...string[]]>(values: T) =>
   z.enum(values, `Available: ${values.join(', ')}.`).default(values[0] as z.core.util.NoUndefined<T[number]>);
