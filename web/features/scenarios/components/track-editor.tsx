@@ -19,7 +19,6 @@ import {
   withoutFix,
   type TrackDraft,
 } from '../track-draft.ts';
-
 import type { ChangeDraft } from '../use-draft.ts';
 import { DeclarationsStrip } from './declarations-strip.tsx';
 import { FindingsList } from './findings-list.tsx';
