@@ -23,6 +23,13 @@ const SCALES = [
 
 const scaleOf = (units: number) => SCALES.find(({ from }) => Math.abs(units) >= from) ?? SCALES[3];
 
+/** One scale for a whole column: minor units in one of its units, and the word its header carries. */
+export const columnScale = (largestMinor: number, currency: string) => {
+  const per = minorPerUnit(currency);
+  const { divisor, word } = scaleOf(largestMinor / per);
+  return { minor: divisor * per, header: [currency, word].filter(Boolean).join(' ') };
+};
+
 /** To the cent: prices, balances, charges. "USD 23.63" */
 export const exactMoney = (minor: number, currency: string): string => `${currency} ${exactAmount(minor, currency)}`;
 export const exactAmount = (minor: number, currency: string): string => {

@@ -27,6 +27,12 @@ export const range = (low: string, high: string): string => {
   return /^−/.test(low) || /^−/.test(high) ? `${low} to ${high}` : `${low}${EN_DASH}${high}`;
 };
 
+/** A change with its sign always written: "+ 13.4", "− 2.7"; "0" where it rounds to nothing. */
+export const signed = (value: number, decimals: number): string => {
+  const size = decimal(Math.abs(value), decimals);
+  return /[1-9]/.test(size) ? `${value < 0 ? '−' : '+'} ${size}` : '0';
+};
+
 /** Decimals that leave three significant figures, at most two of them after the point. */
 export const decimalsFor = (value: number): number => {
   const size = Math.abs(value);

@@ -12,6 +12,7 @@ import { TrackEditor } from '../features/scenarios/components/track-editor.tsx';
 import { scenarioQuery, useSaveVersion } from '../features/scenarios/scenario-queries.ts';
 import { draftOf, missingFrom, trackOf } from '../features/scenarios/track-draft.ts';
 import { useDraft } from '../features/scenarios/use-draft.ts';
+import { SPREAD_NOTE } from '../features/studies/spread-file.ts';
 import { holdsOneOf, useSession } from '../features/session/session-queries.ts';
 import { utc } from '../lib/dates.ts';
 import { counted } from '../lib/numbers.ts';
@@ -19,8 +20,11 @@ import { paths, type ScenarioTab } from '../paths.ts';
 import { queryClient } from '../query-client.ts';
 import { Button, ButtonLink } from '../ui/button.tsx';
 import { Chip } from '../ui/chip.tsx';
+import { Message } from '../ui/message.tsx';
 import { Page } from '../ui/page.tsx';
 import { Tabs } from '../ui/tabs.tsx';
+
+import { SettingsView } from './scenario-studies.tsx';
 
 export { RouteError as ErrorBoundary } from './route-error.tsx';
 
@@ -30,7 +34,10 @@ export const loader = async ({ params }: LoaderFunctionArgs) => {
   return null;
 };
 
-const TABS: readonly { tab: ScenarioTab; label: string }[] = [{ tab: 'track', label: 'Track' }];
+const TABS: readonly { tab: ScenarioTab; label: string }[] = [
+  { tab: 'track', label: 'Track' },
+  { tab: 'settings', label: 'Settings, one at a time' },
+];
 
 export function Component() {
   const { scenarioId } = useParams();
@@ -44,8 +51,10 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
   const { draft, change, undo, reset, canUndo, isDirty } = useDraft(draftOf(base.track));
   const [sortByTime, setSortByTime] = useState(false);
   const [search] = useSearchParams();
-  const tab = TABS.find((one) => one.tab === search.get('tab'))?.tab ?? 'track';
   const session = useSession();
+  const canStudy = holdsOneOf(session, UNDERWRITERS);
+  const wished = TABS.find((one) => one.tab === search.get('tab'))?.tab;
+  const tab = canStudy && wished ? wished : 'track';
   const client = useQueryClient();
   const canWrite = holdsOneOf(session, TRACK_WRITERS);
   const save = useSaveVersion(base.scenarioId);
@@ -76,6 +85,7 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
   return (
     <Page
       title={base.name}
+      note={tab === 'settings' ? SPREAD_NOTE : undefined}
       crumbs={[{ label: 'Scenarios', to: paths.scenarios() }, { label: base.name }]}
       sub={
         <>
@@ -135,7 +145,7 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
           />
         </div>
       )}
-      {TABS.length > 1 && (
+      {canStudy && (
         <Tabs
           label="Views of this scenario"
           tabs={TABS.map((one) => ({
@@ -150,6 +160,12 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
           }))}
         />
       )}
+      {tab !== 'track' && isDirty && (
+        <Message tone="caution" className="mb-3.5">
+          Your changes to the track aren’t saved yet. What stands here is that of version {base.number}.
+        </Message>
+      )}
+      {tab === 'settings' && <SettingsView version={base} />}
       {tab === 'track' && (
         <TrackEditor
           draft={draft}
