@@ -1,4 +1,5 @@
 import { ONE_MINUTE_OVER_TEN } from '../constants.ts';
+import type { WindOptions } from '../track/options.ts';
 
 /** Up to this radius the factor is that of the eyewall [m]. */
 export const INNER_RADIUS = 100_000;
@@ -8,6 +9,16 @@ export const OUTER_RADIUS = 700_000;
 export const INNER_FACTOR = 0.9 / ONE_MINUTE_OVER_TEN;
 /** The same in the outer vortex [1]. Source: Knaff et al. (2011), 1-min 0.75, from memory. */
 export const OUTER_FACTOR = 0.75 / ONE_MINUTE_OVER_TEN;
+/**
+ * Wind at 10 m over the mean of the lowest 500 m, both of the same averaging time; the mean is taken for the gradient
+ * wind and the factor holds at every radius [1]. Source: Powell, Vickery & Reinhold (2003), Nature 422, 279–283, from memory.
+ */
+export const POWELL_FACTOR = 0.78;
+/**
+ * 10-min wind at 10 m over gradient wind, at every radius [1]. Source: Holland, Belanger & Fritz (2010), Mon. Wea. Rev.
+ * 138, 4393–4401, from memory.
+ */
+export const HOLLAND_FACTOR = 0.8;
 
 /**
  * 10-min wind at 10 m over open sea as a share of the gradient wind.
@@ -21,3 +32,10 @@ export function surfaceFactor(r: number): number {
   if (r >= OUTER_RADIUS) return OUTER_FACTOR;
   return INNER_FACTOR + ((r - INNER_RADIUS) / (OUTER_RADIUS - INNER_RADIUS)) * (OUTER_FACTOR - INNER_FACTOR);
 }
+
+/** The published surface factors by name: radius [m] to 10-min wind at 10 m over open sea as a share of the gradient wind [1]. */
+export const SURFACE_FACTORS: Readonly<Record<WindOptions['surfaceFactor'], (r: number) => number>> = {
+  franklin: surfaceFactor,
+  'powell-2003': () => POWELL_FACTOR,
+  'holland-2010': () => HOLLAND_FACTOR,
+};
