@@ -35,6 +35,7 @@ import { EditionService } from './features/portfolios/edition-service.ts';
 import { EditionStore } from './features/portfolios/edition-store.ts';
 import { FixService } from './features/portfolios/fix-service.ts';
 import { IntakeStore } from './features/portfolios/intake-store.ts';
+import { LargestSitesReader } from './features/portfolios/largest-sites-reader.ts';
 import { offshoreFrom } from './features/portfolios/offshore.ts';
 import { PortfolioReader } from './features/portfolios/portfolio-reader.ts';
 import { portfolioRoutes } from './features/portfolios/portfolio-routes.ts';
@@ -45,6 +46,11 @@ import { SiteStore } from './features/portfolios/site-store.ts';
 import { UploadService } from './features/portfolios/upload-service.ts';
 import { evaluationRoutes } from './features/evaluations/evaluation-routes.ts';
 import { EvaluationService } from './features/evaluations/evaluation-service.ts';
+import { SpreadService } from './features/studies/spread-service.ts';
+import { studyRoutes } from './features/studies/study-routes.ts';
+import { WindFieldService } from './features/studies/wind-field-service.ts';
+import { ringRoutes } from './features/rings/ring-routes.ts';
+import { RingService } from './features/rings/ring-service.ts';
 import { resultRoutes } from './features/results/result-routes.ts';
 import { ResultService } from './features/results/result-service.ts';
 import { ResultStore } from './features/results/result-store.ts';
@@ -217,6 +223,19 @@ export const createContainer = (
   const scoreJob = new ScoreJob(runParts);
   const resultService = new ResultService({ ...runBase, tracks: new RunReader(runBase) });
 
+  // Studies
+  const curveStore = new CurveStore();
+  const calibrationStore = new CalibrationStore();
+  const studyParts = {
+    ...{ transact, pool, engineVersion, land: landIndex, tracks: runBase.tracks },
+    models: {
+      calibrations: calibrationStore.list.bind(calibrationStore),
+      curveSets: curveStore.list.bind(curveStore),
+    },
+    editions: new LargestSitesReader({ ...portfolioParts, portfolios: runBase.editions }),
+  };
+  const studies = { spreads: new SpreadService(studyParts), windFields: new WindFieldService(studyParts) };
+
   const routers: Router[] = [
     sessionRoutes(sessions, cookies, limitSignIn(limits)),
     portfolioRoutes(portfolioServices),
@@ -226,6 +245,8 @@ export const createContainer = (
     billingRoutes(billing),
     runRoutes(runServices),
     resultRoutes(resultService),
+    studyRoutes(studies, limitCompute(limits)),
+    ringRoutes(new RingService(engineVersion), limitCompute(limits)),
     evaluationRoutes(new EvaluationService(landIndex, engineVersion), limitCompute(limits)),
   ];
   const rawRouters: Router[] = [paymentWebhookRoutes(settlement)];

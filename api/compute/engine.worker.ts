@@ -13,7 +13,19 @@ import { prepareStorm, STATE, STATE_SIZE, type Storm } from '#engine/track/storm
 import { radians } from '#engine/units.ts';
 import { footprintBands } from './bands.ts';
 import { landIndex } from './land.ts';
-import type { Answer, ExplainTask, FootprintTask, ScoreTask, StopFlag, StormTask, Tasks } from './protocol.ts';
+import type {
+  Answer,
+  ExplainTask,
+  FootprintTask,
+  ScoreTask,
+  SpreadTask,
+  StopFlag,
+  StormTask,
+  Tasks,
+  WindFieldTask,
+} from './protocol.ts';
+import { computeSpread } from './spread.ts';
+import { windFieldAt } from './wind-field.ts';
 
 const STOPPED = { stopped: true } as const;
 const isStopped = (stop: StopFlag) => Atomics.load(stop, 0) !== 0;
@@ -81,6 +93,20 @@ export const explain = ({ fixes, options, site, gustsMs }: ExplainTask): Answer<
         notices: prepared.notices,
       },
     };
+  });
+
+export const spread = ({ base, trials, sites, stop }: SpreadTask): Answer<Tasks['spread']['reply']> =>
+  answer(() => {
+    if (isStopped(stop)) return STOPPED;
+    fillFetch(sites);
+    const reply = computeSpread(base, trials, sites, { land: landIndex(), shouldStop: () => isStopped(stop) });
+    return reply === null ? STOPPED : { reply };
+  });
+
+export const windField = ({ fixes, options, question, stop }: WindFieldTask): Answer<Tasks['windField']['reply']> =>
+  answer(() => {
+    if (isStopped(stop)) return STOPPED;
+    return { reply: windFieldAt(prepareStorm(fixes, options, landIndex()), question) };
   });
 
 const passingOf = ({ states, outer }: Storm, site: Site): Tasks['explain']['reply']['passing'] => {

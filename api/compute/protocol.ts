@@ -8,6 +8,8 @@ import type { DamageCurve } from '#engine/loss/damage-curve.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import type { Storm } from '#engine/track/storm.ts';
 import type { Bands, BandView } from './bands.ts';
+import type { SpreadBase, Trial, TrialResult } from './spread.ts';
+import type { WindField, WindFieldQuestion } from './wind-field.ts';
 
 /** Sites scored in one task. Fixed, and part of no setting: results must not depend on how many threads there are. */
 export const CHUNK_SITES = 2_000;
@@ -49,12 +51,26 @@ export type ExplainReply = {
   readonly notices: readonly EngineNotice[];
 };
 
+export type SpreadTask = {
+  readonly base: Trial;
+  /** Each is compared with the base, by itself. */
+  readonly trials: readonly Trial[];
+  /** NaN as the first of a site's eight fetches asks for the land polygons. */
+  readonly sites: SiteBatch;
+  readonly stop: StopFlag;
+};
+export type SpreadReply = { readonly base: SpreadBase; readonly trials: readonly TrialResult[] };
+
+export type WindFieldTask = StormTask & { readonly question: WindFieldQuestion; readonly stop: StopFlag };
+
 /** What a thread can be asked for: name → task and reply. */
 export type Tasks = {
   storm: { task: StormTask; reply: Storm };
   score: { task: ScoreTask; reply: SiteScores };
   footprint: { task: FootprintTask; reply: FootprintReply | null };
   explain: { task: ExplainTask; reply: ExplainReply };
+  spread: { task: SpreadTask; reply: SpreadReply };
+  windField: { task: WindFieldTask; reply: WindField };
 };
 
 /** A thread's answer; the engine's refusals travel as words, since error classes don't survive the journey. */

@@ -6,20 +6,18 @@ import {
   SITE_BELOW_FLOOR,
   SITE_OUT_OF_REACH,
   scoreSites,
-  type SiteBatch,
   type SiteScores,
 } from '#engine/footprint/site-peaks.ts';
 import { staysInEye } from '#engine/footprint/site-series.ts';
-import { fetchBySector, isLand, type LandIndex } from '#engine/geo/land.ts';
+import type { LandIndex } from '#engine/geo/land.ts';
 import { REFERENCE_CURVE } from '#engine/loss/damage-curve.ts';
 import { quantisedLoss } from '#engine/loss/draw-losses.ts';
-import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
 import type { ResolvedFix, TrackFix } from '#engine/track/fixes.ts';
 import { prepareStorm, type Storm } from '#engine/track/storm.ts';
 import { PA_PER_HPA } from '#engine/units.ts';
+import { batchOfSites, groundOf, type Ground } from '../../compute/asked-sites.ts';
 import { AppError } from '../../errors.ts';
 
-const OPEN_COUNTRY = 0.03;
 const WIDE_RANGE = 1.3;
 
 type Notice = EvaluationReply['notices'][number];
@@ -40,7 +38,7 @@ export class EvaluationService {
 
   /** The whole chain for one request; a result that can't be right refuses the request instead of being clipped. */
   evaluate(request: EvaluationRequest): EvaluationReply {
-    const ground = request.sites.map((site) => this.groundOf(site));
+    const ground = request.sites.map((site) => groundOf(site, this.land));
     const { storm, scores } = this.compute(request, ground);
     return {
       engineVersion: this.engineVersion(),
@@ -55,27 +53,11 @@ export class EvaluationService {
     const asksForLand = request.track.some(({ hoursInland }) => hoursInland === null);
     try {
       const storm = prepareStorm(request.track.map(engineFix), request.options, asksForLand ? this.land() : null);
-      return { storm, scores: scoreSites(storm, batchOf(request.sites, ground), REFERENCE_CURVE) };
+      return { storm, scores: scoreSites(storm, batchOfSites(request.sites, ground), REFERENCE_CURVE) };
     } catch (error) {
       if (!(error instanceof DomainError)) throw error;
       throw refusal(error, request.sites);
     }
-  }
-
-  /** What the request leaves open about the ground comes from the land polygons. */
-  private groundOf(site: Site): Ground {
-    const filled: Record<string, string> = {};
-    let roughness = site.roughnessLengthM;
-    if (roughness === undefined) {
-      const onLand = isLand(this.land(), site.latitude, site.longitude);
-      roughness = onLand ? OPEN_COUNTRY : null;
-      filled.roughnessLengthM = onLand ? 'open country, 0.03 m, assumed' : 'at sea: outside the land polygons';
-    }
-    if (roughness === null) return { roughness: NaN, fetch: new Float64Array(SECTOR_COUNT), filled };
-    if (site.fetchM !== null) return { roughness, fetch: Float64Array.from(site.fetchM), filled };
-    filled.fetchM = 'land polygons';
-    const fetch = fetchBySector(this.land(), site.latitude, site.longitude, new Float64Array(SECTOR_COUNT));
-    return { roughness, fetch, filled };
   }
 }
 
@@ -94,8 +76,6 @@ const refusal = (error: DomainError, sites: readonly Site[]): AppError => {
   return new AppError('invalid_request', `No result: ${message}`, { faults: [{ path, message }], cause: error });
 };
 
-type Ground = { roughness: number; fetch: Float64Array; filled: Record<string, string> };
-
 const pa = (hPa: number | null) => (hPa === null ? null : hPa * PA_PER_HPA);
 
 const engineFix = (fix: EvaluationRequest['track'][number]): TrackFix => ({
@@ -112,23 +92,6 @@ const engineFix = (fix: EvaluationRequest['track'][number]): TrackFix => ({
   eyeVorticityRatio: fix.eyeVorticityRatio,
   hoursInland: fix.hoursInland,
 });
-
-const batchOf = (sites: readonly Site[], ground: readonly Ground[]): SiteBatch => {
-  const column = (pick: (site: Site, i: number) => number) => Float64Array.from(sites, pick);
-  const fetchM = new Float64Array(SECTOR_COUNT * sites.length);
-  ground.forEach(({ fetch }, i) => fetchM.set(fetch, SECTOR_COUNT * i));
-  return {
-    count: sites.length,
-    latitude: column(({ latitude }) => latitude),
-    longitude: column(({ longitude }) => longitude),
-    roughnessM: column((_, i) => ground[i]!.roughness),
-    fetchM,
-    topographicFactor: column(({ topographicFactor }) => topographicFactor ?? 1),
-    value: column(({ value }) => value ?? NaN),
-    deductible: column(({ deductible }) => deductible ?? 0),
-    limit: column(({ limit }) => limit ?? Infinity),
-  };
-};
 
 const isoOf = (timeS: number) => new Date(Math.round(timeS * 1000)).toISOString();
 
@@ -160,7 +123,7 @@ const evaluatedFix = (fix: ResolvedFix): EvaluationReply['storm']['fixes'][numbe
 
 const evaluatedSite = (
   { siteRef, value }: Site,
-  filled: Record<string, string>,
+  filled: Readonly<Record<string, string>>,
   scores: SiteScores,
   i: number,
 ): EvaluatedSite => {

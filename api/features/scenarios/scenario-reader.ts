@@ -33,7 +33,7 @@ type Row = {
   path: [number, number][];
 };
 
-/** Answers runs: which tracks are these versions? */
+/** Answers runs and studies: which tracks are these versions? */
 export class ScenarioReader {
   /** In the order asked for; versions of other organisations and unknown ones are left out. */
   async versions(tx: Tx, orgId: string, ids: readonly string[]): Promise<RunTrack[]> {
@@ -69,5 +69,15 @@ export class ScenarioReader {
       ]),
     );
     return ids.flatMap((id) => found.get(id) ?? []);
+  }
+
+  /** The version with that number, the latest without one; null when the scenario or the version isn’t there. */
+  async version(tx: Tx, orgId: string, scenarioId: string, number?: number): Promise<RunTrack | null> {
+    const row = await tx('scenario_versions')
+      .where({ org_id: orgId, scenario_id: scenarioId, ...(number === undefined ? {} : { number }) })
+      .orderBy('number', 'desc')
+      .first<{ id: string } | undefined>('id');
+    const [version] = row ? await this.versions(tx, orgId, [row.id]) : [];
+    return version ?? null;
   }
 }

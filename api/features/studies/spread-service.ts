@@ -1,0 +1,162 @@
+import type { CurveSet } from '#contract/models.ts';
+import { INTENSITY_NOTICE } from '#contract/wind-choice-catalogue.ts';
+import { NOTICE_VERSION } from '#contract/notices.ts';
+import type { SpreadReply, SpreadRequest, SpreadRow } from '#contract/studies.ts';
+import type { LandIndex } from '#engine/geo/land.ts';
+import { REFERENCE_CURVE } from '#engine/loss/damage-curve.ts';
+import { PA_PER_HPA } from '#engine/units.ts';
+import type { Actor } from '../../actor.ts';
+import { EngineRefusal, type EnginePool } from '../../compute/pool.ts';
+import type { SpreadReply as Computed } from '../../compute/protocol.ts';
+import type { Outcome, TrialResult } from '../../compute/spread.ts';
+import { AppError, notFound } from '../../errors.ts';
+import type { Transact, Tx } from '../../transact.ts';
+import { factsOf, noEffectReason, type SpreadFacts } from './spread-reasons.ts';
+import { baseTrial, switchesOf, type Switch, type SwitchInputs } from './spread-switches.ts';
+import { StudyGate } from './study-gate.ts';
+import type { StudyEditions, StudyModels, StudyTracks } from './study-ports.ts';
+import { studySetup, type StudySetup } from './study-setup.ts';
+import { studiedSites } from './study-sites.ts';
+
+export interface SpreadParts {
+  transact: Transact;
+  tracks: StudyTracks;
+  models: StudyModels;
+  editions: StudyEditions;
+  land: () => LandIndex;
+  pool: EnginePool;
+  engineVersion: () => string;
+}
+
+type Curve = Pick<SwitchInputs, 'curve' | 'curveSetId'> & { words: string };
+
+/** What each setting does when it alone is changed. A spread is one long task of one thread, and one runs at a time. */
+export class SpreadService {
+  private readonly gate = new StudyGate(1, 4, 10);
+
+  constructor(private readonly parts: SpreadParts) {}
+
+  async spread(actor: Actor, scenarioId: string, request: SpreadRequest, signal: AbortSignal): Promise<SpreadReply> {
+    const { transact, pool, engineVersion } = this.parts;
+    const { settings } = request;
+    const { setup, sites, curve, approved } = await transact(actor, async (tx) => {
+      const setup = await studySetup(tx, actor.orgId, scenarioId, request.version, this.parts);
+      const sites = await studiedSites(tx, actor.orgId, request, setup.fixes, this.parts);
+      return { setup, sites, ...(await this.curves(tx, actor.orgId, request.curveSetId, setup)) };
+    });
+    const inputs = { settings, fixes: setup.fixes, ...curve, approved };
+    const switches = switchesOf(inputs);
+    const { roughnessM } = sites.batch;
+    const onLand = { roughnessM: roughnessM.slice() };
+    const task = { base: baseTrial(inputs), trials: switches.map(({ trial }) => trial), sites: sites.batch };
+    const computed = await this.gate.pass(signal, () => pool.run('spread', task, signal)).catch(refused);
+    const { outcome } = computed.base;
+    const facts = factsOf(settings, setup.fixes, onLand, computed.base);
+    const rows = switches.map((tried, i) => rowOf(tried, computed.trials[i]!, facts));
+    const intensity = intensityOf(computed);
+    const { track } = setup;
+    return {
+      engineVersion: engineVersion(),
+      scenario: { id: scenarioId, name: track.name, version: track.number },
+      settings,
+      sites: sites.said,
+      currency: sites.currency,
+      curve: curve.words,
+      base: {
+        peakGustMs: outcome.peakMs,
+        strongestSite: outcome.strongest === null ? '' : sites.refs[outcome.strongest]!,
+        grossMinor: outcome.grossMinor,
+      },
+      rows: ranked(rows),
+      intensity,
+      notices: [
+        ...(intensity.differ
+          ? [{ code: 'wind-and-pressure-differ', text: INTENSITY_NOTICE, version: NOTICE_VERSION }]
+          : []),
+        ...setup.notices,
+      ],
+    };
+  }
+
+  /** The one asked for; else the one the signed calibration is paired with, else an approved one, else the reference. */
+  private async curves(
+    tx: Tx,
+    orgId: string,
+    curveSetId: string | undefined,
+    { calibration }: StudySetup,
+  ): Promise<{ curve: Curve; approved: CurveSet[] }> {
+    const sets = await this.parts.models.curveSets(tx, orgId);
+    const approved = sets.filter(({ state }) => state === 'approved');
+    const asked = curveSetId === undefined ? undefined : sets.find(({ id }) => id === curveSetId);
+    if (curveSetId !== undefined && !asked) throw notFound('Curve set', curveSetId);
+    const set = asked ?? approved.find(({ id }) => id === calibration?.curveSetId) ?? approved[0];
+    const curve: Curve = set
+      ? { curve: set.curve, curveSetId: set.id, words: `${set.curve.name} (${set.name}, version ${set.version})` }
+      : {
+          curve: { ...REFERENCE_CURVE, name: 'Reference curve' },
+          curveSetId: null,
+          words: 'The reference curve: no curve set is approved',
+        };
+    return { curve, approved };
+  }
+}
+
+const refused = (error: unknown): never => {
+  if (!(error instanceof EngineRefusal)) throw error;
+  throw new AppError('invalid_request', `No result with these settings: ${error.message}.`, {
+    faults: [{ path: 'body.settings', message: error.message }],
+    cause: error,
+  });
+};
+
+const rowOf = (tried: Switch, result: TrialResult, facts: SpreadFacts): SpreadRow => {
+  const { choice, title, from, to } = tried;
+  const head = { choice, title, from, to: { value: to.value, title: to.title, source: to.source } };
+  if ('refused' in result) {
+    const reason = `Can’t be computed here: ${result.refused}.`;
+    return { ...head, peakGustMs: null, peakGustChangeMs: null, grossMinor: null, grossChangeMinor: null, reason };
+  }
+  const { outcome, sameGusts, sameLosses } = result;
+  const base = facts.base.outcome;
+  const peakGustChangeMs = outcome.peakMs.p50 - base.peakMs.p50;
+  const grossChangeMinor = grossChange(outcome, base);
+  return {
+    ...head,
+    peakGustMs: outcome.peakMs,
+    peakGustChangeMs,
+    grossMinor: outcome.grossMinor,
+    grossChangeMinor,
+    reason:
+      sameGusts && sameLosses
+        ? noEffectReason(tried, facts)
+        : peakGustChangeMs === 0 && (grossChangeMinor ?? 0) === 0
+          ? 'Changes something at some sites, but neither the strongest gust nor the event’s loss.'
+          : null,
+  };
+};
+
+const grossChange = (outcome: Outcome, base: Outcome): number | null =>
+  outcome.grossMinor && base.grossMinor ? outcome.grossMinor.p50 - base.grossMinor.p50 : null;
+
+/** Widest change of the loss first, then of the gust; those without effect come last, in the chain’s order. */
+const ranked = (rows: readonly SpreadRow[]): SpreadRow[] => {
+  const has = (row: SpreadRow) => (row.reason === null ? 1 : 0);
+  const gross = (row: SpreadRow) => Math.abs(row.grossChangeMinor ?? 0);
+  const gust = (row: SpreadRow) => Math.abs(row.peakGustChangeMs ?? 0);
+  return [...rows].sort((a, b) => has(b) - has(a) || gross(b) - gross(a) || gust(b) - gust(a));
+};
+
+const intensityOf = ({ base }: Computed): SpreadReply['intensity'] => {
+  const { fix, pressure, wind, relationB } = base.readings;
+  const said = base.storm.notices.some(
+    ({ code, text }) => code === 'wind-and-pressure-differ' && text.startsWith(`Fix ${fix + 1}:`),
+  );
+  return {
+    fix,
+    centralPressureHpa: base.storm.fixes[fix]!.centralPressurePa / PA_PER_HPA,
+    pressure,
+    wind,
+    relationB,
+    differ: said,
+  };
+};
