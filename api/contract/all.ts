@@ -3,6 +3,7 @@ import type { Endpoint } from './endpoint.ts';
 import * as evaluations from './evaluations.ts';
 import * as models from './models.ts';
 import * as portfolios from './portfolios.ts';
+import * as rings from './rings.ts';
 import * as runs from './runs.ts';
 import * as scenarios from './scenarios.ts';
 import * as session from './session.ts';
@@ -25,5 +26,6 @@ export const ALL_ENDPOINTS: readonly Endpoint[] = [
   runs,
   evaluations,
   studies,
+  rings,
   billing,
 ].flatMap((file) => Object.values<unknown>(file).filter(isEndpoint));

@@ -4,19 +4,23 @@ import { endpoint } from './endpoint.ts';
 import { UNDERWRITERS } from './roles.ts';
 import { ScenarioVersion } from './scenarios.ts';
 
-const between = (least: number, most: number, unit: string) =>
-  z
-    .number(`Give a number, ${least} to ${most}${unit}.`)
-    .min(least, `Give ${least} to ${most}${unit}.`)
-    .max(most, `Give ${least} to ${most}${unit}.`);
+/** A number within bounds; the fault names the quantity, what was seen, and the range. */
+const within = (name: string, least: number, most: number, unit: string) => {
+  const range = `${least} to ${most}${unit}`;
+  return z
+    .number({ error: ({ input }) => `${name} is ${input === undefined ? 'missing' : String(input)}. Give ${range}.` })
+    .refine((value) => value >= least && value <= most, {
+      error: ({ input }) => `${name} is ${String(input)}. Give ${range}.`,
+    });
+};
 
-/** An eyewall ring; `maxWindMs` is the axisymmetric 1-min maximum. */
+/** An eyewall ring; `maxWindMs` is the axisymmetric 1-min maximum. Widths and eye ratios are clamped to the solver’s range. */
 export const RingRequest = z.strictObject({
-  maxWindMs: between(10, 110, ' m/s'),
-  radiusOfMaxWindM: between(2_000, 200_000, ' m'),
-  ringWidthFraction: between(0.1, 0.45, ' of the radius').default(0.35),
-  eyeVorticityRatio: between(0, 0.9, '').default(0.2),
-  hoursInland: between(0, 1000, ' h').default(0),
+  maxWindMs: within('The maximum wind', 10, 120, ' m/s'),
+  radiusOfMaxWindM: within('The radius of maximum wind', 2_000, 200_000, ' m'),
+  ringWidthFraction: within('The ring width', 0.05, 1, ' of the radius of maximum wind').default(0.35),
+  eyeVorticityRatio: within('The eye’s vorticity over the average', 0, 1, '').default(0.2),
+  hoursInland: within('The time inland', 0, 1000, ' h').default(0),
 });
 export type RingRequest = z.infer<typeof RingRequest>;
 
@@ -102,13 +106,15 @@ export const stabilityMap = endpoint({
 
 /** How a breakdown is computed. */
 export const BreakdownRequest = RingRequest.omit({ hoursInland: true }).extend({
+  ringWidthFraction: within('The ring width', 0.1, 0.45, ' of the radius of maximum wind').default(0.35),
+  eyeVorticityRatio: within('The eye’s vorticity over the average', 0, 0.9, '').default(0.2),
   points: z.union([z.literal(64), z.literal(96), z.literal(128), z.literal(192), z.literal(256)]).default(128),
-  durationS: between(600, 48 * 3600, ' s').default(6 * 3600),
-  frameStepS: between(60, 6 * 3600, ' s').default(1800),
-  disturbance: between(0.0001, 0.2, '').default(0.01),
+  durationS: within('The duration', 600, 48 * 3600, ' s').default(6 * 3600),
+  frameStepS: within('The time between frames', 60, 6 * 3600, ' s').default(1800),
+  disturbance: within('The disturbance', 0.0001, 0.2, ' of the ring’s vorticity').default(0.01),
   seed: z.int().min(0).max(4_294_967_295).default(1),
   /** Time over which the ring is rebuilt, as heating does; null = left alone. */
-  relaxationS: between(600, 1_000_000, ' s').nullable().default(null),
+  relaxationS: within('The relaxation time', 600, 1_000_000, ' s').nullable().default(null),
   /** Vorticity of every frame, too; only with at most 25 frames and 128 points. */
   frames: z.boolean().default(false),
 });
@@ -149,8 +155,8 @@ export const breakdown = endpoint({
 /** Sets a ring at every fix of a track, as the next version. */
 export const RingToScenario = z.strictObject({
   basedOn: z.int(),
-  ringWidthFraction: RingRequest.shape.ringWidthFraction,
-  eyeVorticityRatio: RingRequest.shape.eyeVorticityRatio,
+  ringWidthFraction: within('The ring width', 0.1, 0.45, ' of the radius of maximum wind'),
+  eyeVorticityRatio: within('The eye’s vorticity over the average', 0, 0.9, ''),
 });
 export type RingToScenario = z.infer<typeof RingToScenario>;
 export const setRing = endpoint({
