@@ -8,6 +8,7 @@ import { editionChoicesQuery } from '../features/runs/run-queries.ts';
 import { editionChoices } from '../features/runs/run-setup.ts';
 import { readSettings, writeSettings } from '../features/studies/chain-settings.ts';
 import { SpreadTab } from '../features/studies/components/spread-tab.tsx';
+import { WindFieldTab } from '../features/studies/components/wind-field-tab.tsx';
 import { useDelayed } from '../lib/use-delayed.ts';
 import { ProblemNotice } from '../ui/problem.tsx';
 import { Skeleton } from '../ui/skeleton.tsx';
@@ -69,6 +70,20 @@ export function SettingsView({ version }: { version: ScenarioVersion }) {
       editions={editions}
       editionId={(wished ?? only)?.editionId ?? null}
       onEdition={(editionId) => put('edition', editionId)}
+      settings={settings}
+      onSettings={putSettings}
+    />
+  );
+}
+
+export function WindFieldView({ version }: { version: ScenarioVersion }) {
+  const { search, settings, put, putSettings } = useStudyAddress();
+  return (
+    <WindFieldTab
+      key={version.id}
+      version={version}
+      time={search.get('time')}
+      onTime={(time) => put('time', time)}
       settings={settings}
       onSettings={putSettings}
     />

@@ -24,7 +24,7 @@ import { Message } from '../ui/message.tsx';
 import { Page } from '../ui/page.tsx';
 import { Tabs } from '../ui/tabs.tsx';
 
-import { SettingsView } from './scenario-studies.tsx';
+import { SettingsView, WindFieldView } from './scenario-studies.tsx';
 
 export { RouteError as ErrorBoundary } from './route-error.tsx';
 
@@ -37,6 +37,7 @@ export const loader = async ({ params }: LoaderFunctionArgs) => {
 const TABS: readonly { tab: ScenarioTab; label: string }[] = [
   { tab: 'track', label: 'Track' },
   { tab: 'settings', label: 'Settings, one at a time' },
+  { tab: 'wind-field', label: 'Wind field' },
 ];
 
 export function Component() {
@@ -166,6 +167,7 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
         </Message>
       )}
       {tab === 'settings' && <SettingsView version={base} />}
+      {tab === 'wind-field' && <WindFieldView version={base} />}
       {tab === 'track' && (
         <TrackEditor
           draft={draft}

@@ -60,7 +60,7 @@ export function MapLegend({ view, levels, uncertain, run }: MapLegendProps) {
   );
 }
 
-function GustSteps() {
+export function GustSteps() {
   const { toUnit } = useUnits();
   const steps = GUST_EDGES_MS.length;
   return (
