@@ -1,5 +1,5 @@
 import { Router, type RequestHandler } from 'express';
-import { ring } from '#contract/rings.ts';
+import { ring, stabilityMap } from '#contract/rings.ts';
 import { handle } from '../../http/handle.ts';
 import type { RingService } from './ring-service.ts';
 
@@ -10,6 +10,10 @@ export const ringRoutes = (rings: RingService, limit: RequestHandler): Router =>
     ring.path,
     limit,
     handle(ring, ({ body }) => rings.describe(body)),
+  );
+  router.get(
+    stabilityMap.path,
+    handle(stabilityMap, () => rings.map()),
   );
   return router;
 };

@@ -1,7 +1,8 @@
 import { noticesFor } from '#contract/notices.ts';
-import type { RingReply, RingRequest } from '#contract/rings.ts';
+import type { RingReply, RingRequest, StabilityMap } from '#contract/rings.ts';
 import { describeRing } from '#engine/ring/description.ts';
 import { smoothRingRotation, smoothRingVorticity } from '#engine/ring/profile.ts';
+import { STABILITY_TABLE } from '#engine/ring/stability-table.ts';
 import { ringShape } from '#engine/ring/stability.ts';
 
 const POLYGONS = ['ellipse', 'triangle', 'square', 'pentagon', 'hexagon', 'heptagon', 'octagon', 'nonagon', 'decagon'];
@@ -63,6 +64,18 @@ export class RingService {
         ),
       },
       notices: noticesFor('life-safety', 'uncertainty', 'scope'),
+    };
+  }
+
+  map(): StabilityMap {
+    const { widthFraction, eyeRatio, growth, wavenumber, amplitude } = STABILITY_TABLE;
+    return {
+      engineVersion: this.engineVersion(),
+      widthFraction: [...widthFraction],
+      eyeRatio: [...eyeRatio],
+      growth: growth.map((row) => [...row]),
+      wavenumber: wavenumber.map((row) => row.map((m) => m || null)),
+      amplitude: amplitude.map((row) => [...row]),
     };
   }
 }
