@@ -66,10 +66,12 @@ const sameBits = (a: Float64Array | Uint8Array, b: Float64Array | Uint8Array): b
   return bytes(a).equals(bytes(b));
 };
 
-const isLoss = (column: string) => /^(gross|groundUp|damage|eventGross|eventGroundUp)/.test(column);
+const LOSSES = /^(gross|groundUp|eventGross|eventGroundUp)/;
+/** Gusts, times, directions and durations; damage ratios follow from them and the curve, and count as losses of values. */
+const GUSTS = /^(?!gross|groundUp|eventGross|eventGroundUp|damage)/;
 
-const same = (a: SiteScores, b: SiteScores, losses: boolean): boolean =>
-  Object.entries(a).every(([name, column]) => isLoss(name) !== losses || sameBits(column, b[name as keyof SiteScores]));
+const same = (a: SiteScores, b: SiteScores, columns: RegExp): boolean =>
+  Object.entries(a).every(([name, column]) => !columns.test(name) || sameBits(column, b[name as keyof SiteScores]));
 
 const centsOf = (column: Float64Array): number => column.reduce((sum, amount) => sum + (toCents(amount) ?? 0), 0);
 
@@ -154,8 +156,8 @@ export const computeSpread = (
       const tried = scoreSites(stormOf(trial), sites, trial.curve, { shouldStop });
       results.push({
         outcome: outcomeOf(tried),
-        sameGusts: same(scores, tried, false),
-        sameLosses: same(scores, tried, true),
+        sameGusts: same(scores, tried, GUSTS),
+        sameLosses: same(scores, tried, LOSSES),
       });
     } catch (error) {
       if (!(error instanceof DomainError)) throw error;
