@@ -28,6 +28,8 @@ const BODIES: Record<string, (ids: Record<string, string>) => object> = {
   sealEdition: () => ({ asAt: '2026-11-01', heldReason: 'As agreed', controlReason: 'As agreed' }),
   saveVersion: () => ({ track, basedOn: 1 }),
   createQuote: quoteOf,
+  spread: ({ editionId }) => ({ editionId }),
+  windField: () => ({ time: TRACK_FIX.time }),
 };
 /** Operations that take ids in their body only. */
 const IDS_IN_BODY = ['createQuote'];
