@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { knotsFromMs, msFromKnots } from '#engine/units.ts';
 import { coriolis } from '#engine/winds/coriolis.ts';
 import { hollandGradientWind } from '#engine/winds/holland-1980.ts';
-import { hollandSurfaceB, powellB, willoughbyRahnB } from '#engine/winds/holland-b.ts';
+import { hollandSurfaceB, powellB, vickeryWadheraB, willoughbyRahnB } from '#engine/winds/holland-b.ts';
 import { inflowAngle, zhangUhlhornInflow } from '#engine/winds/inflow.ts';
 import {
   knaffRadius,
@@ -28,6 +28,11 @@ import { expectPrinted } from '../helpers/printed.ts';
 const DENSITY = 1.15;
 /** Worked storm at 12 h: maximum 1-min wind 53 m/s, motion 6.736453 m/s, 36 km, 24.3 degrees, deficit 62 hPa; its gradient wind. */
 const GRADIENT_MAX = (53 / 1.05 - 0.55 * 6.736453) / (0.9 / 1.05);
+/** Maximum 1-min wind that a shape B gives that storm, with the default surface factor and motion. */
+const impliedMax = (b: number) => {
+  const gradient = hollandGradientWind(36_000, { rMax: 36_000, b, deficit: 6200, f: coriolis(24.3) });
+  return 1.05 * (surfaceFactor(36_000) * gradient + 0.55 * 6.736453);
+};
 const surfaceMax = (bs: number, deficit: number) => Math.sqrt((bs * deficit) / (DENSITY * Math.E));
 
 describe('shape parameter', () => {
@@ -51,10 +56,15 @@ describe('shape parameter', () => {
     // given the motion, though bs holds it already.
     const misusedB = bs / 0.64;
     expectPrinted(misusedB, '2.265');
-    const gradient = hollandGradientWind(36_000, { rMax: 36_000, b: misusedB, deficit: 6200, f: coriolis(24.3) });
-    const misused = 1.05 * (surfaceFactor(36_000) * gradient + 0.55 * 6.736453);
+    const misused = impliedMax(misusedB);
     expectPrinted(misused, '63.2');
     expectPrinted(misused / 53, '1.19');
+  });
+  it('decides the maximum wind of a storm known by its pressure', () => {
+    const vickeryWadhera = vickeryWadheraB(36_000, coriolis(24.3), 6200, 94_800);
+    expectPrinted(vickeryWadhera, '1.5419');
+    expectPrinted(impliedMax(vickeryWadhera), '52.7');
+    expectPrinted(impliedMax(powellB(36_000, 24.3)), '49.8');
   });
   it('refuses what Holland (2008) has no value for', () => {
     expect(() => hollandSurfaceB(21_500, 0, 25, 5)).toThrow('deficit');
