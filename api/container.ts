@@ -70,6 +70,8 @@ import { AccessClaims, TOKEN_ALGORITHM, TOKEN_ISSUER } from './features/session/
 import { sessionRoutes } from './features/session/session-routes.ts';
 import { SessionService } from './features/session/session-service.ts';
 import { SessionStore } from './features/session/session-store.ts';
+import { validationRoutes } from './features/validation/validation-routes.ts';
+import { ValidationService } from './features/validation/validation-service.ts';
 import { signInCheck } from './http/auth.ts';
 import { SessionCookies } from './http/cookies.ts';
 import { csrfCheck } from './http/csrf.ts';
@@ -248,6 +250,7 @@ export const createContainer = (
     studyRoutes(studies, limitCompute(limits)),
     ringRoutes(new RingService(engineVersion), limitCompute(limits)),
     evaluationRoutes(new EvaluationService(landIndex, engineVersion), limitCompute(limits)),
+    validationRoutes(new ValidationService()),
   ];
   const rawRouters: Router[] = [paymentWebhookRoutes(settlement)];
   const { sinkFolder } = config.mail;

@@ -8,6 +8,7 @@ import * as runs from './runs.ts';
 import * as scenarios from './scenarios.ts';
 import * as session from './session.ts';
 import * as studies from './studies.ts';
+import * as validation from './validation.ts';
 
 const isEndpoint = (value: unknown): value is Endpoint =>
   typeof value === 'object' &&
@@ -26,6 +27,7 @@ export const ALL_ENDPOINTS: readonly Endpoint[] = [
   runs,
   evaluations,
   studies,
+  validation,
   rings,
   billing,
 ].flatMap((file) => Object.values<unknown>(file).filter(isEndpoint));
