@@ -30,7 +30,12 @@ export type Passage = {
   readonly phaseSin: Float64Array;
   /** What is known of each outer time before the wind is computed, shape (outer times,). */
   readonly mark: Uint8Array;
+  /** Times at which the wind is to be computed, as indices into the series. */
+  readonly wanted: Int32Array;
 };
+
+/** A place as a unit vector. */
+export type UnitPlace = { readonly x: number; readonly y: number; readonly z: number };
 
 /**
  * Makes the working arrays for a storm.
@@ -53,6 +58,7 @@ export function makePassage(storm: Storm): Passage {
     phaseCos: new Float64Array(n),
     phaseSin: new Float64Array(n),
     mark: new Uint8Array(storm.outer.length),
+    wanted: new Int32Array(n),
   };
 }
 
@@ -81,21 +87,52 @@ export function followPassage(
   passage: Passage,
   floor = 0,
 ): number {
-  const { states, outer } = storm;
-  const { state, mark } = passage;
+  const place = unitPlace(latitude, longitude);
+  const quiet = Math.min(Math.floor(floor / greatestFactor(exposure)) - FIRST_QUIET_WIND, QUIET_WIND_COUNT - 1);
+  const count = layTimes(storm, place, quiet, passage);
+  const { wanted } = passage;
+  for (let i = 0; i < count; i++) wanted[i] = i;
+  windsAt(storm, place, exposure, passage, 0, count);
+  return count;
+}
+
+/**
+ * Unit vector of a site.
+ *
+ * @param latitude  [deg]
+ * @param longitude [deg]
+ * @returns The vector [1].
+ * @source Definition.
+ */
+export function unitPlace(latitude: number, longitude: number): UnitPlace {
   const phi = radians(latitude);
   const lambda = radians(longitude);
-  const px = Math.cos(phi) * Math.cos(lambda);
-  const py = Math.cos(phi) * Math.sin(lambda);
-  const pz = Math.sin(phi);
+  return { x: Math.cos(phi) * Math.cos(lambda), y: Math.cos(phi) * Math.sin(lambda), z: Math.sin(phi) };
+}
+
+/**
+ * Lists the times at which a storm is looked at from a site: outer times, and inner ones next to outer times at which
+ * the centre is near.
+ *
+ * @param storm   The storm.
+ * @param place   The site.
+ * @param quiet   Which of the storm's quiet distances to go by: outer times beyond it, and those before and after too,
+ *                are left out; negative = none is.
+ * @param passage Receives the states.
+ * @returns Number of times.
+ * @source Times of the chain.
+ */
+export function layTimes(storm: Storm, place: UnitPlace, quiet: number, passage: Passage): number {
+  const { states, outer } = storm;
+  const { state, mark } = passage;
+  const { x, y, z } = place;
   const last = outer.length - 1;
-  const quiet = Math.min(Math.floor(floor / greatestFactor(exposure)) - FIRST_QUIET_WIND, QUIET_WIND_COUNT - 1);
   const quietAt = quiet < 0 ? -1 : STATE.quietChord2 + quiet;
   for (let o = 0; o <= last; o++) {
     const at = outer[o]! * STATE_SIZE;
-    const dx = px - states[at]!;
-    const dy = py - states[at + 1]!;
-    const dz = pz - states[at + 2]!;
+    const dx = x - states[at]!;
+    const dy = y - states[at + 1]!;
+    const dz = z - states[at + 2]!;
     const chord2 = dx * dx + dy * dy + dz * dz;
     mark[o] = chord2 < states[at + 19]! ? NEAR : quietAt >= 0 && chord2 > states[at + quietAt]! ? QUIET : FAR;
   }
@@ -110,8 +147,29 @@ export function followPassage(
     const end = o === last ? first : outer[o + 1]!;
     for (let k = first + 1; k < end; k++) state[count++] = k;
   }
-  evaluate(states, storm.wavenumber ?? 0, px, py, pz, exposure, passage, count);
   return count;
+}
+
+/**
+ * Computes the wind at some of the times of a passage.
+ *
+ * @param storm    The storm.
+ * @param place    The site.
+ * @param exposure Ground around it.
+ * @param passage  Holds the states and which of them are wanted; receives the series there.
+ * @param from     First of the wanted times to compute.
+ * @param to       One beyond the last of them.
+ * @source The chain as footprint/wind-at.ts states it.
+ */
+export function windsAt(
+  storm: Storm,
+  place: UnitPlace,
+  exposure: Exposure,
+  passage: Passage,
+  from: number,
+  to: number,
+): void {
+  evaluate(storm.states, storm.wavenumber ?? 0, place, exposure, passage, from, to);
 }
 
 // Marks of outer times.
@@ -159,17 +217,18 @@ const PEAK = PEAK_FACTOR;
 function evaluate(
   states: Float64Array,
   wavenumber: number,
-  px: number,
-  py: number,
-  pz: number,
+  place: UnitPlace,
   exposure: Exposure,
   passage: Passage,
-  count: number,
+  from: number,
+  to: number,
 ): void {
-  const { state, gust, seaU, seaV, factor, meanFactor, crest, phaseCos, phaseSin } = passage;
+  const { x: px, y: py, z: pz } = place;
+  const { state, wanted, gust, seaU, seaV, factor, meanFactor, crest, phaseCos, phaseSin } = passage;
   const { isAtSea, isUniform, weights, landFactor, landTurbulence, topographicFactor } = exposure;
   const uniformWeight = weights[0]!;
-  for (let i = 0; i < count; i++) {
+  for (let k = from; k < to; k++) {
+    const i = wanted[k]!;
     const at = state[i]! * STATE_SIZE;
     const dx = px - states[at]!;
     const dy = py - states[at + 1]!;
@@ -188,7 +247,7 @@ function evaluate(
                 chord2 *
                   (3 / 640 +
                     chord2 *
-                      (5 / 7168 + chord2 * (35 / 294912 + chord2 * (63 / 2883584 + (chord2 * 231) / 54525952))))))
+                      (5 / 7168 + chord2 * (35 / 294912 + chord2 * (63 / 2883584 + chord2 * (231 / 54525952)))))))
         : 2 * Math.asin(Math.min(chord / 2, 1));
     const tangent = Math.sqrt(east * east + north * north);
     let r = EARTH_RADIUS * arc;
@@ -228,8 +287,9 @@ function evaluate(
     if (x < 1.2) {
       const angle = (x < 1 ? 10 + 10 * x : 25 * x - 5) * (Math.PI / 180);
       const a2 = angle * angle;
-      sinInflow = angle * (1 - (a2 / 6) * (1 - (a2 / 20) * (1 - (a2 / 42) * (1 - (a2 / 72) * (1 - a2 / 110)))));
-      cosInflow = 1 - (a2 / 2) * (1 - (a2 / 12) * (1 - (a2 / 30) * (1 - (a2 / 56) * (1 - (a2 / 90) * (1 - a2 / 132)))));
+      sinInflow = angle * (1 - a2 * (1 / 6 - a2 * (1 / 120 - a2 * (1 / 5040 - a2 * (1 / 362880 - a2 / 39916800)))));
+      cosInflow =
+        1 - a2 * (1 / 2 - a2 * (1 / 24 - a2 * (1 / 720 - a2 * (1 / 40320 - a2 * (1 / 3628800 - a2 / 479001600)))));
     }
     const sign = states[at + 12]!;
     // Vortex wind blows TOWARDS bearing - sign (90 + inflow).
