@@ -94,9 +94,9 @@ describe('radius of maximum wind', () => {
     }
   });
   it('of Knaff et al. (2015) hardly depends on the constant that circulates in two versions', () => {
-    for (const knots of [35, 65, 100, 140]) {
+    for (const knots of [35, 65, 100, 150]) {
       const change = (knots / 10.9884) ** 2 - (knots / 10.9844) ** 2;
-      expect(Math.abs(change)).toBeLessThan(0.13);
+      expect(Math.abs(change)).toBeLessThan(0.15);
     }
   });
 });

@@ -53,13 +53,13 @@ export function willoughbyRadius(maxWind: number, latitude: number): number {
 }
 
 /**
- * Radius of maximum wind from maximum wind and latitude, climatology of the operational size estimates.
+ * Radius of maximum wind from maximum wind and latitude, the climatology behind flight-level winds from infrared images.
  *
  * @param maxWind  Maximum 1-min wind [m s⁻¹].
  * @param latitude Latitude of the centre [deg].
  * @returns Radius [m], not clamped.
- * @source Knaff et al. (2015), Wea. Forecasting 30, 692–702; from memory. 10.9884 circulates for 10.9844; it changes less
- *         than 0.1 nautical miles.
+ * @source Knaff et al. (2015), J. Appl. Meteor. Climatol. 54, 463–478; from memory. 10.9884 circulates for 10.9844; up to
+ *         150 kt it changes less than 0.15 nautical miles.
  */
 export function knaffRadius(maxWind: number, latitude: number): number {
   const knots = knotsFromMs(maxWind);
