@@ -1,14 +1,22 @@
-import { LEAST_PRESSURE_DEFICIT, ONE_MINUTE_OVER_TEN, STANDARD_AMBIENT_PRESSURE } from '../constants.ts';
+import { LEAST_PRESSURE_DEFICIT, STANDARD_AMBIENT_PRESSURE } from '../constants.ts';
 import { msFromKnots } from '../units.ts';
 import { coriolis } from '../winds/coriolis.ts';
-import { hollandGradientWind } from '../winds/holland-1980.ts';
-import { clampedB, vickeryWadheraB } from '../winds/holland-b.ts';
-import { clampedRadius, vickeryWadheraRadius } from '../winds/radius-of-maximum-wind.ts';
-import { surfaceFactor } from '../winds/surface-factor.ts';
-import { fitVortex, impliedMaxWind } from '../winds/vortex-fit.ts';
-import { centralPressure } from '../winds/wind-pressure.ts';
+import { impliedMaxWind, relationB, surfaceShare } from '../winds/implied-wind.ts';
+import {
+  clampedRadius,
+  knaffRadius,
+  vickeryWadheraGulfRadius,
+  vickeryWadheraRadius,
+  willoughbyRadius,
+  willoughbyRahnRadius,
+} from '../winds/radius-of-maximum-wind.ts';
+import { profileState, radialProfile } from '../winds/radial-profile.ts';
+import { SURFACE_FACTORS } from '../winds/surface-factor.ts';
+import { fitVortex, type FittedVortex } from '../winds/vortex-fit.ts';
+import { atkinsonHollidayPressure, centralPressure } from '../winds/wind-pressure.ts';
 import type { EngineNotice, Intensity, TrackFix, WindAveraging } from './fixes.ts';
 import { motionAt } from './motion.ts';
+import { oneMinuteOverTen, type ChainOptions } from './options.ts';
 
 /** Averaged reach of hurricane-force wind over the greatest reach in a quadrant [1]. From memory. */
 const QUADRANT_SHARE = 0.85;
@@ -17,6 +25,7 @@ const LEAST_SEARCHED_RADIUS = 6_000;
 const NEIGHBOUR_SPAN = 6 * 3600;
 /** Two standard deviations of the Vickery–Wadhera regression for B, rounded [1]. */
 const NOTABLE_B_GAP = 0.45;
+const FIXED_POINT_STEPS = 60;
 
 /** What the order of filling gives a fix, before inland decay, ring and anchoring. */
 export type IntensityFix = {
@@ -29,6 +38,8 @@ export type IntensityFix = {
   readonly rMax: number;
   readonly speed: number;
   readonly heading: number;
+  /** Rate of change of the central pressure [Pa s⁻¹]. */
+  readonly tendency: number;
   readonly filled: Record<string, string>;
   readonly flags: string[];
 };
@@ -37,49 +48,60 @@ export type IntensityFix = {
  * Factor from a reported maximum to a maximum 1-min wind, at sea.
  *
  * @param averaging Averaging period of the report [s].
+ * @param overTen   Maximum 1-min over 10-min wind [1].
  * @returns Factor [1].
  * @source At-sea gust factors of Harper, Kepert & Ginger (2010), WMO/TD-1555: 1.05 (60 s), 1.02 (120 s), 1.00 (180 s).
  */
-function oneMinuteFactor(averaging: WindAveraging): number {
+function oneMinuteFactor(averaging: WindAveraging, overTen: number): number {
   if (averaging === 60) return 1;
-  return averaging === 120 ? ONE_MINUTE_OVER_TEN / 1.02 : ONE_MINUTE_OVER_TEN;
+  return averaging === 120 ? overTen / 1.02 : overTen;
 }
 
 /**
  * Fills what a track leaves open and settles each fix's maximum wind, fix by fix, in a fixed order.
  *
- * @param fixes     A track that requireTrack accepts.
- * @param intensity Which source rules where a fix has both a pressure and a wind.
+ * @param fixes   A track that requireTrack accepts.
+ * @param options Choices of the chain.
  * @returns One entry per fix, and notices.
  * @source Order of this chain; the relations are named in `filled`.
  */
 export function resolveIntensity(
   fixes: readonly TrackFix[],
-  intensity: Intensity,
+  options: ChainOptions,
 ): { fixes: IntensityFix[]; notices: EngineNotice[] } {
-  const started = fixes.map((fix) => startFix(fixes, fix, intensity));
-  fillRadii(fixes, started);
+  const started = fixes.map((fix) => startFix(fixes, fix, options));
+  fillTendencies(fixes, started);
+  fillRadii(fixes, started, options);
   const notices: EngineNotice[] = [];
-  const done = started.map((entry, i) => finishFix(fixes[i]!, entry, i, notices));
+  const done = started.map((entry, i) => finishFix(fixes[i]!, entry, i, notices, options));
   return { fixes: done, notices };
 }
 
-type Started = Omit<IntensityFix, 'maxWind' | 'impliedMaxWind' | 'rMax'> & { rMax: number | null };
+type Started = Omit<IntensityFix, 'maxWind' | 'impliedMaxWind' | 'rMax' | 'tendency'> & {
+  rMax: number | null;
+  tendency: number;
+};
 
 /** Steps 1 to 4: ambient pressure, 1-min wind, central pressure, source of intensity. */
-function startFix(fixes: readonly TrackFix[], fix: TrackFix, intensity: Intensity): Started {
+function startFix(fixes: readonly TrackFix[], fix: TrackFix, options: ChainOptions): Started {
   const filled: Record<string, string> = {};
   const { speed, heading } = motionAt(fixes, fix.timeS);
   if (fix.ambientPressurePa === null) filled.ambientPressureHpa = 'standard 1010 hPa';
   const ambientPressure = fix.ambientPressurePa ?? STANDARD_AMBIENT_PRESSURE;
-  const reportedMaxWind = fix.maxWindMs === null ? null : fix.maxWindMs * oneMinuteFactor(fix.windAveragingS);
+  const reportedMaxWind =
+    fix.maxWindMs === null
+      ? null
+      : fix.maxWindMs * oneMinuteFactor(fix.windAveragingS, oneMinuteOverTen(options.averaging));
   let pressure = fix.centralPressurePa;
   if (pressure === null) {
-    const estimate = centralPressure(reportedMaxWind!, speed, fix.latitude, ambientPressure);
+    const estimate =
+      options.windPressure === 'atkinson-holliday-1977'
+        ? { pressure: atkinsonHollidayPressure(reportedMaxWind!), relation: 'Atkinson & Holliday (1977)' }
+        : centralPressure(reportedMaxWind!, speed, fix.latitude, ambientPressure);
     pressure = estimate.pressure;
     filled.centralPressureHpa = estimate.relation;
   }
-  const byWind = reportedMaxWind !== null && (intensity === 'wind' || fix.centralPressurePa === null);
+  const byWind = reportedMaxWind !== null && (options.intensity === 'wind' || fix.centralPressurePa === null);
   return {
     centralPressure: pressure,
     ambientPressure,
@@ -88,16 +110,28 @@ function startFix(fixes: readonly TrackFix[], fix: TrackFix, intensity: Intensit
     rMax: fix.radiusOfMaxWindM,
     speed,
     heading,
+    tendency: 0,
     filled,
     flags: [],
   };
 }
 
-/** Step 5: the radius of maximum wind from 64-kt radii, else from neighbours within 6 h, else from a regression. */
-function fillRadii(fixes: readonly TrackFix[], started: Started[]): void {
+/** Rate of change of the central pressure, over the neighbouring fixes. */
+function fillTendencies(fixes: readonly TrackFix[], started: Started[]): void {
   started.forEach((entry, i) => {
-    if (entry.rMax !== null) return;
-    const radius = radiusFromHurricaneForce(fixes[i]!, entry);
+    const a = Math.max(i - 1, 0);
+    const b = Math.min(i + 1, fixes.length - 1);
+    const rise = started[b]!.centralPressure - started[a]!.centralPressure;
+    entry.tendency = rise / (fixes[b]!.timeS - fixes[a]!.timeS);
+  });
+}
+
+/** Step 5: the radius of maximum wind from 64-kt radii, else from neighbours within 6 h, else from a regression. */
+function fillRadii(fixes: readonly TrackFix[], started: Started[], options: ChainOptions): void {
+  const byRadii = options.radiusSource === 'radii-64';
+  started.forEach((entry, i) => {
+    if (entry.rMax !== null || !byRadii) return;
+    const radius = radiusFromHurricaneForce(fixes[i]!, entry, options);
     if (radius === null) return;
     entry.rMax = radius;
     entry.filled.radiusOfMaxWindM = '64-kt radii';
@@ -105,30 +139,96 @@ function fillRadii(fixes: readonly TrackFix[], started: Started[]): void {
   const known = started.flatMap(({ rMax }, i) => (rMax === null ? [] : [{ timeS: fixes[i]!.timeS, rMax }]));
   started.forEach((entry, i) => {
     if (entry.rMax !== null) return;
-    const { timeS, latitude } = fixes[i]!;
-    if (known.some((fix) => Math.abs(fix.timeS - timeS) <= NEIGHBOUR_SPAN)) {
+    const { timeS } = fixes[i]!;
+    if (byRadii && known.some((fix) => Math.abs(fix.timeS - timeS) <= NEIGHBOUR_SPAN)) {
       entry.rMax = linear(known, timeS);
       entry.filled.radiusOfMaxWindM = 'linear in time from fixes within 6 h';
     } else {
-      entry.rMax = clampedRadius(vickeryWadheraRadius(deficitOf(entry), latitude));
-      entry.filled.radiusOfMaxWindM = 'Vickery & Wadhera (2008), all hurricanes';
+      entry.rMax = radiusByRelation(fixes[i]!, entry, options);
+      entry.filled.radiusOfMaxWindM = RADIUS_RELATIONS[options.radiusRelation];
     }
   });
 }
 
+const RADIUS_RELATIONS: Readonly<Record<ChainOptions['radiusRelation'], string>> = {
+  'vickery-wadhera-2008': 'Vickery & Wadhera (2008), all hurricanes',
+  'vickery-wadhera-2008-gulf': 'Vickery & Wadhera (2008), Gulf of Mexico',
+  'willoughby-rahn-2004': 'Willoughby & Rahn (2004)',
+  'willoughby-2006': 'Willoughby et al. (2006)',
+  'knaff-2015': 'Knaff et al. (2015)',
+};
+
+/** A relation to the wind needs the maximum this fix will have, which may depend on the radius: solved by repetition. */
+function radiusByRelation(fix: TrackFix, entry: Started, options: ChainOptions): number {
+  const { latitude } = fix;
+  const usual = clampedRadius(vickeryWadheraRadius(deficitOf(entry), latitude));
+  switch (options.radiusRelation) {
+    case 'vickery-wadhera-2008':
+      return usual;
+    case 'vickery-wadhera-2008-gulf':
+      return clampedRadius(vickeryWadheraGulfRadius(deficitOf(entry)));
+    case 'willoughby-rahn-2004':
+      return settled((rMax) => willoughbyRahnRadius(vortexOf(fix, entry, rMax, options).gradientMax, latitude), usual);
+    case 'willoughby-2006':
+      return settled((rMax) => willoughbyRadius(vortexOf(fix, entry, rMax, options).gradientMax, latitude), usual);
+    case 'knaff-2015':
+      return settled((rMax) => knaffRadius(maxWindOf(fix, entry, rMax, options), latitude), usual);
+  }
+}
+
+function settled(relation: (rMax: number) => number, from: number): number {
+  let rMax = from;
+  for (let k = 0; k < FIXED_POINT_STEPS; k++) rMax = clampedRadius(relation(rMax));
+  return rMax;
+}
+
+/** Maximum 1-min wind a fix has with a radius: as reported, or as its pressure implies. */
+function maxWindOf(fix: TrackFix, entry: Started, rMax: number, options: ChainOptions): number {
+  if (entry.source === 'wind' && options.shapeSource === 'max-wind') return entry.reportedMaxWind!;
+  return impliedMaxWind(pressureStorm(fix, entry, rMax), options, surfaceShare(entry.source === 'pressure', options));
+}
+
+function vortexOf(fix: TrackFix, entry: Started, rMax: number, options: ChainOptions): FittedVortex {
+  const share = surfaceShare(entry.source === 'pressure', options);
+  const maxWind = maxWindOf(fix, entry, rMax, options);
+  return fitVortex(maxWind, entry.speed, rMax, coriolis(fix.latitude), deficitOf(entry), options, share);
+}
+
+function pressureStorm({ latitude }: TrackFix, entry: Started, rMax: number) {
+  return {
+    central: entry.centralPressure,
+    deficit: deficitOf(entry),
+    tendency: entry.tendency,
+    rMax,
+    latitude,
+    f: coriolis(latitude),
+    speed: entry.speed,
+  };
+}
+
 /** Step 6 and the comparison of both maxima. */
-function finishFix(fix: TrackFix, entry: Started, i: number, notices: EngineNotice[]): IntensityFix {
+function finishFix(
+  fix: TrackFix,
+  entry: Started,
+  i: number,
+  notices: EngineNotice[],
+  options: ChainOptions,
+): IntensityFix {
   const rMax = entry.rMax!;
   const deficit = deficitOf(entry);
   const f = coriolis(fix.latitude);
-  const implied =
-    fix.centralPressurePa === null ? null : impliedMaxWind(entry.centralPressure, deficit, rMax, f, entry.speed);
-  const maxWind = entry.source === 'wind' ? entry.reportedMaxWind! : implied!;
+  const storm = pressureStorm(fix, entry, rMax);
+  const share = surfaceShare(entry.source === 'pressure', options);
+  const implied = fix.centralPressurePa === null ? null : impliedMaxWind(storm, options, share);
+  const maxWind = maxWindOf(fix, entry, rMax, options);
   if (fix.maxWindMs === null) entry.filled.maxWindMs = 'implied by the central pressure';
+  else if (entry.source === 'wind' && options.shapeSource === 'relation') {
+    entry.filled.maxWindMs = 'implied by the central pressure and the shape B of the relation';
+  }
   const where = `Fix ${i + 1}`;
   if (implied !== null && entry.reportedMaxWind !== null) {
     const fitted = fitVortex(entry.reportedMaxWind, entry.speed, rMax, f, deficit).unclampedB;
-    const usual = clampedB(vickeryWadheraB(rMax, f, deficit, entry.centralPressure));
+    const usual = relationB(storm, 'vickery-wadhera-2008');
     if (Math.abs(fitted - usual) > NOTABLE_B_GAP) {
       notices.push({
         code: 'wind-and-pressure-differ',
@@ -136,8 +236,9 @@ function finishFix(fix: TrackFix, entry: Started, i: number, notices: EngineNoti
       });
     }
   }
-  const used = fitVortex(maxWind, entry.speed, rMax, f, deficit);
-  if (used.b !== used.unclampedB) {
+  const used = fitVortex(maxWind, entry.speed, rMax, f, deficit, options, share);
+  // A maximum implied by B gives that B back only to rounding.
+  if (Math.abs(used.b - used.unclampedB) > 1e-9) {
     const text = `B clamped to ${used.b}, pressure deficit adjusted from ${(deficit / 100).toFixed(1)} to ${(used.deficit / 100).toFixed(1)} hPa`;
     entry.flags.push(text);
     notices.push({ code: 'b-clamped', text: `${where}: ${text}.` });
@@ -153,19 +254,16 @@ function finishFix(fix: TrackFix, entry: Started, i: number, notices: EngineNoti
 /**
  * Radius of maximum wind with which a fix's own vortex carries 64 kt at the mean reach of its 64-kt radii.
  */
-function radiusFromHurricaneForce(fix: TrackFix, entry: Started): number | null {
+function radiusFromHurricaneForce(fix: TrackFix, entry: Started, options: ChainOptions): number | null {
   const quadrants = (fix.radius64KtM ?? []).filter((radius) => radius > 0);
   if (quadrants.length === 0) return null;
   const reach = (QUADRANT_SHARE * quadrants.reduce((sum, radius) => sum + radius, 0)) / quadrants.length;
-  const f = coriolis(fix.latitude);
-  const deficit = deficitOf(entry);
+  const profile = radialProfile(options);
+  const share = surfaceShare(entry.source === 'pressure', options);
   const carried = (rMax: number): number => {
-    const maxWind =
-      entry.source === 'wind'
-        ? entry.reportedMaxWind!
-        : impliedMaxWind(entry.centralPressure, deficit, rMax, f, entry.speed);
-    const vortex = fitVortex(maxWind, entry.speed, rMax, f, deficit);
-    return ONE_MINUTE_OVER_TEN * surfaceFactor(reach) * hollandGradientWind(reach, vortex);
+    const state = profileState(vortexOf(fix, entry, rMax, options), fix.latitude, share, null, options);
+    const factor = SURFACE_FACTORS[options.surfaceFactor](reach) * share;
+    return oneMinuteOverTen(options.averaging) * factor * profile(reach, state);
   };
   let low = LEAST_SEARCHED_RADIUS;
   let high = reach;

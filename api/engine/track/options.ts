@@ -1,3 +1,4 @@
+import { ONE_MINUTE_OVER_TEN } from '../constants.ts';
 import { DomainError } from '../errors.ts';
 
 /** Published relations of the plain wind field, one choice each; the first value named is the default. */
@@ -61,6 +62,77 @@ export const DEFAULT_WIND_OPTIONS: WindOptions = {
   gustFactor: 'turbulence',
 };
 
+/** Every value of every choice, the default first. */
+export const WIND_CHOICES: { readonly [K in keyof WindOptions]: readonly WindOptions[K][] } = {
+  profile: ['holland-1980', 'holland-2010', 'willoughby-2006', 'willoughby-2006-exact-peak'],
+  asymmetry: ['lin-chavas', 'schwerdt', 'georgiou', 'kepert', 'none'],
+  inflow: ['phadke', 'zhang-uhlhorn'],
+  surfaceFactor: ['franklin', 'powell-2003', 'holland-2010'],
+  radiusSource: ['radii-64', 'relation'],
+  radiusRelation: [
+    'vickery-wadhera-2008',
+    'vickery-wadhera-2008-gulf',
+    'willoughby-rahn-2004',
+    'willoughby-2006',
+    'knaff-2015',
+  ],
+  shapeRelation: ['vickery-wadhera-2008', 'powell-2005', 'holland-2008', 'willoughby-rahn-2004'],
+  shapeSource: ['max-wind', 'relation'],
+  windPressure: ['knaff-zehr-2007', 'atkinson-holliday-1977'],
+  averaging: ['at-sea-1.05', 'at-sea-0.93'],
+  outerWind: ['profile', 'radii-34'],
+  quadrants: ['motion', 'radii'],
+  decay: [
+    'as-given',
+    'kaplan-demaria',
+    'vickery-gulf',
+    'vickery-florida',
+    'vickery-mid-atlantic',
+    'vickery-new-england',
+  ],
+  seaDrag: ['capped-2.4', 'capped-2.0', 'uncapped'],
+  landReduction: ['en-1991', 'log-laws-500m'],
+  fetch: ['by-direction', 'land-all-round'],
+  turbulence: ['en-1991', 'esdu'],
+  gustFactor: ['turbulence', 'wmo-at-sea', 'wmo-off-sea', 'wmo-off-land', 'wmo-in-land'],
+};
+
+/** Names of the choices, in the order in which they are listed for people. */
+export const WIND_CHOICE_NAMES = Object.keys(WIND_CHOICES) as readonly (keyof WindOptions)[];
+
+/**
+ * Maximum 1-min wind over the 10-min mean at sea.
+ *
+ * @param averaging The choice.
+ * @returns Factor [1].
+ * @source Harper, Kepert & Ginger (2010), WMO/TD-1555: 1.05 is the table's 60 s over 600 s at sea, one over 0.93 the
+ *         guideline's own conversion; from memory.
+ */
+export function oneMinuteOverTen(averaging: WindOptions['averaging']): number {
+  return averaging === 'at-sea-1.05' ? ONE_MINUTE_OVER_TEN : 1 / 0.93;
+}
+
+/** Choices that act while the track is resolved and leave the relations of the field itself as they are. */
+const OF_THE_TRACK: readonly (keyof WindOptions)[] = [
+  'radiusSource',
+  'radiusRelation',
+  'shapeRelation',
+  'windPressure',
+  'averaging',
+  'decay',
+];
+
+/**
+ * Whether the wind field itself is the default one, for which there is a fast kernel.
+ *
+ * @param options The choices.
+ * @returns True when every choice that acts in the field is the default.
+ * @source Arrangement only.
+ */
+export function usesDefaultField(options: WindOptions): boolean {
+  return WIND_CHOICE_NAMES.every((name) => OF_THE_TRACK.includes(name) || options[name] === DEFAULT_WIND_OPTIONS[name]);
+}
+
 /** Choices of the chain that the person running it may make. */
 export type ChainOptions = WindOptions & {
   /** Whether a reported wind or the central pressure sets the intensity where both are given. */
@@ -85,15 +157,19 @@ export const DEFAULT_OPTIONS: ChainOptions = {
 };
 
 /**
- * Refuses steps that make no sense.
+ * Refuses steps that make no sense and values of a choice that there are not.
  *
  * @param options The options; steps [s].
- * @throws {DomainError} when a step is not in 5..3600 s.
+ * @throws {DomainError} when a step is not in 5..3600 s, or a wind choice is none of its values.
  * @source Rule of this product.
  */
-export function requireOptions({ timeStepS, innerTimeStepS }: ChainOptions): void {
-  if (!(timeStepS >= 5 && timeStepS <= 3600)) throw new DomainError('timeStepS', timeStepS, 'in 5..3600 s');
-  if (!(innerTimeStepS >= 5 && innerTimeStepS <= 3600)) {
-    throw new DomainError('innerTimeStepS', innerTimeStepS, 'in 5..3600 s');
+export function requireOptions(options: ChainOptions): void {
+  for (const name of WIND_CHOICE_NAMES) {
+    const values: readonly string[] = WIND_CHOICES[name];
+    if (!values.includes(options[name])) throw new DomainError(name, options[name], `one of ${values.join(', ')}`);
+  }
+  for (const name of ['timeStepS', 'innerTimeStepS'] as const) {
+    const step = options[name];
+    if (!(step >= 5 && step <= 3600)) throw new DomainError(name, step, 'in 5..3600 s');
   }
 }

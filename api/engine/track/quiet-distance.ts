@@ -8,6 +8,7 @@ export const QUIET_WIND_COUNT = 20;
 
 const STEPS_PER_DOUBLING = 24;
 const FARTHEST = Math.PI * EARTH_RADIUS;
+const MARGIN = 1.03;
 
 /**
  * Distances beyond which the open-sea wind stays below given speeds.
@@ -32,5 +33,32 @@ export function writeQuietDistances(vortex: HollandVortex, motion: number, out: 
       out[first + level] = 4 * Math.sin(r / (2 * EARTH_RADIUS)) ** 2;
       level--;
     }
+  }
+}
+
+/**
+ * Distances beyond which a wind field without known monotony stays below given speeds.
+ *
+ * @param bound    Wind not exceeded on the circle at a distance [m s⁻¹].
+ * @param nearest  Distance from which on to look [m].
+ * @param out      As in writeQuietDistances.
+ * @param first    Where in `out` to start.
+ * @source Greatest of the bounds at distances 3 % apart from each distance on, and 3 % more for what lies between them.
+ */
+export function writeQuietDistancesBelow(
+  bound: (r: number) => number,
+  nearest: number,
+  out: Float64Array,
+  first: number,
+): void {
+  out.fill(Infinity, first, first + QUIET_WIND_COUNT);
+  const ratio = 2 ** (1 / STEPS_PER_DOUBLING);
+  let greatest = 0;
+  let level = 0;
+  for (let r = FARTHEST; r >= nearest && level < QUIET_WIND_COUNT; r /= ratio) {
+    greatest = Math.max(greatest, MARGIN * bound(r));
+    while (level < QUIET_WIND_COUNT && greatest >= FIRST_QUIET_WIND + level) level++;
+    const chord2 = 4 * Math.sin(r / (2 * EARTH_RADIUS)) ** 2;
+    out.fill(chord2, first + level, first + QUIET_WIND_COUNT);
   }
 }

@@ -2,7 +2,9 @@ import { LEAST_PRESSURE_DEFICIT } from '../constants.ts';
 import type { LandIndex } from '../geo/land.ts';
 import { DEFAULT_EYE_RATIO, DEFAULT_RING_WIDTH } from '../ring/stability.ts';
 import { coriolis } from '../winds/coriolis.ts';
+import { surfaceShare } from '../winds/implied-wind.ts';
 import { fitVortex } from '../winds/vortex-fit.ts';
+import { choiceNotices } from './choice-words.ts';
 import { requireTrack, type Anchor, type EngineNotice, type ResolvedFix, type TrackFix } from './fixes.ts';
 import { hoursInlandOf, type HoursInland } from './inland.ts';
 import { resolveIntensity, type IntensityFix } from './intensity.ts';
@@ -34,7 +36,7 @@ export function resolveFixes(
 ): TrackResolution {
   requireTrack(fixes);
   requireOptions(options);
-  const { fixes: settled, notices } = resolveIntensity(fixes, options.intensity);
+  const { fixes: settled, notices } = resolveIntensity(fixes, options);
   const hoursInland = hoursInlandOf(fixes, land);
   const inputs = settled.map((entry, i) => ({
     maxWind: entry.maxWind,
@@ -45,11 +47,12 @@ export function resolveFixes(
     hoursInland: hoursInland(fixes[i]!.timeS),
     anchor: anchorOf(entry, options),
   }));
-  const layer = layVortices(inputs, options.mesovortices);
+  const layer = layVortices(inputs, options.mesovortices, options.averaging);
   const resolved = settled.map((entry, i): ResolvedFix => {
     const given = fixes[i]!;
     const input = inputs[i]!;
     const own = layer.fixes[i]!;
+    const share = surfaceShare(entry.source === 'pressure', options);
     const deficit = Math.max(entry.ambientPressure - entry.centralPressure, LEAST_PRESSURE_DEFICIT);
     return {
       timeS: given.timeS,
@@ -73,13 +76,14 @@ export function resolveFixes(
       anchoredMaxWindMs: own.maxWind,
       axisymmetricMaxWindMs: own.axisymmetricMax,
       averageVorticityPerS: own.averageVorticity,
-      shapeB: fitVortex(own.maxWind, entry.speed, entry.rMax, coriolis(given.latitude), deficit).b,
+      shapeB: fitVortex(own.maxWind, entry.speed, entry.rMax, coriolis(given.latitude), deficit, options, share).b,
       amplitude: own.amplitude,
       patternRadPerS: own.pattern,
       filled: { ...entry.filled, ...filledRing(given, land) },
       flags: entry.flags,
     };
   });
+  notices.push(...choiceNotices(options));
   notices.push(anchorNotice(resolved, layer.wavenumber));
   if (options.mesovortices && layer.wavenumber === null) {
     notices.push({ code: 'vortex-layer-off', text: 'No ring of this storm grows vortices: enhanced equals plain.' });

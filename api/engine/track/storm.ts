@@ -1,4 +1,4 @@
-import { AIR_DENSITY, EARTH_RADIUS, LEAST_PRESSURE_DEFICIT, ONE_MINUTE_OVER_TEN } from '../constants.ts';
+import { AIR_DENSITY, EARTH_RADIUS, LEAST_PRESSURE_DEFICIT } from '../constants.ts';
 import { unitVector } from '../geo/geodesy.ts';
 import type { LandIndex } from '../geo/land.ts';
 import { inlandFade } from '../ring/amplitude.ts';
@@ -6,13 +6,16 @@ import { VORTEX_REACH } from '../ring/draws.ts';
 import { radians } from '../units.ts';
 import { motionWind } from '../winds/asymmetry.ts';
 import { coriolis, hemisphereSign } from '../winds/coriolis.ts';
+import { fieldStateOf, type FieldState } from '../winds/field-state.ts';
+import { surfaceShare } from '../winds/implied-wind.ts';
+import { seaWindOf } from '../winds/sea-wind.ts';
 import { fitVortex } from '../winds/vortex-fit.ts';
 import type { EngineNotice, ResolvedFix, TrackFix } from './fixes.ts';
 import { motionAt } from './motion.ts';
-import type { ChainOptions } from './options.ts';
+import { oneMinuteOverTen, usesDefaultField, type ChainOptions } from './options.ts';
 import { legAt, positionAt } from './position.ts';
-import { writeQuietDistances } from './quiet-distance.ts';
-import { resolveFixes } from './resolution.ts';
+import { writeQuietDistances, writeQuietDistancesBelow } from './quiet-distance.ts';
+import { resolveFixes, type TrackResolution } from './resolution.ts';
 import { timeGrid } from './time-grid.ts';
 
 /** Numbers per state in `Storm.states`; the offsets are in STATE. */
@@ -74,6 +77,8 @@ export type Storm = {
   readonly states: Float64Array;
   /** Indices of the outer times among the states, shape (outer times,). */
   readonly outer: Int32Array;
+  /** What a chosen wind field needs beyond `states`, one entry per state; null under the default field. */
+  readonly field: readonly FieldState[] | null;
 };
 
 /** A pattern this fast needs the finest step near the centre [rad s⁻¹]. Product rule. */
@@ -104,23 +109,32 @@ export function prepareStorm(fixes: readonly TrackFix[], options: ChainOptions, 
   const stateCount = grid.timeS.length;
   const states = new Float64Array(stateCount * STATE_SIZE);
   const angles = patternAngles(resolved);
+  const field: FieldState[] = [];
   for (let k = 0; k < stateCount; k++) {
     const timeS = grid.timeS[k]!;
-    writeState(states, k * STATE_SIZE, resolved, timeS, resolution.hoursInland(timeS), wavenumber, angles);
+    field.push(writeState(states, k * STATE_SIZE, resolution, timeS, angles, options));
   }
-  for (const k of grid.outer) writeQuiet(states, k * STATE_SIZE);
-  return { fixes: resolved, options, notices: resolution.notices, wavenumber, stateCount, states, outer: grid.outer };
+  const storm = { fixes: resolved, options, notices: resolution.notices, wavenumber, stateCount, states };
+  if (usesDefaultField(options)) {
+    for (const k of grid.outer) writeQuiet(states, k * STATE_SIZE);
+    return { ...storm, outer: grid.outer, field: null };
+  }
+  const { bound } = seaWindOf(options);
+  for (const k of grid.outer) {
+    const state = field[k]!;
+    writeQuietDistancesBelow((r) => bound(state, r), state.rMax, states, k * STATE_SIZE + STATE.quietChord2);
+  }
+  return { ...storm, outer: grid.outer, field };
 }
 
 function writeState(
   states: Float64Array,
   at: number,
-  fixes: readonly ResolvedFix[],
+  { fixes, wavenumber, hoursInland }: TrackResolution,
   timeS: number,
-  hoursInland: number,
-  wavenumber: number | null,
   angles: readonly number[],
-): void {
+  options: ChainOptions,
+): FieldState {
   const i = legAt(fixes, timeS);
   const a = fixes[i]!;
   const b = fixes[i + 1]!;
@@ -132,12 +146,16 @@ function writeState(
   const rMax = mix(a.radiusOfMaxWindM, b.radiusOfMaxWindM);
   const ambient = mix(a.ambientPressurePa, b.ambientPressurePa);
   const central = mix(a.centralPressurePa, b.centralPressurePa);
+  const maxWind = mix(a.anchoredMaxWindMs, b.anchoredMaxWindMs);
+  const ofSurface = mix(shareOf(a, options), shareOf(b, options));
   const vortex = fitVortex(
-    mix(a.anchoredMaxWindMs, b.anchoredMaxWindMs),
+    maxWind,
     speed,
     rMax,
     coriolis(place.latitude),
     Math.max(ambient - central, LEAST_PRESSURE_DEFICIT),
+    options,
+    ofSurface,
   );
   const wind = motionWind(speed, heading, sign);
   const [x, y, z] = unitVector(place);
@@ -146,7 +164,7 @@ function writeState(
   const cosLambda = Math.cos(lambda);
   const nearAngle = Math.min(Math.max(VORTEX_REACH * rMax, LEAST_NEAR_RADIUS) / EARTH_RADIUS, Math.PI);
   const vortexMax = mix(a.axisymmetricMaxWindMs, b.axisymmetricMaxWindMs);
-  const amplitude = wavenumber === null ? 0 : mix(a.amplitude, b.amplitude) * inlandFade(hoursInland);
+  const amplitude = wavenumber === null ? 0 : mix(a.amplitude, b.amplitude) * inlandFade(hoursInland(timeS));
   const patternAngle = wavenumber === null ? 0 : patternAngleAt(fixes, angles, i, timeS);
   const turned = (wavenumber ?? 0) * patternAngle;
   states[at + STATE.x] = x;
@@ -165,7 +183,7 @@ function writeState(
   states[at + STATE.motionU] = wind.u;
   states[at + STATE.motionV] = wind.v;
   states[at + STATE.perRMax] = 1 / rMax;
-  states[at + STATE.vortexWind] = (amplitude * vortexMax) / ONE_MINUTE_OVER_TEN;
+  states[at + STATE.vortexWind] = (amplitude * vortexMax) / oneMinuteOverTen(options.averaging);
   states[at + STATE.patternCos] = Math.cos(turned);
   states[at + STATE.patternSin] = Math.sin(turned);
   states[at + STATE.nearChord2] = 4 * Math.sin(nearAngle / 2) ** 2;
@@ -177,6 +195,13 @@ function writeState(
   states[at + STATE.speed] = speed;
   states[at + STATE.heading] = heading;
   states[at + STATE.patternAngle] = patternAngle;
+  const { latitude } = place;
+  const field = { vortex, latitude, sign, speed, heading, maxWind, motion: wind, surfaceShare: ofSurface };
+  return fieldStateOf({ ...field, outer: null, quadrants: null }, options);
+}
+
+function shareOf({ intensitySource }: ResolvedFix, options: ChainOptions): number {
+  return surfaceShare(intensitySource === 'pressure', options);
 }
 
 function writeQuiet(states: Float64Array, at: number): void {

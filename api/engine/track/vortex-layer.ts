@@ -1,9 +1,9 @@
 import { amplitudeLaw, dominantMode, inlandFade, intensitySwitch, neutralPattern } from '../ring/amplitude.ts';
 import { MEAN_AMPLITUDE } from '../ring/draws.ts';
 import { ringShape, smoothRingModes, type RingMode } from '../ring/stability.ts';
-import { ONE_MINUTE_OVER_TEN } from '../constants.ts';
 import { symmetricWind } from '../winds/vortex-fit.ts';
 import type { Anchor } from './fixes.ts';
+import { DEFAULT_WIND_OPTIONS, oneMinuteOverTen, type WindOptions } from './options.ts';
 
 /** What the vortex layer needs to know of a fix. */
 export type LayerInput = {
@@ -30,12 +30,14 @@ export type LayerFix = {
  *
  * @param fixes Settled fixes; winds [m s⁻¹], radius [m], hours [h].
  * @param on    False leaves every amplitude 0 and the wavenumber null.
+ * @param averaging Which factor leads from the 1-min to the 10-min wind.
  * @returns One entry per fix; the wavenumber is null when no ring grows, and then every pattern is null.
  * @source Smooth-ring growth (Schubert et al. 1999 with smooth shoulders) and the amplitude law of ring/amplitude.ts.
  */
 export function layVortices(
   fixes: readonly LayerInput[],
   on: boolean,
+  averaging: WindOptions['averaging'] = DEFAULT_WIND_OPTIONS.averaging,
 ): { fixes: LayerFix[]; wavenumber: number | null } {
   const solved = new Map<string, RingMode[]>();
   const modesOf = ({ ringWidth, eyeRatio }: LayerInput): RingMode[] => {
@@ -51,11 +53,11 @@ export function layVortices(
     wavenumber,
     fixes: fixes.map((fix, i) => {
       const amplitude = on
-        ? amplitudeLaw(modes[i]!) * intensitySwitch(axisymmetricWind(fix.maxWind, fix.speed), fix.rMax)
+        ? amplitudeLaw(modes[i]!) * intensitySwitch(axisymmetricWind(fix.maxWind, fix.speed, averaging), fix.rMax)
         : 0;
       const held = fix.anchor === 'peak' ? 1 + MEAN_AMPLITUDE * amplitude * inlandFade(fix.hoursInland) : 1;
       const maxWind = fix.maxWind / held;
-      const axisymmetricMax = axisymmetricWind(maxWind, fix.speed);
+      const axisymmetricMax = axisymmetricWind(maxWind, fix.speed, averaging);
       const averageVorticity = (2 * axisymmetricMax) / fix.rMax;
       const pattern = wavenumber === null ? null : averageVorticity * patternShare(fix, modes[i]!, wavenumber);
       return { amplitude, maxWind, axisymmetricMax, averageVorticity, pattern };
@@ -68,11 +70,12 @@ export function layVortices(
  *
  * @param maxWind Maximum 1-min wind, motion included [m s⁻¹].
  * @param speed   Translation speed [m s⁻¹].
+ * @param averaging Which factor leads from the 1-min to the 10-min wind.
  * @returns Axisymmetric 1-min maximum [m s⁻¹].
  * @source Lin & Chavas (2012) motion share, as in symmetricWind.
  */
-function axisymmetricWind(maxWind: number, speed: number): number {
-  return ONE_MINUTE_OVER_TEN * symmetricWind(maxWind, speed);
+export function axisymmetricWind(maxWind: number, speed: number, averaging: WindOptions['averaging']): number {
+  return oneMinuteOverTen(averaging) * symmetricWind(maxWind, speed, averaging);
 }
 
 function patternShare(fix: LayerInput, modes: readonly RingMode[], m: number): number {

@@ -1,10 +1,10 @@
-import { LEAST_SYMMETRIC_WIND, MOTION_SHARE, ONE_MINUTE_OVER_TEN } from '../constants.ts';
-import { hollandGradientWind, type HollandVortex } from './holland-1980.ts';
-import { clampedB, fittedB, vickeryWadheraB } from './holland-b.ts';
-import { INNER_FACTOR, surfaceFactor } from './surface-factor.ts';
-
-/** 10-min 10-m wind over gradient wind inside 100 km for a storm known by its pressure [1]. Holland et al. (2010), from memory. */
-const PRESSURE_SURFACE_FACTOR = 0.8;
+import { LEAST_SYMMETRIC_WIND, MOTION_SHARE } from '../constants.ts';
+import { DEFAULT_WIND_OPTIONS, oneMinuteOverTen, type WindOptions } from '../track/options.ts';
+import { type HollandVortex } from './holland-1980.ts';
+import { clampedB, fittedB } from './holland-b.ts';
+import { matchedKepertWind, strongestKepertWind } from './kepert-maximum.ts';
+import { schwerdtAddition } from './schwerdt.ts';
+import { SURFACE_FACTORS } from './surface-factor.ts';
 
 /** A vortex matched to a maximum wind. */
 export type FittedVortex = HollandVortex & {
@@ -17,13 +17,18 @@ export type FittedVortex = HollandVortex & {
 /**
  * Symmetric 10-min wind that is left of a maximum when the storm's own motion is taken out.
  *
- * @param maxWind Maximum 1-min wind [m s⁻¹].
- * @param speed   Translation speed [m s⁻¹].
+ * @param maxWind   Maximum 1-min wind [m s⁻¹].
+ * @param speed     Translation speed [m s⁻¹].
+ * @param averaging Which factor leads from the 1-min to the 10-min wind.
  * @returns 10-min wind [m s⁻¹], at least 5.
  * @source Lin & Chavas (2012), J. Geophys. Res. 117, D09120: the motion adds 0.55 of its speed on the strong side.
  */
-export function symmetricWind(maxWind: number, speed: number): number {
-  return Math.max(maxWind / ONE_MINUTE_OVER_TEN - MOTION_SHARE * speed, LEAST_SYMMETRIC_WIND);
+export function symmetricWind(
+  maxWind: number,
+  speed: number,
+  averaging: WindOptions['averaging'] = DEFAULT_WIND_OPTIONS.averaging,
+): number {
+  return Math.max(maxWind / oneMinuteOverTen(averaging) - MOTION_SHARE * speed, LEAST_SYMMETRIC_WIND);
 }
 
 /**
@@ -34,31 +39,97 @@ export function symmetricWind(maxWind: number, speed: number): number {
  * @param rMax    Radius of maximum wind [m].
  * @param f       Coriolis parameter, a magnitude [s⁻¹].
  * @param deficit Pressure deficit [Pa], > 0.
+ * @param options Asymmetry, surface factor, averaging and profile.
+ * @param share   Surface factor of this storm over the chosen one [1]; see surfaceShare.
  * @returns The vortex; its deficit differs from the one given when B was clamped.
  * @source Holland (1980), Mon. Wea. Rev. 108, 1212–1218, solved for B; clamping is a product rule that honours the wind.
  */
-export function fitVortex(maxWind: number, speed: number, rMax: number, f: number, deficit: number): FittedVortex {
-  const gradientMax = symmetricWind(maxWind, speed) / surfaceFactor(rMax);
+export function fitVortex(
+  maxWind: number,
+  speed: number,
+  rMax: number,
+  f: number,
+  deficit: number,
+  options: WindOptions = DEFAULT_WIND_OPTIONS,
+  share = 1,
+): FittedVortex {
+  const gradientMax = matchedGradient(maxWind, speed, rMax, f, options, share);
   const unclampedB = fittedB(gradientMax, rMax, f, deficit);
   const b = clampedB(unclampedB);
   return { rMax, b, f, deficit: b === unclampedB ? deficit : (deficit * unclampedB) / b, gradientMax, unclampedB };
 }
 
+/** Gradient wind of the symmetric vortex whose greatest surface wind around the circle at rMax is the maximum. */
+function matchedGradient(
+  maxWind: number,
+  speed: number,
+  rMax: number,
+  f: number,
+  options: WindOptions,
+  share: number,
+): number {
+  const factor = SURFACE_FACTORS[options.surfaceFactor](rMax) * share;
+  const mean = maxWind / oneMinuteOverTen(options.averaging);
+  switch (options.asymmetry) {
+    case 'lin-chavas':
+      return symmetricWind(maxWind, speed, options.averaging) / factor;
+    case 'none':
+      return Math.max(mean, LEAST_SYMMETRIC_WIND) / factor;
+    case 'schwerdt':
+      return Math.max(mean - schwerdtMean(speed, options), LEAST_SYMMETRIC_WIND) / factor;
+    case 'georgiou': {
+      // The force of the pressure that gives the wind on the strong side gives this wind on a circle at rest.
+      const wind = mean / factor;
+      const half = (rMax * f) / 2;
+      const force = Math.max(wind * wind - (speed - rMax * f) * wind, 0);
+      return Math.max(Math.sqrt(force + half * half) - half, LEAST_SYMMETRIC_WIND / factor);
+    }
+    case 'kepert':
+      return matchedKepertWind(mean, { rMax, f, speed }, options);
+  }
+}
+
 /**
- * Maximum 1-min wind that a central pressure implies.
+ * Greatest 1-min surface wind around the circle at the radius of maximum wind: the inverse of fitVortex.
  *
- * @param central Central pressure [Pa].
- * @param deficit Pressure deficit [Pa], > 0.
- * @param rMax    Radius of maximum wind [m].
- * @param f       Coriolis parameter, a magnitude [s⁻¹].
- * @param speed   Translation speed [m s⁻¹].
+ * @param gradient Gradient wind of the symmetric vortex there [m s⁻¹].
+ * @param speed    Translation speed [m s⁻¹].
+ * @param rMax     Radius of maximum wind [m].
+ * @param f        Coriolis parameter, a magnitude [s⁻¹].
+ * @param options  Asymmetry, surface factor, averaging and profile.
+ * @param share    Surface factor of this storm over the chosen one [1].
  * @returns Maximum 1-min wind, motion included [m s⁻¹].
- * @source Holland (1980) with B of Vickery & Wadhera (2008), 10-min surface wind 0.80 of the gradient wind within 100 km
- *         (Holland, Belanger & Fritz 2010, from memory), motion of Lin & Chavas (2012).
+ * @source As the asymmetry: Lin & Chavas (2012), Schwerdt et al. (1979), Georgiou (1985), Kepert (2001).
  */
-export function impliedMaxWind(central: number, deficit: number, rMax: number, f: number, speed: number): number {
-  const b = clampedB(vickeryWadheraB(rMax, f, deficit, central));
-  const gradient = hollandGradientWind(rMax, { rMax, b, deficit, f });
-  const surface = (PRESSURE_SURFACE_FACTOR / INNER_FACTOR) * surfaceFactor(rMax) * gradient;
-  return ONE_MINUTE_OVER_TEN * (surface + MOTION_SHARE * speed);
+export function strongestWind(
+  gradient: number,
+  speed: number,
+  rMax: number,
+  f: number,
+  options: WindOptions,
+  share: number,
+): number {
+  const factor = SURFACE_FACTORS[options.surfaceFactor](rMax) * share;
+  const ten = (): number => {
+    switch (options.asymmetry) {
+      case 'lin-chavas':
+        return factor * gradient + MOTION_SHARE * speed;
+      case 'none':
+        return factor * gradient;
+      case 'schwerdt':
+        return factor * gradient + schwerdtMean(speed, options);
+      case 'georgiou': {
+        const half = (speed - rMax * f) / 2;
+        return factor * (half + Math.sqrt(half * half + gradient * (gradient + rMax * f)));
+      }
+      case 'kepert':
+        return strongestKepertWind(gradient, { rMax, f, speed }, options);
+    }
+  };
+  return oneMinuteOverTen(options.averaging) * ten();
+}
+
+/** Greatest addition of Schwerdt et al. as a 10-min wind. */
+function schwerdtMean(speed: number, options: WindOptions): number {
+  return schwerdtAddition(speed, 0) / oneMinuteOverTen(options.averaging);
 }
