@@ -347,6 +347,8 @@ export const RunSlip = z.object({
   calibration: z.object({ code: z.string(), version: z.int(), state: z.string(), digest: Digest }),
   curveSet: z.object({ name: z.string(), version: z.int(), digest: Digest }),
   options: RunOptions,
+  /** Wind choices other than the defaults, in words. */
+  choices: z.array(z.string()),
   draws: z.string(),
   engineVersion: z.string(),
   inputsDigest: Digest,

@@ -1,4 +1,4 @@
-import type { Choice, WindChoice } from './wind-choices.ts';
+import type { Choice, WindChoice, WindChoices } from './wind-choices.ts';
 
 /**
  * Every published relation of the plain wind field that can be chosen, in words: what the choice decides, why the default
@@ -467,3 +467,20 @@ export const CHAIN_CHOICES: readonly Choice<'intensity' | 'anchor' | 'mesovortic
 /** What has to be said beside any choice of intensity that has two readings far apart. */
 export const INTENSITY_NOTICE =
   'The reported wind and the central pressure don’t belong to one usual storm: their shapes B differ by more than 0.45, two standard deviations. Read both maxima before you rely on either.';
+
+/** The choices that differ from the default, as [choice, value] in the order above; the canonical form of a set. */
+export const chosenOf = (wind: WindChoices | undefined): [key: keyof WindChoices, value: string][] =>
+  wind === undefined
+    ? []
+    : WIND_CHOICES.flatMap(({ key, values }) =>
+        wind[key] === values[0]!.value ? [] : [[key, wind[key]] satisfies [keyof WindChoices, string]],
+      );
+
+/** The same in words: radial profile: “Holland 2010, at the surface” instead of “Holland 1980”. */
+export const chosenInWords = (wind: WindChoices | undefined): string[] =>
+  chosenOf(wind).map(([key, chosen]) => {
+    const { title, values } = WIND_CHOICES.find((choice) => choice.key === key)!;
+    const to = values.find(({ value }) => value === chosen)!;
+    const name = title.charAt(0).toLowerCase() + title.slice(1);
+    return `${name}: “${to.title}” instead of “${values[0]!.title}”`;
+  });

@@ -163,6 +163,43 @@ it('gives a run slip whose digest anybody can work out again from it', async () 
   await underwriter.post(`/runs/${id}/cancel`).expect(200);
 });
 
+describe('wind choices of a run', () => {
+  const options = (wind?: object) => ({
+    ...{ mesovortices: true, intensity: 'pressure', anchor: 'auto', gustThresholdsMs: [40, 50] },
+    ...(wind && { wind }),
+  });
+  const digestOf = async (wind?: object): Promise<string> => {
+    const { id } = await quoteFor([tracks[0]!], { options: options(wind) });
+    return (await superUser('quotes').where({ id }).first('inputs_digest')).inputs_digest;
+  };
+
+  it('that are all defaults name the same inputs as none at all', async () => {
+    const plain = await digestOf();
+    expect(await digestOf({})).toBe(plain);
+    expect(await digestOf({ profile: 'holland-1980', fetch: 'by-direction' })).toBe(plain);
+    const schwerdt = await digestOf({ asymmetry: 'schwerdt' });
+    expect(schwerdt).not.toBe(plain);
+    expect(await digestOf({ fetch: 'by-direction', asymmetry: 'schwerdt' })).toBe(schwerdt);
+    expect(await digestOf({ asymmetry: 'georgiou' })).not.toBe(schwerdt);
+  });
+
+  it('other than the defaults are said in words before the price is accepted and on the slip', async () => {
+    const words = [
+      'asymmetry from motion: “Schwerdt 1979” instead of “Lin & Chavas 2012”',
+      'turbulence: “ESDU” instead of “EN 1991-1-4”',
+    ];
+    const wind = { turbulence: 'esdu', asymmetry: 'schwerdt' };
+    const quote = await quoteFor([tracks[0]!], { options: options(wind) });
+    expect(quote.warnings.find(({ code }) => code === 'options-differ')!.text).toBe(
+      `Not as signed in calibration CAL-1 version 1: ${words.join('; ')}.`,
+    );
+    const { id } = (await underwriter.post(`/quotes/${quote.id}/accept`).expect(201)).body;
+    const slip = RunSlip.parse((await underwriter.get(`/runs/${id}/slip`).expect(200)).body);
+    expect(slip.choices).toEqual(words);
+    await underwriter.post(`/runs/${id}/cancel`).expect(200);
+  });
+});
+
 describe('watching', () => {
   const server = createServer(app).listen(0, '127.0.0.1');
   afterAll(() => server.close());

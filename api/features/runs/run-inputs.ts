@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
 import type { Calibration, CurveSet } from '#contract/models.ts';
 import type { RunOptions } from '#contract/runs.ts';
+import { chosenInWords, chosenOf } from '#contract/wind-choice-catalogue.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import { DEFAULT_OPTIONS, type ChainOptions } from '#engine/track/options.ts';
 import type { EditionHeader, RunTrack } from './run-ports.ts';
@@ -18,8 +19,9 @@ export interface RunInputs {
  * Name of a run's inputs: equal inputs, equal digest, whatever the order of the tracks. Purpose and cost centre move no
  * number and are left out. A run slip holds every part, so anybody can work it out again.
  */
-export const inputsDigest = ({ edition, tracks, calibration, curveSet, options }: RunInputs): string =>
-  createHash('sha256')
+export const inputsDigest = ({ edition, tracks, calibration, curveSet, options }: RunInputs): string => {
+  const chosen = chosenOf(options.wind);
+  return createHash('sha256')
     .update(
       JSON.stringify([
         'run inputs 1',
@@ -28,10 +30,12 @@ export const inputsDigest = ({ edition, tracks, calibration, curveSet, options }
         calibration.digest,
         curveSet.digest,
         [options.mesovortices, options.intensity, options.anchor, options.gustThresholdsMs],
-        ...(options.wind ? [options.wind] : []),
+        // Absent when every wind choice is the default, so that runs from before there was a choice keep their name.
+        ...(chosen.length > 0 ? [chosen] : []),
       ]),
     )
     .digest('hex');
+};
 
 export const chainOptions = ({ mesovortices, intensity, anchor, wind }: RunOptions): ChainOptions => ({
   ...DEFAULT_OPTIONS,
@@ -54,7 +58,7 @@ export const departures = (
   if (options.anchor !== settings.anchor) words.push(`anchor “${options.anchor}” instead of “${settings.anchor}”`);
   if (curveSetId !== curveSet.id)
     words.push(`curve set ${curveSet.name} version ${curveSet.version}, not the one it is paired with`);
-  return words;
+  return [...words, ...chosenInWords(options.wind)];
 };
 
 /** The remarks every track of a run carries because of its set-up. */

@@ -102,6 +102,9 @@ function Slip({ slip }: { slip: RunSlip }) {
             eyewall vortices {options.mesovortices ? 'on' : 'off'}; intensity from {options.intensity}; track wind{' '}
             {options.anchor}; gust chance above {options.gustThresholdsMs.map(gust).join(' and ')} {label}
           </Row>
+          <Row term="Wind choices">
+            {slip.choices.length === 0 ? 'every one at its default' : slip.choices.join('; ')}
+          </Row>
         </Section>
         <Section title="Price">
           <Row term={`Quote ${slip.quote.number}`}>
