@@ -11,6 +11,7 @@ const missing = <T extends z.ZodType>(schema: T) => schema.nullish().transform((
 const between = (least: number, most: number, unit: string) =>
   z.number().min(least, `Give ${least} to ${most}${unit}.`).max(most, `Give ${least} to ${most}${unit}.`);
 const metres = z.number().min(0, 'A distance can’t be negative.').max(1e7, 'Give metres, at most 10,000 km.');
+const radii = z.tuple([metres, metres, metres, metres], 'Give four radii: NE, SE, SW, NW.');
 const money = z.number().min(0, 'An amount can’t be negative.').max(1e15, 'The amount is too large to add up exactly.');
 
 /** A fix of the track; left-out fields are filled by the relations named in the reply. */
@@ -29,8 +30,11 @@ export const EvaluationFix = z.strictObject({
     ),
   ),
   radiusOfMaxWindM: missing(between(2000, 500_000, ' m')),
-  /** Quadrants NE, SE, SW, NW; 0 = none. Used only where the radius of maximum wind is missing. */
-  radius64KtM: missing(z.tuple([metres, metres, metres, metres], 'Give four radii: NE, SE, SW, NW.')),
+  /** Reach of 34, 50 and 64-kt wind in the quadrants NE, SE, SW, NW; 0 = none. */
+  radius34KtM: missing(radii),
+  radius50KtM: missing(radii),
+  /** By default used only where the radius of maximum wind is missing. */
+  radius64KtM: missing(radii),
   ringWidthFraction: missing(between(0.05, 1, '')),
   eyeVorticityRatio: missing(between(0, 1, '')),
   /** Hours since the centre last crossed from sea onto land; left out at every fix, they come from the land polygons. */

@@ -9,6 +9,10 @@ export const Averaging = z.union([z.literal(60), z.literal(120), z.literal(180),
 export const Intensity = z.enum(['pressure', 'wind']);
 export const Anchor = z.enum(['auto', 'mean', 'peak']);
 
+const metres = z.number().min(0);
+/** Reach of a wind in the quadrants NE, SE, SW, NW [m]; 0 is none, null not given. */
+const WindRadii = z.tuple([metres, metres, metres, metres]).nullable();
+
 /**
  * A fix as entered, m/s, m and hPa; null is "not given". The bounds here only keep nonsense out of the arithmetic:
  * what is plausible is said by the TRACK rules, in words, for every fix at once.
@@ -21,8 +25,9 @@ export const Fix = z.object({
   ambientPressureHpa: z.number().min(0).max(200_000).nullable(),
   maxWindMs: z.number().min(0).max(1000).nullable(),
   radiusOfMaxWindM: z.number().min(0).max(10_000_000).nullable(),
-  /** Quadrants NE, SE, SW, NW; 0 is none, null not given. */
-  radius64KtM: z.tuple([z.number().min(0), z.number().min(0), z.number().min(0), z.number().min(0)]).nullable(),
+  radius34KtM: WindRadii.default(null),
+  radius50KtM: WindRadii.default(null),
+  radius64KtM: WindRadii,
   ringWidthFraction: z.number().min(0).max(1).nullable(),
   eyeVorticityRatio: z.number().min(0).max(1).nullable(),
   hoursInland: z.number().min(0).max(1000).nullable(),

@@ -36,6 +36,8 @@ const fix = (
   maxWindMs: vmax,
   windAveragingS: 60,
   radiusOfMaxWindM: rmKm * 1000,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: null,
   eyeVorticityRatio: null,

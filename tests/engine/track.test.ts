@@ -109,6 +109,8 @@ const fix = (given: Partial<TrackFix>): TrackFix => ({
   maxWindMs: null,
   windAveragingS: 60,
   radiusOfMaxWindM: null,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: null,
   eyeVorticityRatio: null,

@@ -10,6 +10,8 @@ export const TRACK_FIX = {
   ambientPressureHpa: 1010,
   maxWindMs: 45,
   radiusOfMaxWindM: 40_000,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: null,
   eyeVorticityRatio: null,

@@ -25,6 +25,8 @@ export const gulfTrack = (shift = 0, asOf: string | null = null): Track => ({
     ambientPressureHpa: 1010,
     maxWindMs: wind!,
     radiusOfMaxWindM: radius! * 1000,
+    radius34KtM: null,
+    radius50KtM: null,
     radius64KtM: null,
     ringWidthFraction: null,
     eyeVorticityRatio: null,

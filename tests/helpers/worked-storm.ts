@@ -17,6 +17,8 @@ export const workedFixes: TrackFix[] = [
   maxWindMs: wind!,
   windAveragingS: 60,
   radiusOfMaxWindM: radius! * 1000,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: 0.35,
   eyeVorticityRatio: 0.2,

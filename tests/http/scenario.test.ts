@@ -18,6 +18,8 @@ const fixAt = (hour: number, over: Partial<Fix> = {}): Fix => ({
   ambientPressureHpa: null,
   maxWindMs: 45,
   radiusOfMaxWindM: null,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: null,
   eyeVorticityRatio: null,

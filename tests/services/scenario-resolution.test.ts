@@ -21,6 +21,8 @@ const fixAt = (hour: number, latitude: number, longitude: number, over: Partial<
   ambientPressureHpa: null,
   maxWindMs: null,
   radiusOfMaxWindM: null,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: null,
   eyeVorticityRatio: null,

@@ -16,6 +16,8 @@ const fix = {
   ambientPressureHpa: null,
   maxWindMs: 60,
   radiusOfMaxWindM: 30_000,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: null,
   eyeVorticityRatio: null,

@@ -27,6 +27,8 @@ const TRACK: Track = {
     ambientPressureHpa: 1010,
     maxWindMs: wind!,
     radiusOfMaxWindM: radius! * 1000,
+    radius34KtM: null,
+    radius50KtM: null,
     radius64KtM: null,
     ringWidthFraction: null,
     eyeVorticityRatio: null,

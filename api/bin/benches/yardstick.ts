@@ -24,6 +24,8 @@ export function yardstickStorm(): Storm {
     maxWindMs: wind,
     windAveragingS: 60,
     radiusOfMaxWindM: 1000 * km,
+    radius34KtM: null,
+    radius50KtM: null,
     radius64KtM: null,
     ringWidthFraction: 0.35,
     eyeVorticityRatio: 0.2,

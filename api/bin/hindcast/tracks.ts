@@ -48,6 +48,8 @@ const jtwcFixes = (text: string): TrackFix[] => {
       maxWindMs: amount(row.vmax, msFromKnots),
       windAveragingS: 60,
       radiusOfMaxWindM: amount(row.rmax, (miles) => miles * METRES_PER_NAUTICAL_MILE),
+      radius34KtM: null,
+      radius50KtM: null,
       radius64KtM: null,
       ringWidthFraction: null,
       eyeVorticityRatio: null,

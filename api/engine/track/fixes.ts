@@ -4,6 +4,9 @@ import { DomainError } from '../errors.ts';
 const WIND_AVERAGING = [60, 120, 180, 600] as const;
 export type WindAveraging = (typeof WIND_AVERAGING)[number];
 
+/** Greatest reach of a wind in the quadrants NE, SE, SW, NW [m]; 0 = none. */
+export type QuadrantRadii = readonly [number, number, number, number];
+
 /** One fix of a track as given; null = not given. */
 export type TrackFix = {
   /** Time on any clock [s]. */
@@ -16,8 +19,9 @@ export type TrackFix = {
   readonly maxWindMs: number | null;
   readonly windAveragingS: WindAveraging;
   readonly radiusOfMaxWindM: number | null;
-  /** Greatest reach of 64-kt wind in the quadrants NE, SE, SW, NW [m]; 0 = none. */
-  readonly radius64KtM: readonly [number, number, number, number] | null;
+  readonly radius34KtM: QuadrantRadii | null;
+  readonly radius50KtM: QuadrantRadii | null;
+  readonly radius64KtM: QuadrantRadii | null;
   /** Width of the vorticity ring over the radius of maximum wind [1]. */
   readonly ringWidthFraction: number | null;
   /** Eye vorticity over average vorticity [1]. */
@@ -103,6 +107,8 @@ export function requireTrack(fixes: readonly TrackFix[]): void {
     requirePositive(name('radius of maximum wind'), fix.radiusOfMaxWindM);
     requireNotNegative(name('maximum wind'), fix.maxWindMs);
     requireNotNegative(name('hours inland'), fix.hoursInland);
+    for (const radius of fix.radius34KtM ?? []) requireNotNegative(name('34-kt radius'), radius);
+    for (const radius of fix.radius50KtM ?? []) requireNotNegative(name('50-kt radius'), radius);
     for (const radius of fix.radius64KtM ?? []) requireNotNegative(name('64-kt radius'), radius);
   });
 }

@@ -12,9 +12,10 @@ import { staysInEye } from '#engine/footprint/site-series.ts';
 import type { LandIndex } from '#engine/geo/land.ts';
 import { REFERENCE_CURVE } from '#engine/loss/damage-curve.ts';
 import { quantisedLoss } from '#engine/loss/draw-losses.ts';
-import type { ResolvedFix, TrackFix } from '#engine/track/fixes.ts';
+import type { ResolvedFix } from '#engine/track/fixes.ts';
 import { prepareStorm, type Storm } from '#engine/track/storm.ts';
 import { PA_PER_HPA } from '#engine/units.ts';
+import { engineFix } from '../../compute/asked-fixes.ts';
 import { batchOfSites, groundOf, type Ground } from '../../compute/asked-sites.ts';
 import { AppError } from '../../errors.ts';
 
@@ -52,7 +53,11 @@ export class EvaluationService {
   private compute(request: EvaluationRequest, ground: readonly Ground[]): { storm: Storm; scores: SiteScores } {
     const asksForLand = request.track.some(({ hoursInland }) => hoursInland === null);
     try {
-      const storm = prepareStorm(request.track.map(engineFix), request.options, asksForLand ? this.land() : null);
+      const storm = prepareStorm(
+        request.track.map((fix) => engineFix(fix, fix.windAveragingSeconds ?? 60)),
+        request.options,
+        asksForLand ? this.land() : null,
+      );
       return { storm, scores: scoreSites(storm, batchOfSites(request.sites, ground), REFERENCE_CURVE) };
     } catch (error) {
       if (!(error instanceof DomainError)) throw error;
@@ -75,23 +80,6 @@ const refusal = (error: DomainError, sites: readonly Site[]): AppError => {
       : [fix === undefined ? 'body' : `body.track.${Number(fix) - 1}`, `${error.quantity} is ${told}`];
   return new AppError('invalid_request', `No result: ${message}`, { faults: [{ path, message }], cause: error });
 };
-
-const pa = (hPa: number | null) => (hPa === null ? null : hPa * PA_PER_HPA);
-
-const engineFix = (fix: EvaluationRequest['track'][number]): TrackFix => ({
-  timeS: Date.parse(fix.time) / 1000,
-  latitude: fix.latitude,
-  longitude: fix.longitude,
-  centralPressurePa: pa(fix.centralPressureHpa),
-  ambientPressurePa: pa(fix.ambientPressureHpa),
-  maxWindMs: fix.maxWindMs,
-  windAveragingS: fix.windAveragingSeconds ?? 60,
-  radiusOfMaxWindM: fix.radiusOfMaxWindM,
-  radius64KtM: fix.radius64KtM,
-  ringWidthFraction: fix.ringWidthFraction,
-  eyeVorticityRatio: fix.eyeVorticityRatio,
-  hoursInland: fix.hoursInland,
-});
 
 const isoOf = (timeS: number) => new Date(Math.round(timeS * 1000)).toISOString();
 

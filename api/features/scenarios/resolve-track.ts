@@ -7,29 +7,15 @@ import { DEFAULT_OPTIONS, type ChainOptions } from '#engine/track/options.ts';
 import { positionAt } from '#engine/track/position.ts';
 import { resolveFixes } from '#engine/track/resolution.ts';
 import { PA_PER_HPA } from '#engine/units.ts';
+import { engineFix } from '../../compute/asked-fixes.ts';
 import { fixList, plain } from './reading/track-wording.ts';
 import { checkEntry, checkResolved } from './track-rules.ts';
 
 const PATH_STEP_S = 1800;
 
-const pa = (hpa: number | null) => (hpa === null ? null : hpa * PA_PER_HPA);
-
-/** Fixes as the engine takes them: pascals, and seconds since 1970. */
+/** Fixes as the engine takes them. */
 export const engineFixes = ({ fixes, declarations }: Track): TrackFix[] =>
-  fixes.map((fix) => ({
-    timeS: Date.parse(fix.time) / 1000,
-    latitude: fix.latitude,
-    longitude: fix.longitude,
-    centralPressurePa: pa(fix.centralPressureHpa),
-    ambientPressurePa: pa(fix.ambientPressureHpa),
-    maxWindMs: fix.maxWindMs,
-    windAveragingS: declarations.windAveragingS,
-    radiusOfMaxWindM: fix.radiusOfMaxWindM,
-    radius64KtM: fix.radius64KtM,
-    ringWidthFraction: fix.ringWidthFraction,
-    eyeVorticityRatio: fix.eyeVorticityRatio,
-    hoursInland: fix.hoursInland,
-  }));
+  fixes.map((fix) => engineFix(fix, declarations.windAveragingS));
 
 const isoOf = (timeS: number) => new Date(Math.round(timeS * 1000)).toISOString();
 

@@ -1,5 +1,9 @@
 import { createHash } from 'node:crypto';
-import type { Track } from '#contract/scenarios.ts';
+import type { Fix, Track } from '#contract/scenarios.ts';
+
+/** Only where given, so that tracks saved before these radii were read keep their digest. */
+const outerRadii = ({ radius34KtM, radius50KtM }: Fix) =>
+  (radius34KtM ?? radius50KtM ?? null) === null ? [] : [radius34KtM ?? null, radius50KtM ?? null];
 
 /**
  * Digest of what a track says: its fixes and declarations in a fixed order of fields.
@@ -24,6 +28,7 @@ export const trackDigest = ({ fixes, declarations }: Track): string => {
       fix.ringWidthFraction,
       fix.eyeVorticityRatio,
       fix.hoursInland,
+      ...outerRadii(fix),
     ]),
   ];
   return createHash('sha256').update(JSON.stringify(canonical)).digest('hex');

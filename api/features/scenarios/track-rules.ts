@@ -85,7 +85,12 @@ const SPANS = [
   span('eyeVorticityRatio', 'eye vorticity ratio', 0, 0.6, (share) => plain(share, 3)),
   span('hoursInland', 'hours inland', 0, 240, (hours) => `${plain(hours)} h`),
 ];
-const WIDEST_64KT_M = 400 * METRES_PER_NAUTICAL_MILE;
+/** Widest radius believed of each wind [m]. */
+const WIDEST = [
+  { field: 'radius34KtM', knots: 34, metres: 800 * METRES_PER_NAUTICAL_MILE },
+  { field: 'radius50KtM', knots: 50, metres: 600 * METRES_PER_NAUTICAL_MILE },
+  { field: 'radius64KtM', knots: 64, metres: 400 * METRES_PER_NAUTICAL_MILE },
+] as const;
 
 const CHECKS_BEFORE_RESOLVING: EntryRule[] = [
   {
@@ -167,8 +172,9 @@ const CHECKS_BEFORE_RESOLVING: EntryRule[] = [
             `latitude ${plain(fix.latitude, 2)}° is beyond ${TROPICS_DEG}°, outside what a tropical wind field can say. End the track earlier.`,
           );
         }
-        if (fix.radius64KtM?.some((radius) => radius > WIDEST_64KT_M)) {
-          said.push(`a 64-kt radius is over ${plain(WIDEST_64KT_M / 1000)} km. Check its unit, or leave it empty.`);
+        for (const { field, knots, metres } of WIDEST) {
+          if (!fix[field]?.some((radius) => radius > metres)) continue;
+          said.push(`a ${knots}-kt radius is over ${plain(metres / 1000)} km. Check its unit, or leave it empty.`);
         }
         return said.map((text) => ({ fix: index, text: `${at(fix, index)}: ${text}` }));
       }),

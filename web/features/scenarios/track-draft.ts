@@ -23,6 +23,8 @@ export const emptyFix = (): DraftFix => ({
   ambientPressureHpa: null,
   maxWindMs: null,
   radiusOfMaxWindM: null,
+  radius34KtM: null,
+  radius50KtM: null,
   radius64KtM: null,
   ringWidthFraction: null,
   eyeVorticityRatio: null,

@@ -8,7 +8,13 @@ type Line = { number: number; cells: string[] };
 type Block = { id: string; name: string; declared: number | null; line: number; lines: Line[] };
 
 const HEADER = /^[A-Z]{2}\d{6}$/;
-const RADII_64 = [16, 17, 18, 19] as const;
+/** Where the four quadrants of each wind begin. */
+const RADII = [
+  { field: 'radius34KtM', knots: 34, from: 8 },
+  { field: 'radius50KtM', knots: 50, from: 12 },
+  { field: 'radius64KtM', knots: 64, from: 16 },
+] as const;
+type Radii = Pick<Fix, (typeof RADII)[number]['field']>;
 const QUADRANTS = ['north-east', 'south-east', 'south-west', 'north-west'] as const;
 const STATUS_WORDS: Record<string, string> = {
   EX: 'extratropical',
@@ -24,6 +30,8 @@ export const looksLikeBestTrack = (text: string): boolean => {
   const first = text.split(/\r?\n/).find((line) => line.trim() !== '') ?? '';
   return HEADER.test(first.split(',')[0]!.trim());
 };
+
+const metres = (miles: number | null) => (miles ?? 0) * METRES_PER_NAUTICAL_MILE;
 
 const asName = (name: string) =>
   name === 'UNNAMED' || name === '' ? 'Unnamed storm' : name.charAt(0) + name.slice(1).toLowerCase();
@@ -64,7 +72,7 @@ const timeOf = (date: string, clock: string): string | null => {
 /**
  * Reads NOAA best-track text: knots, hPa, nautical miles, 1-min winds.
  *
- * −99 and −999 mean not given. A 64-kt radius of 0 means that no such wind was found in that quadrant. The last column,
+ * −99 and −999 mean not given. A radius of 0 means that no such wind was found in that quadrant. The last column,
  * radius of maximum wind, may be missing altogether. A file may hold several storms.
  */
 export const readBestTrack = (text: string, asked?: string): StormText => {
@@ -86,8 +94,8 @@ export const readBestTrack = (text: string, asked?: string): StormText => {
 
   const fixes: Fix[] = [];
   const other: Record<string, number[]> = {};
-  let missingRadii = 0;
-  let partialRadii = 0;
+  const missingRadii = { 34: 0, 50: 0, 64: 0 };
+  const partialRadii = { 34: 0, 50: 0, 64: 0 };
   let missingRmw = 0;
   let missingPressure = 0;
   for (const { number, cells } of block.lines) {
@@ -108,18 +116,22 @@ export const readBestTrack = (text: string, asked?: string): StormText => {
     if (longitude === null) fault('longitude', cells[5] ?? '', 'isn’t degrees with E or W, for example 82.2W.');
     const wind = amount(6, 'maximum wind');
     const pressure = amount(7, 'central pressure');
-    const quadrants = RADII_64.map((at, i) => amount(at, `64-kt radius ${QUADRANTS[i]}`));
+    const radii: Radii = { radius34KtM: null, radius50KtM: null, radius64KtM: null };
+    for (const { field, knots, from } of RADII) {
+      const quadrants = QUADRANTS.map((name, i) => amount(from + i, `${knots}-kt radius ${name}`));
+      const given = quadrants.filter((radius) => radius !== null).length;
+      if (given === 0) missingRadii[knots]++;
+      else if (given < 4) partialRadii[knots]++;
+      const [ne, se, sw, nw] = quadrants.map((radius) => metres(radius));
+      if (given > 0) radii[field] = [ne!, se!, sw!, nw!];
+    }
     const rmw = amount(20, 'radius of maximum wind');
     if (time === null || latitude === null || longitude === null) continue;
 
-    const given = quadrants.filter((radius) => radius !== null).length;
-    if (given === 0) missingRadii++;
-    else if (given < 4) partialRadii++;
     if (rmw === null) missingRmw++;
     if (pressure === null) missingPressure++;
     const status = STATUS_WORDS[cells[3] ?? ''];
     if (status) (other[status] ??= []).push(fixes.length + 1);
-    const metres = (radius: number | null) => (radius ?? 0) * METRES_PER_NAUTICAL_MILE;
     fixes.push({
       time,
       latitude,
@@ -128,10 +140,7 @@ export const readBestTrack = (text: string, asked?: string): StormText => {
       ambientPressureHpa: null,
       maxWindMs: wind === null ? null : msFromKnots(wind),
       radiusOfMaxWindM: rmw === null ? null : metres(rmw),
-      radius64KtM:
-        given === 0
-          ? null
-          : [metres(quadrants[0]!), metres(quadrants[1]!), metres(quadrants[2]!), metres(quadrants[3]!)],
+      ...radii,
       ringWidthFraction: null,
       eyeVorticityRatio: null,
       hoursInland: null,
@@ -165,10 +174,14 @@ export const readBestTrack = (text: string, asked?: string): StormText => {
       'Wind averaging: 1 min, as the layout states',
       ...none(missingPressure, 'central pressure'),
       ...none(missingRmw, 'radius of maximum wind'),
-      ...none(missingRadii, '64-kt radii'),
-      ...(partialRadii > 0
-        ? [`64-kt radii given for some quadrants only at ${partialRadii} fixes; the others count as none`]
-        : []),
+      ...RADII.flatMap(({ knots }) => [
+        ...none(missingRadii[knots], `${knots}-kt radii`),
+        ...(partialRadii[knots] > 0
+          ? [
+              `${knots}-kt radii given for some quadrants only at ${partialRadii[knots]} fixes; the others count as none`,
+            ]
+          : []),
+      ]),
     ],
     fixes,
     findings,

@@ -7,7 +7,9 @@ import { coordinate, decimal, isMissing, pickStorm, quoted, type StormText } fro
 
 type Line = { cells: string[]; line: number };
 type Seconds = z.infer<typeof Averaging>;
-type NumberField = Exclude<keyof Fix, 'time' | 'latitude' | 'longitude' | 'radius64KtM'>;
+type RadiusField = 'radius34KtM' | 'radius50KtM' | 'radius64KtM';
+type NumberField = Exclude<keyof Fix, 'time' | 'latitude' | 'longitude' | RadiusField>;
+type RadiusColumn = { field: RadiusField; quadrant: number; factor: number; conversion: string | null };
 type Column = { field: NumberField; factor: number; conversion: string | null };
 
 const SPEEDS: [suffix: string, factor: number, words: string][] = [
@@ -45,13 +47,18 @@ const COLUMNS = new Map<string, Column>([
   ['eye_vorticity_ratio', bare('eyeVorticityRatio')],
   ['hours_inland', bare('hoursInland')],
 ]);
-const RADIUS_COLUMNS = new Map<string, { quadrant: number; factor: number; conversion: string | null }>(
-  QUADRANTS.flatMap((name, quadrant) =>
-    LENGTHS.map(
-      ([suffix, factor, words]): [string, { quadrant: number; factor: number; conversion: string | null }] => [
-        `radius_64kt_${name}_${suffix}`,
-        { quadrant, factor, conversion: words === '' ? null : `64-kt radii: ${words}` },
-      ],
+const RADIUS_COLUMNS = new Map<string, RadiusColumn>(
+  ([34, 50, 64] as const).flatMap((knots) =>
+    QUADRANTS.flatMap((name, quadrant) =>
+      LENGTHS.map(([suffix, factor, words]): [string, RadiusColumn] => [
+        `radius_${knots}kt_${name}_${suffix}`,
+        {
+          field: `radius${knots}KtM`,
+          quadrant,
+          factor,
+          conversion: words === '' ? null : `${knots}-kt radii: ${words}`,
+        },
+      ]),
     ),
   ),
 );
@@ -88,8 +95,8 @@ const timeOf = (cell: string): string | null => {
  *
  * Columns: `time_utc` (2026-09-04 18:00 or ISO 8601), `latitude`, `longitude` (degrees with sign or N/S/E/W; all three
  * required); `central_pressure_hpa|mb|pa`, `ambient_pressure_hpa|mb|pa`, `max_wind_kt|ms|mph|kmh`, `wind_averaging_s`
- * (60, 120, 180 or 600, the same on every line), `radius_of_max_wind_km|nm|m`, `radius_64kt_ne_nm|km|m` and likewise
- * `se`, `sw`, `nw`, `ring_width_fraction`, `eye_vorticity_ratio`, `hours_inland`, and `storm` where a file holds several.
+ * (60, 120, 180 or 600, the same on every line), `radius_of_max_wind_km|nm|m`, `radius_34kt_ne_nm|km|m` and likewise
+ * `se`, `sw`, `nw` and 50 and 64 kt, `ring_width_fraction`, `eye_vorticity_ratio`, `hours_inland`, and `storm` where a file holds several.
  * Separator comma, semicolon or tab; lines that begin with # are remarks; an empty cell, -99 and -999 mean not given.
  */
 export const readTrackCsv = (text: string, asked?: string): StormText => {
@@ -128,7 +135,7 @@ export const readTrackCsv = (text: string, asked?: string): StormText => {
   names.forEach((name, at) => {
     const radius = RADIUS_COLUMNS.get(name);
     const target =
-      COLUMNS.get(name)?.field ?? (radius ? `radius ${radius.quadrant}` : OTHERS.includes(name) ? name : null);
+      COLUMNS.get(name)?.field ?? (radius ? `${radius.field} ${radius.quadrant}` : OTHERS.includes(name) ? name : null);
     if (target === null) {
       faults.push({
         path: 'header',
@@ -177,12 +184,13 @@ export const readTrackCsv = (text: string, asked?: string): StormText => {
       ambientPressureHpa: null,
       maxWindMs: null,
       radiusOfMaxWindM: null,
+      radius34KtM: null,
+      radius50KtM: null,
       radius64KtM: null,
       ringWidthFraction: null,
       eyeVorticityRatio: null,
       hoursInland: null,
     };
-    const radii: (number | null)[] = [null, null, null, null];
     names.forEach((column, at) => {
       const target = COLUMNS.get(column);
       const radius = RADIUS_COLUMNS.get(column);
@@ -196,11 +204,8 @@ export const readTrackCsv = (text: string, asked?: string): StormText => {
       const { factor, conversion } = target ?? radius!;
       if (conversion) conversions.add(conversion);
       if (target) fix[target.field] = value * factor;
-      else radii[radius!.quadrant] = value * factor;
+      else (fix[radius!.field] ??= [0, 0, 0, 0])[radius!.quadrant] = value * factor;
     });
-    if (radii.some((radius) => radius !== null)) {
-      fix.radius64KtM = [radii[0] ?? 0, radii[1] ?? 0, radii[2] ?? 0, radii[3] ?? 0];
-    }
     const declared = cellOf('wind_averaging_s');
     if (!isMissing(declared)) {
       const seconds = decimal(declared);
