@@ -69,7 +69,7 @@ const upTo = (storm: Storm, timeS: number): Storm => {
   return {
     ...storm,
     stateCount,
-    states: storm.states.slice(0, stateCount * STATE_SIZE),
+    states: storm.states.subarray(0, stateCount * STATE_SIZE),
     outer: storm.outer.filter((k) => k < stateCount),
   };
 };

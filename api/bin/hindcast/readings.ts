@@ -50,7 +50,7 @@ export const readingsOf = (
     );
     const observations = hindcast.observations.filter(({ role }) => role === 'P');
     const places = new Map([...ground].map(([id, place]) => [id, read ? read(place) : place]));
-    const gusts = modelledEverywhere({ ...hindcast, observations, tracks }, places, {});
+    const gusts = modelledEverywhere({ ...hindcast, observations, tracks }, places, { mesovortices: false });
     return {
       title,
       pairs: observations.map((one) => ({
