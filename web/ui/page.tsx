@@ -28,7 +28,7 @@ export function Page({ title, heading, crumbs, sub, actions, note, children, cla
         id="content"
         tabIndex={-1}
         className={classNames(
-          'flex min-h-0 min-w-0 flex-col overflow-y-auto px-6 py-4.5 outline-none max-rail:p-3.5',
+          'relative flex min-h-0 min-w-0 flex-col overflow-y-auto px-6 py-4.5 outline-none max-rail:p-3.5',
           fixed && 'wide:overflow-hidden',
           className,
         )}

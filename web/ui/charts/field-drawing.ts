@@ -86,7 +86,8 @@ const drawContours = (drawing: Drawing, label: (speedMs: number) => string): voi
   context.globalAlpha = 0.6;
   for (const { coordinates } of lines) context.stroke(trace(drawing, coordinates));
   context.globalAlpha = 1;
-  let lowest = size - 24;
+  // Above the scale bar.
+  let lowest = size - 40;
   for (const { value, coordinates } of lines) {
     const corners = coordinates
       .flatMap(([outer]) => outer ?? [])

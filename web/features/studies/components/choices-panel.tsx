@@ -36,6 +36,11 @@ export function ChoicesPanel({ settings, onSettings }: ChoicesPanelProps) {
             </Button>
           </>
         )}
+        {changed === 0 && (
+          <p className="basis-full text-12 text-ink-2">
+            Change one: the wind it gives (B) then stands beside that of the defaults (A).
+          </p>
+        )}
       </header>
       <ScrollArea label="Settings of B" className="min-h-0 overflow-y-auto">
         <ChoicesForm

@@ -131,18 +131,18 @@ export function StormNumbers({ a, b }: NumbersProps) {
         {...{ a, b }}
         lines={[
           {
-            term: `Strongest gust over open sea, ${label}`,
+            term: `Strongest gust, ${label}`,
             of: (reply) => gust(strongest(reply)),
             number: (reply) => toUnit(strongest(reply)),
           },
-          { term: 'Where, from the centre', of: side },
+          { term: 'Where from the centre', of: side },
           {
-            term: `Maximum 1-min wind, ${label}`,
+            term: `Max. 1-min wind, ${label}`,
             of: (reply) => gust(reply.state.maxWindMs),
             number: (reply) => toUnit(reply.state.maxWindMs),
           },
           {
-            term: 'Radius of maximum wind, km',
+            term: 'Radius of max. wind, km',
             of: (reply) => decimal(reply.state.radiusOfMaxWindM / 1000, 1),
             number: (reply) => reply.state.radiusOfMaxWindM / 1000,
           },

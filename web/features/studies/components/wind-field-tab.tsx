@@ -79,14 +79,20 @@ export function WindFieldTab({ version, time, onTime, settings, onSettings }: Wi
       <div className="flex min-w-0 flex-col gap-3.5">
         <section
           aria-label="Time along the track"
-          className="flex flex-wrap items-center gap-x-5 gap-y-1.5 rounded-3 border border-rule bg-sheet px-4 py-2.5 shadow-1"
+          className="rounded-3 border border-rule bg-sheet px-4 pt-2.5 pb-1.5 shadow-1"
         >
-          <div className="min-w-52">
-            <b className="block text-20 font-black tracking-tight">{utc(new Date(timeMs))}</b>
-            <span className="text-12 text-ink-2">
-              {fixNumber > 0 ? `fix ${fixNumber} of ${fixTimes.length}` : 'between two fixes'}; Page Up and Down go from
-              fix to fix
-            </span>
+          <div className="mb-1 flex flex-wrap items-center gap-x-4 gap-y-1.5">
+            <div className="min-w-0 flex-1 basis-64">
+              <b className="block text-20 font-black tracking-tight">{utc(new Date(timeMs))}</b>
+              <span className="text-12 text-ink-2">
+                {fixNumber > 0 ? `fix ${fixNumber} of ${fixTimes.length}` : 'between two fixes'}; Page Up and Down go
+                from fix to fix
+              </span>
+            </div>
+            <Segmented label="To each side" value={halfWidth} options={HALF_WIDTHS} onChange={setHalfWidth} />
+            <a href={`#${CHOICES_ID}`} className="text-13 font-bold xl:hidden">
+              Change the settings
+            </a>
           </div>
           <Slider
             label="Time along the track"
@@ -95,16 +101,11 @@ export function WindFieldTab({ version, time, onTime, settings, onSettings }: Wi
             value={timeMs}
             valueText={moment}
             onChange={setMoved}
-            ticks={timeTicks(stops[0]!, stops.at(-1)!, narrow ? 3 : 6).map((tick) => ({
+            ticks={timeTicks(stops[0]!, stops.at(-1)!, narrow ? 3 : 9).map((tick) => ({
               at: tick.timeMs,
               label: tick.label,
             }))}
-            className="min-w-60 flex-1"
           />
-          <Segmented label="To each side" value={halfWidth} options={HALF_WIDTHS} onChange={setHalfWidth} />
-          <a href={`#${CHOICES_ID}`} className="text-13 font-bold xl:hidden">
-            Change the settings
-          </a>
         </section>
         {failed && (
           <ProblemNotice
@@ -158,7 +159,7 @@ function Fields({ a, b, difference, isOld, fileName }: FieldsProps) {
   }).join(', ');
   return (
     <div aria-busy={isOld} className="flex flex-col gap-3.5">
-      <div className={classNames('grid gap-3.5', 'grid-cols-2 max-md:grid-cols-1', isOld && 'opacity-75')}>
+      <div className={classNames('grid grid-cols-2 items-start gap-3.5 max-md:grid-cols-1', isOld && 'opacity-75')}>
         {shown.map((reply) => (
           <section
             key={name(reply)}
