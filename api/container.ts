@@ -8,6 +8,7 @@ import { SmtpMail } from './adapters/mail/smtp-mail.ts';
 import { StripePayments } from './adapters/payments/stripe.ts';
 import type { AppParts } from './app.ts';
 import { engineVersion } from './compute/engine-version.ts';
+import { landDigest } from './compute/land-digest.ts';
 import { landIndex } from './compute/land.ts';
 import { ThreadPool, type EnginePool } from './compute/pool.ts';
 import type { Config } from './config.ts';
@@ -61,6 +62,7 @@ import { RunReader } from './features/runs/run-reader.ts';
 import { runRoutes } from './features/runs/run-routes.ts';
 import { RunService } from './features/runs/run-service.ts';
 import { RunStore } from './features/runs/run-store.ts';
+import { SiteFetchStore } from './features/runs/site-fetch-store.ts';
 import { ScoreJob } from './features/runs/score-job.ts';
 import { ScenarioReader } from './features/scenarios/scenario-reader.ts';
 import { scenarioRoutes } from './features/scenarios/scenario-routes.ts';
@@ -219,6 +221,7 @@ export const createContainer = (
     ...{ runs: new RunStore(), quotes: new QuoteStore(), editions: new PortfolioReader() },
     ...{ tracks: new ScenarioReader(), models: new ModelsReader(new CalibrationStore()) },
     ...{ jobs: queue, announcements: listener, publicUrl: config.publicUrl },
+    fetches: new SiteFetchStore(landDigest),
   };
   const runParts = { ...runBase, closing: new RunClosing(runBase) };
   const runServices = { quotes: new QuoteService(runParts), runs: new RunService(runParts) };

@@ -16,6 +16,7 @@ import { landIndex } from './land.ts';
 import type {
   Answer,
   ExplainTask,
+  OverlandTask,
   FootprintTask,
   ScoreTask,
   SpreadTask,
@@ -41,6 +42,16 @@ const answer = <Reply>(work: () => Answer<Reply>): Answer<Reply> => {
 
 export const storm = ({ fixes, options }: StormTask): Answer<Tasks['storm']['reply']> =>
   answer(() => ({ reply: prepareStorm(fixes, options, landIndex()) }));
+
+/** Eight overland distances for each place, one after another [m]. */
+export const overland = ({ latitude, longitude }: OverlandTask): Answer<Tasks['overland']['reply']> =>
+  answer(() => {
+    const fetchM = new Float64Array(SECTOR_COUNT * latitude.length);
+    for (let i = 0; i < latitude.length; i++) {
+      fetchBySector(landIndex(), latitude[i]!, longitude[i]!, fetchM, SECTOR_COUNT * i);
+    }
+    return { reply: fetchM };
+  });
 
 /** Overland distances from the land polygons, for the sites on land that come without. */
 const fillFetch = ({ count, roughnessM, latitude, longitude, fetchM }: SiteBatch): void => {
@@ -74,12 +85,21 @@ export const footprint = ({ storm: prepared, focus, stop }: FootprintTask): Answ
     return { reply: grid && { grid, bands: footprintBands(grid) } };
   });
 
+const fetchOf = ({
+  roughnessM,
+  fetchM,
+  latitude,
+  longitude,
+}: ExplainTask['site']): ArrayLike<number> & Iterable<number> => {
+  const none = new Float64Array(SECTOR_COUNT);
+  if (roughnessM === null) return none;
+  return fetchM ?? fetchBySector(landIndex(), latitude, longitude, none);
+};
+
 export const explain = ({ fixes, options, site, gustsMs }: ExplainTask): Answer<Tasks['explain']['reply']> =>
   answer(() => {
     const prepared = prepareStorm(fixes, options, landIndex());
-    const fetch = new Float64Array(SECTOR_COUNT);
-    if (site.roughnessM !== null) fetchBySector(landIndex(), site.latitude, site.longitude, fetch);
-    const fetchM = [...fetch];
+    const fetchM = [...fetchOf(site)];
     const whole = { ...site, fetchM };
     return {
       reply: {

@@ -29,6 +29,9 @@ export type ScoreTask = {
   readonly stop: StopFlag;
 };
 
+/** Places on land whose overland distances are asked for [deg]. */
+export type OverlandTask = { readonly latitude: Float64Array; readonly longitude: Float64Array };
+
 export type FootprintTask = {
   readonly storm: Storm;
   /** Bounds of the sites, in longitudes that run on from the track's first. */
@@ -37,7 +40,11 @@ export type FootprintTask = {
 };
 export type FootprintReply = { readonly grid: FootprintGrid; readonly bands: Record<BandView, Bands> };
 
-export type ExplainTask = StormTask & { readonly site: Omit<Site, 'fetchM'>; readonly gustsMs: readonly number[] };
+export type ExplainTask = StormTask & {
+  /** Without overland distances they come from the land polygons. */
+  readonly site: Omit<Site, 'fetchM'> & { readonly fetchM: readonly number[] | null };
+  readonly gustsMs: readonly number[];
+};
 export type ExplainReply = {
   readonly fetchM: number[];
   readonly series: SiteSeries;
@@ -66,6 +73,7 @@ export type WindFieldTask = StormTask & { readonly question: WindFieldQuestion; 
 /** What a thread can be asked for: name → task and reply. */
 export type Tasks = {
   storm: { task: StormTask; reply: Storm };
+  overland: { task: OverlandTask; reply: Float64Array };
   score: { task: ScoreTask; reply: SiteScores };
   footprint: { task: FootprintTask; reply: FootprintReply | null };
   explain: { task: ExplainTask; reply: ExplainReply };

@@ -36,10 +36,22 @@ export interface FinishedTracks {
   require(tx: Tx, orgId: string, runId: string, runScenarioId: string): Promise<FinishedTrack>;
 }
 
+/** Overland distances measured when the edition was first scored, by site number. */
+export interface MeasuredFetches {
+  read(
+    tx: Tx,
+    orgId: string,
+    editionId: string,
+    first: number,
+    last: number,
+  ): Promise<ReadonlyMap<number, readonly number[]>>;
+}
+
 export interface ResultParts {
   transact: Transact;
   results: ResultStore;
   tracks: FinishedTracks;
+  fetches: MeasuredFetches;
   pool: EnginePool;
   audit: { record(tx: Tx, actor: Actor, action: string, object: string, details?: object): Promise<void> };
   engineVersion: () => string;
@@ -88,11 +100,12 @@ export class ResultService {
   }
 
   async detail(actor: Actor, at: At, siteNo: number): Promise<SiteDetail> {
-    const { results, pool, engineVersion } = this.parts;
-    const { track, site } = await this.read(actor, at, async (tx, found) => {
+    const { results, fetches, pool, engineVersion } = this.parts;
+    const { track, site, fetchM } = await this.read(actor, at, async (tx, found) => {
       const record = await results.site(tx, actor.orgId, found, siteNo);
       if (!record) throw notFound('Site', siteNo);
-      return { track: found, site: record };
+      const measured = await fetches.read(tx, actor.orgId, found.editionId, siteNo, siteNo);
+      return { track: found, site: record, fetchM: measured.get(siteNo) ?? null };
     });
     if (track.engineVersion !== engineVersion()) {
       throw new AppError(
@@ -108,7 +121,7 @@ export class ResultService {
     const explained = await pool.run('explain', {
       fixes: track.fixes,
       options: track.options,
-      site: { latitude, longitude, roughnessM, topographicFactor: 1 },
+      site: { latitude, longitude, roughnessM, fetchM, topographicFactor: 1 },
       gustsMs: track.gustThresholdsMs,
     });
     return { ...common, ...explanation(track, site, explained) };

@@ -24,6 +24,8 @@ import type {
 import type { RunRecord, RunStore } from './run-store.ts';
 import { filledWords, scenarioResult } from './scenario-result.ts';
 import { batchOf, ScoredSites } from './scored-sites.ts';
+import type { SiteFetchStore } from './site-fetch-store.ts';
+import { chunkFetches } from './site-fetches.ts';
 
 export const SCORE_QUEUE = 'runs.score';
 export const ScorePayload = z.object({ orgId: z.uuid(), runId: z.uuid(), runScenarioId: z.uuid() });
@@ -37,6 +39,7 @@ export interface ScoreParts {
   tracks: Tracks;
   models: Models;
   results: ResultSink;
+  fetches: SiteFetchStore;
   pool: EnginePool;
   audit: AuditTrail;
   engineVersion: () => string;
@@ -148,12 +151,13 @@ export class ScoreJob {
     { run, storm, curve }: Inputs,
     stopping: AbortController,
   ): Promise<ScoredSites> {
-    const { transact, editions, pool } = this.parts;
+    const { transact, editions, fetches, pool } = this.parts;
     const { signal } = stopping;
     const countAboveMs = run.options.gustThresholdsMs;
     const scored = new ScoredSites(countAboveMs.length);
     const progress = new Progress(this.parts, payload, stopping);
     await progress.report(0);
+    await transact(payload.orgId, (tx) => fetches.forgetOthers(tx, payload.orgId, run.editionId));
     const running = new Set<Promise<void>>();
     let after = 0;
     for (let index = 0; ; index += 1) {
@@ -165,8 +169,10 @@ export class ScoreJob {
       );
       if (sites.length === 0) break;
       after = sites.at(-1)!.siteNo;
-      const chunk = pool
-        .run('score', { storm, sites: batchOf(sites), curve, countAboveMs }, signal)
+      const chunk = chunkFetches(this.parts, payload.orgId, run.editionId, sites, signal)
+        .then((fetchM) =>
+          pool.run('score', { storm, sites: { ...batchOf(sites), fetchM }, curve, countAboveMs }, signal),
+        )
         .then(async (scores) => {
           scored.add(index, sites, scores);
           await progress.report(sites.length);

@@ -40,7 +40,7 @@ export interface ScoredSite {
   grossP95Minor: number | null;
 }
 
-/** The sites of a chunk as the engine takes them; overland distances are left to the land polygons. */
+/** The sites of a chunk as the engine takes them; whoever knows no overland distances leaves them to the land polygons. */
 export const batchOf = (sites: readonly RunSite[]): SiteBatch => {
   const column = (pick: (site: RunSite) => number) => Float64Array.from(sites, pick);
   return {
