@@ -41,7 +41,7 @@ const FILLING: Record<FillingRegion, readonly [number, number]> = {
  * @returns Maximum 1-min wind [m s⁻¹], ≥ 0.
  * @throws {DomainError} when a wind, time or distance is negative.
  * @source Kaplan & DeMaria (1995), J. Appl. Meteor. 34, 2499–2512, and (2001), J. Appl. Meteor. 40, 280–286; constants from
- *         memory. A storm already below the background wind stays as it is: product rule.
+ *         memory. A storm already below the background wind stays as it is, and none gains from the distance term: product rule.
  */
 export function kaplanDeMariaWind(
   landfallWind: number,
@@ -54,7 +54,7 @@ export function kaplanDeMariaWind(
   const start = LANDFALL_REDUCTION * landfallWind;
   const [south, north] = BLEND_LATITUDES;
   const share = Math.min(Math.max((Math.abs(latitude) - south) / (north - south), 0), 1);
-  const southern = decayed(start, hours, SOUTHERN) - distanceTerm(hours, coastDistance);
+  const southern = Math.min(decayed(start, hours, SOUTHERN) - distanceTerm(hours, coastDistance), start);
   return Math.max(0, (1 - share) * southern + share * decayed(start, hours, NORTHERN));
 }
 
