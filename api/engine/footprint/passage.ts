@@ -4,6 +4,7 @@ import { DRAG_LINE, DRAG_RANGE, roughnessOfDrag } from '../terrain/drag.ts';
 import { roughnessFactor } from '../terrain/roughness.ts';
 import { FIRST_QUIET_WIND, QUIET_WIND_COUNT } from '../track/quiet-distance.ts';
 import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
+import { quickLog } from '../numerics/quick-log.ts';
 import { radians } from '../units.ts';
 import { INNER_FACTOR, INNER_RADIUS, OUTER_FACTOR, OUTER_RADIUS } from '../winds/surface-factor.ts';
 import { PEAK_FACTOR, type Exposure } from './exposure.ts';
@@ -20,6 +21,11 @@ export type Passage = {
   /** Open-sea wind, and where it blows TO: eastward and northward part [m s⁻¹]. */
   readonly seaU: Float64Array;
   readonly seaV: Float64Array;
+  /** Distance from the centre [m], its natural logarithm, and the bearing from the centre as sine and cosine [1]. */
+  readonly distance: Float64Array;
+  readonly logDistance: Float64Array;
+  readonly sinBearing: Float64Array;
+  readonly cosBearing: Float64Array;
   /** Gust over open-sea wind, and 10-min mean over open-sea wind (without hills) [1]. */
   readonly factor: Float64Array;
   readonly meanFactor: Float64Array;
@@ -52,6 +58,10 @@ export function makePassage(storm: Storm): Passage {
     gust: new Float64Array(n),
     seaU: new Float64Array(n),
     seaV: new Float64Array(n),
+    distance: new Float64Array(n),
+    logDistance: new Float64Array(n),
+    sinBearing: new Float64Array(n),
+    cosBearing: new Float64Array(n),
     factor: new Float64Array(n),
     meanFactor: new Float64Array(n),
     crest: new Float64Array(n),
@@ -169,7 +179,11 @@ export function windsAt(
   from: number,
   to: number,
 ): void {
-  evaluate(storm.states, storm.wavenumber ?? 0, place, exposure, passage, from, to);
+  const { states, wavenumber } = storm;
+  locate(states, place, passage, from, to);
+  seaWinds(states, passage, from, to);
+  gustsOver(exposure, passage, from, to);
+  crests(states, wavenumber ?? 0, passage, from, to);
 }
 
 // Marks of outer times.
@@ -214,19 +228,12 @@ const DRAG_FLOOR = DRAG_LINE[0];
 const DRAG_SLOPE = DRAG_LINE[1];
 const PEAK = PEAK_FACTOR;
 
-function evaluate(
-  states: Float64Array,
-  wavenumber: number,
-  place: UnitPlace,
-  exposure: Exposure,
-  passage: Passage,
-  from: number,
-  to: number,
-): void {
+// Each step is a loop of its own: the processor then works on several times at once.
+
+/** Distance from the centre, bearing from it, and natural logarithm of the distance. */
+function locate(states: Float64Array, place: UnitPlace, passage: Passage, from: number, to: number): void {
+  const { state, wanted, distance, logDistance, sinBearing, cosBearing } = passage;
   const { x: px, y: py, z: pz } = place;
-  const { state, wanted, gust, seaU, seaV, factor, meanFactor, crest, phaseCos, phaseSin } = passage;
-  const { isAtSea, isUniform, weights, landFactor, landTurbulence, topographicFactor } = exposure;
-  const uniformWeight = weights[0]!;
   for (let k = from; k < to; k++) {
     const i = wanted[k]!;
     const at = state[i]! * STATE_SIZE;
@@ -250,14 +257,25 @@ function evaluate(
                       (5 / 7168 + chord2 * (35 / 294912 + chord2 * (63 / 2883584 + chord2 * (231 / 54525952)))))))
         : 2 * Math.asin(Math.min(chord / 2, 1));
     const tangent = Math.sqrt(east * east + north * north);
-    let r = EARTH_RADIUS * arc;
-    if (r < 1) r = 1;
     // At the very centre, and at its antipode, the bearing is taken as north.
     const perTangent = tangent > 0 ? 1 / tangent : 0;
-    const sinBearing = east * perTangent;
-    const cosBearing = tangent > 0 ? north * perTangent : 1;
+    sinBearing[i] = east * perTangent;
+    cosBearing[i] = tangent > 0 ? north * perTangent : 1;
+    let r = EARTH_RADIUS * arc;
+    if (r < 1) r = 1;
+    distance[i] = r;
+    logDistance[i] = quickLog(r);
+  }
+}
 
-    const y = states[at + 9]! * (states[at + 8]! - Math.log(r));
+/** Wind over the open sea. */
+function seaWinds(states: Float64Array, passage: Passage, from: number, to: number): void {
+  const { state, wanted, distance, logDistance, sinBearing, cosBearing, seaU, seaV } = passage;
+  for (let k = from; k < to; k++) {
+    const i = wanted[k]!;
+    const at = state[i]! * STATE_SIZE;
+    const r = distance[i]!;
+    const y = states[at + 9]! * (states[at + 8]! - logDistance[i]!);
     let term: number;
     if (y > TERM_START && y < TERM_END) {
       const place = (y - TERM_START) * TERM_PER_STEP;
@@ -280,7 +298,6 @@ function evaluate(
           ? OUTER_FACTOR
           : INNER_FACTOR + (r - INNER_RADIUS) * SEA_FACTOR_SLOPE;
     const surface = reduction * gradient;
-
     const x = r * states[at + 15]!;
     let cosInflow = COS_25;
     let sinInflow = SIN_25;
@@ -292,11 +309,24 @@ function evaluate(
         1 - a2 * (1 / 2 - a2 * (1 / 24 - a2 * (1 / 720 - a2 * (1 / 40320 - a2 * (1 / 3628800 - a2 / 479001600)))));
     }
     const sign = states[at + 12]!;
+    const sine = sinBearing[i]!;
+    const cosine = cosBearing[i]!;
     // Vortex wind blows TOWARDS bearing - sign (90 + inflow).
-    const u = surface * (-sign * cosBearing * cosInflow - sinBearing * sinInflow) + states[at + 13]!;
-    const v = surface * (sign * sinBearing * cosInflow - cosBearing * sinInflow) + states[at + 14]!;
-    const wind = Math.sqrt(u * u + v * v);
+    seaU[i] = surface * (-sign * cosine * cosInflow - sine * sinInflow) + states[at + 13]!;
+    seaV[i] = surface * (sign * sine * cosInflow - cosine * sinInflow) + states[at + 14]!;
+  }
+}
 
+/** Gust and its factor at the site. */
+function gustsOver(exposure: Exposure, passage: Passage, from: number, to: number): void {
+  const { wanted, gust, seaU, seaV, factor, meanFactor } = passage;
+  const { isAtSea, isUniform, weights, landFactor, landTurbulence, topographicFactor } = exposure;
+  const uniformWeight = weights[0]!;
+  for (let k = from; k < to; k++) {
+    const i = wanted[k]!;
+    const u = seaU[i]!;
+    const v = seaV[i]!;
+    const wind = Math.sqrt(u * u + v * v);
     let perSea: number;
     let seaTurbulence: number;
     if (wind >= DRAG_END) {
@@ -349,35 +379,40 @@ function evaluate(
     }
     const toGust = mean * (1 + PEAK * turbulence) * topographicFactor;
     gust[i] = wind * toGust;
-    seaU[i] = u;
-    seaV[i] = v;
     factor[i] = toGust;
     meanFactor[i] = mean;
+  }
+}
 
-    let added = 0;
-    if (x < 2) {
-      const vortexWind = states[at + 16]!;
-      if (vortexWind > 0) {
-        const tenth = 10 * x;
-        const cell = tenth | 0;
-        const inner = SHAPE[cell]!;
-        added = toGust * vortexWind * (inner + (tenth - cell) * (SHAPE[cell + 1]! - inner));
-        // Azimuth positive in the cyclonic sense; m times it by repeated turning.
-        const c = sinBearing;
-        const d = sign * cosBearing;
-        let re = c;
-        let im = d;
-        for (let m = 1; m < wavenumber; m++) {
-          const next = re * c - im * d;
-          im = re * d + im * c;
-          re = next;
-        }
-        const turnCos = states[at + 17]!;
-        const turnSin = states[at + 18]!;
-        phaseCos[i] = re * turnCos + im * turnSin;
-        phaseSin[i] = im * turnCos - re * turnSin;
-      }
+/** Gust a vortex crest adds, and the phase of the pattern. */
+function crests(states: Float64Array, wavenumber: number, passage: Passage, from: number, to: number): void {
+  const { state, wanted, distance, sinBearing, cosBearing, factor, crest, phaseCos, phaseSin } = passage;
+  for (let k = from; k < to; k++) {
+    const i = wanted[k]!;
+    const at = state[i]! * STATE_SIZE;
+    const x = distance[i]! * states[at + 15]!;
+    const vortexWind = states[at + 16]!;
+    if (!(x < 2 && vortexWind > 0)) {
+      crest[i] = 0;
+      continue;
     }
-    crest[i] = added;
+    const tenth = 10 * x;
+    const cell = tenth | 0;
+    const inner = SHAPE[cell]!;
+    crest[i] = factor[i]! * vortexWind * (inner + (tenth - cell) * (SHAPE[cell + 1]! - inner));
+    // Azimuth positive in the cyclonic sense; m times it by repeated turning.
+    const c = sinBearing[i]!;
+    const d = states[at + 12]! * cosBearing[i]!;
+    let re = c;
+    let im = d;
+    for (let m = 1; m < wavenumber; m++) {
+      const next = re * c - im * d;
+      im = re * d + im * c;
+      re = next;
+    }
+    const turnCos = states[at + 17]!;
+    const turnSin = states[at + 18]!;
+    phaseCos[i] = re * turnCos + im * turnSin;
+    phaseSin[i] = im * turnCos - re * turnSin;
   }
 }
