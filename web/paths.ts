@@ -33,5 +33,6 @@ export const paths = {
   run: (runId: string, view: { tab?: RunTab; scenario?: string; site?: string } = {}) =>
     withQuery(`/runs/${runId}`, view),
   billing: () => '/billing',
+  validation: () => '/validation',
   limits: () => '/limits',
 };

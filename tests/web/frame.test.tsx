@@ -30,6 +30,7 @@ const show = (address: string, working: Parameters<typeof Frame>[0]['working'] =
         organisation={{ name: 'Saltmarsh Mutual', initials: 'SM' }}
         person={{ name: 'Ines Halvard', role: 'Underwriter' }}
         work={ITEMS}
+        model={[]}
         account={[]}
         working={working}
         readOnlyChip={null}

@@ -1,6 +1,6 @@
 import { useEffect, useRef, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
-import { BookOpenText, Home, Layers, Play, ReceiptText, Route } from 'lucide-react';
+import { BookOpenText, ChartScatter, Home, Layers, Play, ReceiptText, Route } from 'lucide-react';
 import { Outlet, useLocation, useNavigate } from 'react-router-dom';
 import { MONEY_READERS, READERS } from '#contract/roles.ts';
 import type { Session } from '#contract/session.ts';
@@ -37,6 +37,11 @@ const workItems = (session: Session): NavigationItem[] => {
     { to: paths.runs(), label: 'Runs', icon: Play },
   ];
 };
+/** What the numbers rest on, for those who own or check the model. */
+const modelItems = (session: Session): NavigationItem[] =>
+  holdsOneOf(session, ['modeler', 'auditor'])
+    ? [{ to: paths.validation(), label: 'Validation', icon: ChartScatter }]
+    : [];
 const accountItems = (session: Session): NavigationItem[] => [
   ...(holdsOneOf(session, MONEY_READERS) ? [{ to: paths.billing(), label: 'Billing', icon: ReceiptText }] : []),
   { to: paths.limits(), label: 'Limits of use', icon: BookOpenText },
@@ -67,6 +72,7 @@ export function Component() {
           organisation={session.organisation}
           person={{ name: session.person.name, role: roleText(session) }}
           work={workItems(session)}
+          model={modelItems(session)}
           account={accountItems(session)}
           working={working.map((run) => ({
             id: run.id,

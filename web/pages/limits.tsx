@@ -1,7 +1,11 @@
 import { Printer } from 'lucide-react';
+import { Link } from 'react-router-dom';
 import { NOTICE_THEMES, NOTICE_VERSION } from '#contract/notices.ts';
+import { READERS } from '#contract/roles.ts';
 import { NOTICE_ICONS } from '../features/session/notice-icons.ts';
+import { holdsOneOf, useSession } from '../features/session/session-queries.ts';
 import { day } from '../lib/dates.ts';
+import { paths } from '../paths.ts';
 import { Button } from '../ui/button.tsx';
 import { Card } from '../ui/card.tsx';
 import { Page } from '../ui/page.tsx';
@@ -17,6 +21,7 @@ const NOT_MODELLED = [
 ];
 
 export function Component() {
+  const session = useSession();
   return (
     <Page
       title="Limits of use"
@@ -79,6 +84,12 @@ export function Component() {
                 </li>
               ))}
             </ul>
+            {holdsOneOf(session, READERS) && (
+              <p className="mt-3 text-16">
+                How modelled gusts compare with observed ones in past storms, good and bad:{' '}
+                <Link to={paths.validation()}>Validation</Link>.
+              </p>
+            )}
           </section>
         </Card>
       </div>

@@ -8,6 +8,7 @@ interface FrameProps {
   organisation: { name: string; initials: string };
   person: { name: string; role: string };
   work: readonly NavigationItem[];
+  model: readonly NavigationItem[];
   account: readonly NavigationItem[];
   working: readonly WorkingRun[];
   readOnlyChip: string | null;
@@ -18,7 +19,17 @@ interface FrameProps {
 const MAX_TABS = 4;
 
 /** Rail, and room for a page's top bar, main and note; bottom tabs on a phone. */
-export function Frame({ organisation, person, work, account, working, readOnlyChip, onSignOut, children }: FrameProps) {
+export function Frame({
+  organisation,
+  person,
+  work,
+  model,
+  account,
+  working,
+  readOnlyChip,
+  onSignOut,
+  children,
+}: FrameProps) {
   return (
     <FrameContext value={{ readOnlyChip }}>
       <a
@@ -32,11 +43,11 @@ export function Frame({ organisation, person, work, account, working, readOnlyCh
         Skip to content
       </a>
       <div className="grid h-dvh grid-cols-[var(--rail-w)_minmax(0,1fr)] grid-rows-[var(--top-h)_minmax(0,1fr)_auto] max-wide:grid-cols-[var(--rail-w-slim)_minmax(0,1fr)] max-rail:grid-cols-[minmax(0,1fr)] max-rail:grid-rows-[3rem_minmax(0,1fr)_auto_3.625rem] print:block print:h-auto">
-        <Rail {...{ organisation, person, working, onSignOut }} groups={[work, account]} />
+        <Rail {...{ organisation, person, working, onSignOut }} groups={[work, model, account]} />
         {children}
         <TabBar
           items={work.slice(0, MAX_TABS)}
-          more={[...work.slice(MAX_TABS), ...account]}
+          more={[...work.slice(MAX_TABS), ...model, ...account]}
           {...{ person, organisation, onSignOut }}
         />
       </div>
