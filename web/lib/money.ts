@@ -30,6 +30,10 @@ export const columnScale = (largestMinor: number, currency: string) => {
   return { minor: divisor * per, header: [currency, word].filter(Boolean).join(' ') };
 };
 
+/** A range in such a column: "4.1–12.6". */
+export const columnRange = (lowMinor: number, highMinor: number, unitMinor: number): string =>
+  figures(lowMinor / unitMinor, highMinor / unitMinor);
+
 /** To the cent: prices, balances, charges. "USD 23.63" */
 export const exactMoney = (minor: number, currency: string): string => `${currency} ${exactAmount(minor, currency)}`;
 export const exactAmount = (minor: number, currency: string): string => {

@@ -117,7 +117,7 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
               Use in a run
             </ButtonLink>
           )}
-          {canWrite && (
+          {canWrite && (tab === 'track' || isDirty) && (
             <Button
               variant="filled"
               icon={Save}

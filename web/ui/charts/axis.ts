@@ -48,5 +48,11 @@ export const logAxis = (from: number, to: number): Axis => {
   };
 };
 
+/** Decimals that tell the ticks of an axis apart, when each stands for this many of its units. */
+export const tickDecimals = ({ ticks }: Axis, unit = 1): number => {
+  const step = ((ticks[1] ?? 1) - (ticks[0] ?? 0)) / unit;
+  return [0, 1, 2].find((decimals) => Math.abs(step * 10 ** decimals - Math.round(step * 10 ** decimals)) < 1e-6) ?? 2;
+};
+
 /** "12.5%" for attributes and styles. */
 export const percentOf = (share: number): string => `${Math.round(share * 1e5) / 1e3}%`;

@@ -51,7 +51,7 @@ export function IntensityCard({ reply, onIntensity, evidence }: IntensityCardPro
         Two readings of the strongest fix, number {intensity.fix + 1}
         {pressure && `, ${hPa}`}.
       </p>
-      <dl className="grid grid-cols-2 border-y border-rule bg-well">
+      <dl className="grid grid-cols-[1.25fr_1fr] border-y border-rule bg-well">
         <Reading
           term="Pressure"
           reading={pressure}
@@ -111,7 +111,7 @@ interface ReadingProps {
 function Reading({ term, reading, meaning, missing, chip, used }: ReadingProps) {
   const { gust, label } = useUnits();
   return (
-    <div className="min-w-0 border-rule py-2.5 pr-3 pl-4.5 last:border-l last:pl-3.5">
+    <div className="min-w-0 border-rule py-2.5 pr-2 pl-4.5 last:border-l last:pl-3.5">
       <dt className="flex min-h-5.5 flex-wrap items-center gap-2">
         <b>{term}</b>
         {chip && (

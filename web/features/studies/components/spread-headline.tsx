@@ -1,7 +1,8 @@
 import type { SpreadReply } from '#contract/studies.ts';
-import { moneyRangeParts, shortMoney } from '../../../lib/money.ts';
+import { columnScale, moneyRangeParts, shortMoney } from '../../../lib/money.ts';
+import { decimal } from '../../../lib/numbers.ts';
 import { useUnits } from '../../../lib/units.tsx';
-import { linearAxis, percentOf } from '../../../ui/charts/axis.ts';
+import { linearAxis, percentOf, tickDecimals } from '../../../ui/charts/axis.ts';
 import { RangeBar } from '../../../ui/charts/range-bar.tsx';
 import { departuresOf } from '../chain-settings.ts';
 
@@ -76,14 +77,15 @@ interface GrossBarProps {
 
 function GrossBar({ gross, currency, on, stale }: GrossBarProps) {
   const axis = linearAxis(0, Math.max(gross.p95, gross.plain, 1), 4);
-  const text = (minor: number) => moneyRangeParts(minor, axis.high, currency).amount.split('–')[0]!;
+  const { minor } = columnScale(axis.high, currency);
+  const text = (tick: number) => decimal(tick / minor, tickDecimals(axis, minor));
   return (
     <div className="px-6 py-2 @max-2xl:pt-0">
       <RangeBar
         axis={axis}
         enhanced={on ? gross : null}
         plain={gross.plain}
-        format={(minor) => shortMoney(minor, currency)}
+        format={(value) => shortMoney(value, currency)}
         stale={stale}
       />
       <span aria-hidden className="relative block h-4.5 border-t border-rule text-12 text-ink-2">

@@ -72,10 +72,14 @@ export function SpreadTab(props: SpreadTabProps) {
   if (editions.length === 0) return <NoEdition />;
   return (
     <div className="flex flex-col gap-3.5">
-      <div className="flex flex-wrap items-end gap-x-3 gap-y-2.5">
+      <div className="flex flex-wrap items-center gap-x-3 gap-y-2.5">
+        <span aria-hidden className="text-13 font-bold">
+          At the sites of
+        </span>
         <SelectField
           label="At the sites of"
-          className="w-80 max-rail:w-full"
+          labelHidden
+          className="w-96 max-rail:w-full"
           value={editionId ?? ''}
           onChange={(event) => onEdition(event.target.value)}
         >

@@ -1,6 +1,6 @@
 import type { SpreadReply, SpreadRow } from '#contract/studies.ts';
-import { exactMoney, moneyRange, shortMoney } from '../../../lib/money.ts';
-import { signed } from '../../../lib/numbers.ts';
+import { columnRange, columnScale } from '../../../lib/money.ts';
+import { decimalsFor, signed } from '../../../lib/numbers.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { Table, Td, Th, Tr } from '../../../ui/table.tsx';
 
@@ -8,11 +8,18 @@ import { Table, Td, Th, Tr } from '../../../ui/table.tsx';
 export function SpreadTable({ reply }: { reply: SpreadReply }) {
   const { gust, gustRange, label, toUnit } = useUnits();
   const { currency, settings, base, rows } = reply;
+  const largest = Math.max(1, ...rows.map(({ grossChangeMinor }) => Math.abs(grossChangeMinor ?? 0)));
+  const scale =
+    currency === null
+      ? null
+      : columnScale(Math.max(largest, ...[base, ...rows].map(({ grossMinor }) => grossMinor?.p95 ?? 0)), currency);
   const gusts = (peak: SpreadRow['peakGustMs'], on: boolean) =>
     peak === null ? '–' : on ? gustRange(peak.p5, peak.p95) : `plain ${gust(peak.plain)}`;
   const money = (gross: SpreadRow['grossMinor'], on: boolean) => {
     if (gross === null || currency === null) return '–';
-    return on ? moneyRange(gross.p5, gross.p95, currency) : `plain ${shortMoney(gross.plain, currency)}`;
+    return on
+      ? columnRange(gross.p5, gross.p95, scale!.minor)
+      : `plain ${columnRange(gross.plain, gross.plain, scale!.minor)}`;
   };
   const layerOn = (row: SpreadRow) => (row.choice === 'mesovortices' ? !settings.mesovortices : settings.mesovortices);
   return (
@@ -28,7 +35,7 @@ export function SpreadTable({ reply }: { reply: SpreadReply }) {
             <Th>To</Th>
             <Th numeric>Peak gust, {label}</Th>
             <Th numeric>Change</Th>
-            <Th numeric>Event gross</Th>
+            <Th numeric>Event gross{scale && `, ${scale.header}`}</Th>
             <Th numeric>Change</Th>
           </tr>
         </thead>
@@ -49,7 +56,7 @@ export function SpreadTable({ reply }: { reply: SpreadReply }) {
                 {row.reason && <span className="block text-12 text-ink-2">{row.reason}</span>}
               </Td>
               <Td className="text-13">{row.from.title}</Td>
-              <Td className="min-w-44 text-13">
+              <Td className="min-w-44 py-1.5 text-13">
                 {row.to.title}
                 <span className="block text-12 text-ink-2">{row.to.source}</span>
               </Td>
@@ -65,7 +72,7 @@ export function SpreadTable({ reply }: { reply: SpreadReply }) {
               <Td numeric className="font-bold whitespace-nowrap">
                 {row.grossChangeMinor === null || currency === null
                   ? '–'
-                  : exactMoney(row.grossChangeMinor, currency).replace(`${currency} `, '')}
+                  : signed(row.grossChangeMinor / scale!.minor, decimalsFor(largest / scale!.minor))}
               </Td>
             </Tr>
           ))}

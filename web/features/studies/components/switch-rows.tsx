@@ -5,6 +5,7 @@ import { classNames } from '../../../lib/class-names.ts';
 import { columnScale } from '../../../lib/money.ts';
 import { decimal, decimalsFor, signed } from '../../../lib/numbers.ts';
 import { useUnits } from '../../../lib/units.tsx';
+import { tickDecimals } from '../../../ui/charts/axis.ts';
 import { signedAxis } from '../../../ui/charts/signed-axis.ts';
 import { StepAxis, StepBar } from '../../../ui/charts/step-bar.tsx';
 import { DEFAULT_SETTINGS, isSettingKey, valueOf, withValue } from '../chain-settings.ts';
@@ -125,9 +126,9 @@ export function SwitchRows({ reply, onTry }: SwitchRowsProps) {
       </div>
       <div className={classNames(GRID, 'h-5.5 border-t border-rule-strong @max-3xl:hidden')}>
         <span className="col-span-2" />
-        <StepAxis axis={gustAxis} format={(tick) => decimal(tick, gustAxis.high - gustAxis.low < 4 ? 1 : 0)} />
+        <StepAxis axis={gustAxis} format={(tick) => decimal(tick, tickDecimals(gustAxis))} />
         <span />
-        <StepAxis axis={grossAxis} format={(tick) => decimal(tick, grossAxis.high - grossAxis.low < 4 ? 1 : 0)} />
+        <StepAxis axis={grossAxis} format={(tick) => decimal(tick, tickDecimals(grossAxis))} />
         <span />
       </div>
       <p className="flex gap-2 border-t border-rule px-4 pt-2.25 pb-2.75 text-13 text-ink-2">
