@@ -88,3 +88,26 @@ export function betweenPlaces(a: Place, b: Place, share: number): Place {
     longitude: degrees(Math.atan2(y, x)),
   };
 }
+
+/**
+ * Place reached along a great circle.
+ *
+ * @param from     Starting place [deg].
+ * @param bearing  Bearing at the start, clockwise from north [deg].
+ * @param distance Way along the great circle [m]; negative goes the other way.
+ * @returns The place, longitude in (-180, 180] [deg].
+ * @source Spherical trigonometry (direct geodesic on the sphere).
+ */
+export function destination(from: Place, bearing: number, distance: number): Place {
+  const phi = radians(from.latitude);
+  const theta = radians(bearing);
+  const delta = distance / EARTH_RADIUS;
+  const sinPhi = Math.sin(phi) * Math.cos(delta) + Math.cos(phi) * Math.sin(delta) * Math.cos(theta);
+  const east = Math.sin(theta) * Math.sin(delta) * Math.cos(phi);
+  const ahead = Math.cos(delta) - Math.sin(phi) * sinPhi;
+  const longitude = from.longitude + degrees(Math.atan2(east, ahead));
+  return {
+    latitude: degrees(Math.asin(Math.min(1, Math.max(-1, sinPhi)))),
+    longitude: longitude - 360 * Math.ceil((longitude - 180) / 360),
+  };
+}
