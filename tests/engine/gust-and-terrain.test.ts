@@ -63,6 +63,18 @@ describe('sea drag, computed from the published formula', () => {
     expectPrinted(seaDrag(wind), drag);
     expectPrinted(seaRoughness(wind), z0);
   });
+  it('levels off at 2.0e-3 or not at all where that is asked for, and is the same below', () => {
+    expect(seaDrag(70, 'capped-2.0')).toBe(2.0e-3);
+    expectPrinted(seaDrag(70, 'uncapped'), '5.04e-3');
+    expect(seaDrag(70, 'capped-2.4')).toBe(seaDrag(70));
+    for (const law of ['capped-2.4', 'capped-2.0', 'uncapped'] as const) {
+      expect(seaDrag(8, law)).toBe(1.2e-3);
+      expect(seaDrag(20, law)).toBe(seaDrag(20));
+      expect(seaRoughness(20, law)).toBe(seaRoughness(20));
+    }
+    expect(seaRoughness(70, 'capped-2.0')).toBeLessThan(seaRoughness(70));
+    expect(seaRoughness(70, 'uncapped')).toBeGreaterThan(seaRoughness(70));
+  });
 });
 
 describe('land against sea, computed from the published formula', () => {
