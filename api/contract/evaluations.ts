@@ -41,7 +41,20 @@ export const EvaluationFix = z.strictObject({
   hoursInland: missing(between(0, 1000, ' h')),
 });
 
-export const EvaluationSite = z.strictObject({
+/** A hill that stands out from the land upwind, and where on it the site lies. */
+export const Hill = z.strictObject({
+  shape: z.enum(['ridge', 'escarpment', 'hill'], 'Available: ridge, escarpment, hill.'),
+  /** Of the crest above the land upwind. */
+  heightM: between(0, 3000, ' m'),
+  /** From the crest upwind to where the ground is half as high. */
+  halfLengthM: between(1, 20_000, ' m'),
+  /** From the crest: negative upwind, positive downwind. */
+  distanceM: between(-50_000, 50_000, ' m'),
+  /** Of ASCE 7: suburban B, open C, flat with water upwind D. */
+  exposure: z.enum(['B', 'C', 'D'], 'Available: B, C, D.'),
+});
+
+const SiteFields = z.strictObject({
   siteRef: z.string().trim().min(1, 'Give the site a reference.').max(120),
   latitude: between(-90, 90, ' degrees'),
   longitude: between(-180, 360, ' degrees'),
@@ -53,13 +66,25 @@ export const EvaluationSite = z.strictObject({
     .nullish(),
   /** Overland distance to the coast for wind FROM 0, 45, ..., 315 degrees; left out, it comes from the land polygons. */
   fetchM: missing(z.array(metres).length(8, 'Give eight distances: wind from 0, 45, ..., 315 degrees.')),
+  /** Speed-up of the gust by a hill; this or the hill itself, not both. */
   topographicFactor: missing(between(0.5, 3, '')),
+  hill: missing(Hill),
   /** Left out = no loss asked. */
   value: missing(money),
   deductible: missing(money),
   /** Most paid above the deductible; left out = none. */
   limit: missing(money),
 });
+
+export const EvaluationSite = SiteFields.superRefine(
+  ({ topographicFactor, hill }, context) => {
+    if ((topographicFactor ?? null) === null || (hill ?? null) === null) return;
+    const message = 'Give a topographic factor or a hill, not both.';
+    context.addIssue({ code: 'custom', path: ['hill'], message });
+  },
+  // Also when other fields are at fault, so that one answer names everything.
+  { when: ({ value }) => typeof value === 'object' && value !== null },
+);
 
 /** Every choice of the chain; what is left out takes its default. */
 export const EvaluationOptions = z.strictObject({

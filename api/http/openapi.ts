@@ -3,6 +3,7 @@ import { z } from 'zod';
 import { ALL_ENDPOINTS } from '#contract/all.ts';
 import type { Endpoint } from '#contract/endpoint.ts';
 import { Problem } from '#contract/errors.ts';
+import { CHAIN_CHOICES, WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
 
 const object = (schema: z.ZodType | undefined) => (schema instanceof z.ZodObject ? schema : undefined);
 
@@ -39,6 +40,21 @@ const responseOf = (endpoint: Endpoint): RouteConfig['responses'][number] =>
         content: { [endpoint.stream ?? 'application/json']: { schema: endpoint.response } },
       };
 
+const CHOICES = new Map([...WIND_CHOICES, ...CHAIN_CHOICES].map((choice) => [choice.key as string, choice]));
+
+/** Gives every published relation that can be chosen its words, wherever it stands in the document. */
+const describeChoices = (node: unknown): void => {
+  if (typeof node !== 'object' || node === null) return;
+  Object.values(node).forEach(describeChoices);
+  const { properties } = node as { properties?: Record<string, { enum?: string[]; description?: string }> };
+  for (const [key, schema] of Object.entries(properties ?? {})) {
+    const choice = CHOICES.get(key);
+    if (!choice || !choice.values.every(({ value }) => schema.enum?.includes(value))) continue;
+    const values = choice.values.map(({ value, title, source }) => `- \`${value}\`: ${title}. ${source}.`);
+    schema.description = [`${choice.title}. ${choice.meaning}`, choice.reason, values.join('\n')].join('\n\n');
+  }
+};
+
 /** The contract as OpenAPI 3.1. */
 export const openApiDocument = (publicUrl: string): object => {
   const registry = new OpenAPIRegistry();
@@ -65,7 +81,7 @@ export const openApiDocument = (publicUrl: string): object => {
       },
     });
   }
-  return new OpenApiGeneratorV31(registry.definitions).generateDocument({
+  const document = new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: '3.1.0',
     info: {
       title: 'Gustloom',
@@ -75,4 +91,6 @@ export const openApiDocument = (publicUrl: string): object => {
     },
     servers: [{ url: `${publicUrl}/api/v1` }],
   });
+  describeChoices(document);
+  return document;
 };

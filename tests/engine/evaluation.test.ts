@@ -3,6 +3,7 @@ import { fileURLToPath } from 'node:url';
 import { describe, expect, it } from 'vitest';
 import { EvaluationReply, EvaluationRequest, type EvaluationBody } from '#contract/evaluations.ts';
 import type { Problem } from '#contract/errors.ts';
+import { WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
 import { engineVersion } from '../../api/compute/engine-version.ts';
 import { landIndex } from '../../api/compute/land.ts';
 import type { AppError } from '../../api/errors.ts';
@@ -41,6 +42,33 @@ describe('an evaluation', () => {
     expect(evaluate(body).event).not.toBeNull();
     for (const site of body.sites) site.value = null;
     expect(evaluate(body).event).toBeNull();
+  });
+  it('gives the same bits with every default named, and takes every other value', () => {
+    const left = evaluate(workedRequest());
+    const named = Object.fromEntries(WIND_CHOICES.map(({ key, values }) => [key, values[0]!.value]));
+    expect(evaluate({ ...workedRequest(), options: named })).toEqual(left);
+    for (const { key, values } of WIND_CHOICES) {
+      for (const { value } of values.slice(1)) {
+        const { sites } = evaluate({ ...workedRequest(), options: { [key]: value } });
+        for (const { plain } of sites) expect([key, value, plain!.gustMs > 0]).toEqual([key, value, true]);
+      }
+    }
+    expect(evaluate(workedRequest())).toEqual(left);
+  });
+  it('works out a hill after ASCE 7, and refuses a factor beside it', () => {
+    // S4 of the worked example stands on this ridge; its factor is computed from the published formula: 1.192613.
+    const body = workedRequest();
+    const factor = body.sites[3]!.topographicFactor;
+    const hill = { shape: 'ridge', heightM: 20, halfLengthM: 100, distanceM: 0, exposure: 'B' } as const;
+    const given = evaluate(body).sites[3]!.plain!.gustMs;
+    body.sites[3] = { ...body.sites[3]!, topographicFactor: null, hill };
+    const { plain, filled } = evaluate(body).sites[3]!;
+    expect(plain!.gustMs).toBeCloseTo(given, 6);
+    expect(filled.topographicFactor).toBe('1.193, ASCE 7, ridge');
+    body.sites[3] = { ...body.sites[3]!, topographicFactor: factor };
+    expect(faultsOf(body)).toEqual(['sites.3.hill']);
+    body.sites[3] = { ...body.sites[3]!, latitude: 99, hill: { ...hill, halfLengthM: 0 } };
+    expect(faultsOf(body).sort()).toEqual(['sites.3.hill', 'sites.3.hill.halfLengthM', 'sites.3.latitude']);
   });
   it('equals plain in every enhanced field with the layer off', () => {
     for (const { plain, enhanced } of evaluate({ ...workedRequest(), options: { mesovortices: false } }).sites) {
@@ -156,6 +184,15 @@ describe('npm run evaluate', () => {
     const { status, stderr, reply } = run(JSON.stringify(workedRequest()));
     expect([status, stderr]).toEqual([0, '']);
     expect(reply).toEqual(evaluate(workedRequest()));
+  });
+  it('takes options by name, in and out like the service', () => {
+    const options = { asymmetry: 'schwerdt', gustFactor: 'wmo-off-sea', intensity: 'wind' } as const;
+    const { status, reply } = run(JSON.stringify({ ...workedRequest(), options }));
+    expect(status).toBe(0);
+    expect(reply).toEqual(evaluate({ ...workedRequest(), options }));
+    const refused = run(JSON.stringify({ ...workedRequest(), options: { asymmetry: 'lopsided' } }));
+    expect(refused.status).toBe(2);
+    expect(refused.reply).toMatchObject({ faults: [{ path: 'body.options.asymmetry' }] });
   });
   it('leaves with status 2 and a problem that names the field', () => {
     const { status, reply } = run(

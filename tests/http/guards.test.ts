@@ -7,6 +7,7 @@ import { endpoint } from '#contract/endpoint.ts';
 import { AppError } from '../../api/errors.ts';
 import { openEvents } from '../../api/http/events.ts';
 import { handle, handleStream } from '../../api/http/handle.ts';
+import { WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
 import { createTestApp } from '../helpers/app.ts';
 import { DUNE, PASSWORD } from '../helpers/people.ts';
 
@@ -203,5 +204,12 @@ describe('the description', () => {
     );
     expect(new Set(operations).size).toBe(operations.length);
     expect(operations).toContain('acceptQuote');
+  });
+  it('says of every wind choice what it decides and where each value comes from', async () => {
+    const { text } = await request(app).get('/api/v1/openapi.json').expect(200);
+    for (const { meaning, reason, values } of WIND_CHOICES) {
+      for (const words of [meaning, reason, ...values.map(({ source }) => source)])
+        expect(text).toContain(JSON.stringify(words).slice(1, -1));
+    }
   });
 });

@@ -1,3 +1,4 @@
+import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { Anchor, Intensity } from '#contract/scenarios.ts';
 import { CHAIN_CHOICES, WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
@@ -34,6 +35,14 @@ describe('the catalogue of wind choices', () => {
       anchor: DEFAULT_OPTIONS.anchor,
       mesovortices: DEFAULT_OPTIONS.mesovortices,
     });
+  });
+
+  it('is what the README lists', () => {
+    const readme = readFileSync(new URL('../../README.md', import.meta.url), 'utf8');
+    const lines = readme.split('\n').map((line) => line.replace(/\s+/g, ' ').trim());
+    for (const { key, title, values } of [...WIND_CHOICES, ...CHAIN_CHOICES.slice(0, 2)]) {
+      expect(lines).toContain(`| \`${key}\` | ${title} | ${values.map(({ value }) => `\`${value}\``).join(', ')} |`);
+    }
   });
 
   it('gives each a title of its own, a meaning and a reason in sentences, and a source for each value', () => {
