@@ -4,8 +4,19 @@ export interface Measured {
   unit: string;
 }
 
-/** Measures something and gives its numbers by name; `say` is for remarks, silent when only JSON is wanted. */
-export type Bench = (say: (line: string) => void) => Promise<Record<string, Measured>>;
+/** Something to be measured. */
+export interface Bench {
+  /** Names of the numbers it gives. */
+  readonly keys: readonly string[];
+  /** Gives them; `say` is for remarks, silent when only JSON is wanted. */
+  readonly measure: (say: (line: string) => void) => Promise<Record<string, Measured>>;
+}
+
+/** Processor time of this process, all its threads together [s]: what a busy machine changes least. */
+export const cpuSeconds = (): number => {
+  const { user, system } = process.cpuUsage();
+  return (user + system) / 1e6;
+};
 
 /** The middle value; of an even number of values the mean of the two middle ones. */
 export const median = (values: readonly number[]): number => {

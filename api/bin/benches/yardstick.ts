@@ -1,7 +1,8 @@
 import type { SiteBatch } from '#engine/footprint/site-peaks.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
-import { DEFAULT_OPTIONS } from '#engine/track/options.ts';
+import { DEFAULT_OPTIONS, type WindOptions } from '#engine/track/options.ts';
 import { prepareStorm, type Storm } from '#engine/track/storm.ts';
+import { CHUNK_SITES } from '../../compute/protocol.ts';
 
 // The storm and sites of tests/bench/chain-brute-force.c, so that both programs do the same work.
 
@@ -13,8 +14,8 @@ const FIXES: readonly (readonly [number, number, number, number, number, number,
   [24, 27.0, -179.0, 978, 34, 48, 8.8],
 ];
 
-/** The made-up storm of the yardstick, intensity by wind, anchored to the mean. */
-export function yardstickStorm(): Storm {
+/** The made-up storm of the yardstick, intensity by wind, anchored to the mean; by other relations where some are given. */
+export function yardstickStorm(wind: Partial<WindOptions> = {}): Storm {
   const fixes = FIXES.map(([hour, latitude, longitude, hPa, wind, km, hoursInland]): TrackFix => ({
     timeS: 3600 * hour,
     latitude,
@@ -31,16 +32,20 @@ export function yardstickStorm(): Storm {
     eyeVorticityRatio: 0.2,
     hoursInland,
   }));
-  return prepareStorm(fixes, { ...DEFAULT_OPTIONS, intensity: 'wind', anchor: 'mean' }, null);
+  return prepareStorm(fixes, { ...DEFAULT_OPTIONS, ...wind, intensity: 'wind', anchor: 'mean' }, null);
 }
 
-/** Sites from the yardstick's own generator, with insurance terms: 30 % at sea, the others with mixed fetch. */
-export function yardstickSites(count: number): SiteBatch {
+/** Numbers of the yardstick's own generator, each time from its beginning. */
+function yardstickNumbers(): () => number {
   let state = 12345;
-  const next = (): number => {
+  return () => {
     state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
     return state / 2 ** 32;
   };
+}
+
+/** Sites from the yardstick's own generator, with insurance terms: 30 % at sea, the others with mixed fetch. */
+export function yardstickSites(count: number, next: () => number = yardstickNumbers()): SiteBatch {
   const batch = {
     count,
     latitude: new Float64Array(count),
@@ -66,4 +71,10 @@ export function yardstickSites(count: number): SiteBatch {
     }
   }
   return batch;
+}
+
+/** The same sites in chunks as a run takes them, one in memory at a time. */
+export function* yardstickChunks(count: number): Generator<SiteBatch> {
+  const next = yardstickNumbers();
+  for (let done = 0; done < count; done += CHUNK_SITES) yield yardstickSites(Math.min(CHUNK_SITES, count - done), next);
 }
