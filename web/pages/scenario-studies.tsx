@@ -7,8 +7,10 @@ import { failureOf } from '../api/failure.ts';
 import { editionChoicesQuery } from '../features/runs/run-queries.ts';
 import { editionChoices } from '../features/runs/run-setup.ts';
 import { readSettings, writeSettings } from '../features/studies/chain-settings.ts';
+import { SourceEvidence } from '../features/studies/components/source-evidence.tsx';
 import { SpreadTab } from '../features/studies/components/spread-tab.tsx';
 import { WindFieldTab } from '../features/studies/components/wind-field-tab.tsx';
+import { validationQuery } from '../features/validation/validation-queries.ts';
 import { useDelayed } from '../lib/use-delayed.ts';
 import { ProblemNotice } from '../ui/problem.tsx';
 import { Skeleton } from '../ui/skeleton.tsx';
@@ -43,6 +45,7 @@ const useStudyAddress = () => {
 export function SettingsView({ version }: { version: ScenarioVersion }) {
   const { search, settings, put, putSettings } = useStudyAddress();
   const portfolios = useQuery(editionChoicesQuery());
+  const { data: validation } = useQuery(validationQuery());
   const waits = useDelayed(portfolios.isPending);
   const editions = useMemo(
     () =>
@@ -72,6 +75,7 @@ export function SettingsView({ version }: { version: ScenarioVersion }) {
       onEdition={(editionId) => put('edition', editionId)}
       settings={settings}
       onSettings={putSettings}
+      evidence={validation && <SourceEvidence validation={validation} />}
     />
   );
 }

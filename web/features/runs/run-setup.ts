@@ -3,6 +3,7 @@ import type { Calibration, CurveSet } from '#contract/models.ts';
 import type { Portfolio } from '#contract/portfolios.ts';
 import type { Purpose, QuoteRequest, RunOptions } from '#contract/runs.ts';
 import type { ScenarioSummary } from '#contract/scenarios.ts';
+import { chosenOf } from '#contract/wind-choice-catalogue.ts';
 
 type Options = z.output<typeof RunOptions>;
 
@@ -68,6 +69,7 @@ export const isSameRequest = (a: QuoteRequest, b: QuoteRequest): boolean => {
       request.options.intensity,
       request.options.anchor,
       request.options.gustThresholdsMs,
+      chosenOf(request.options.wind),
       request.purpose,
       request.costCentre,
     ]);

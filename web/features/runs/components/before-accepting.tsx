@@ -62,7 +62,7 @@ export function BeforeAccepting({ edition, quote, calibration, curveSet }: Befor
           </Point>
         )}
         {quote?.warnings.map((warning) => (
-          <Point key={warning.code} icon={TriangleAlert} tone="caution">
+          <Point key={warning.text} icon={TriangleAlert} tone="caution">
             {warning.text}
           </Point>
         ))}

@@ -1,9 +1,12 @@
 import { useState, type ReactNode } from 'react';
 import { Gauge } from 'lucide-react';
 import type { TrackResolution } from '#contract/scenarios.ts';
+import { chosenInWords, chosenOf } from '#contract/wind-choice-catalogue.ts';
 import { useUnits } from '../../../lib/units.tsx';
+import { Chip } from '../../../ui/chip.tsx';
 import { Segmented } from '../../../ui/segmented.tsx';
 import type { RunSetup } from '../run-setup.ts';
+import { DEFAULT_CHOICES, WindChoicesDialog } from './wind-choices-dialog.tsx';
 
 type Options = RunSetup['options'];
 
@@ -75,6 +78,7 @@ export function OptionsStep({ options, onChange, strongest, departures, calibrat
           </span>
         </Option>
       </div>
+      <WindChoicesRow options={options} onChange={onChange} />
       <StrongestFix strongest={strongest} intensity={options.intensity} />
       {departures.length > 0 && (
         <p className="mt-1 text-13 text-caution">
@@ -82,6 +86,44 @@ export function OptionsStep({ options, onChange, strongest, departures, calibrat
         </p>
       )}
     </>
+  );
+}
+
+/** The published relations behind the wind: all default, or which ones aren’t. */
+function WindChoicesRow({ options, onChange }: Pick<OptionsStepProps, 'options' | 'onChange'>) {
+  const [open, setOpen] = useState(false);
+  const words = chosenInWords(options.wind);
+  return (
+    <div className="mt-3 border-t border-rule pt-2.5 text-13">
+      <div className="flex flex-wrap items-center gap-x-2.5 gap-y-1">
+        <b>Wind field choices</b>
+        {words.length === 0 ? <Chip tone="done">all default</Chip> : <Chip tone="caution">{words.length} changed</Chip>}
+        <button
+          type="button"
+          className="-mr-2 ml-auto rounded-1 px-2 py-1 text-14 font-bold text-link hover:bg-hover pointer-coarse:min-h-11"
+          onClick={() => setOpen(true)}
+        >
+          Change<span className="sr-only"> wind field choices</span>
+        </button>
+      </div>
+      {words.length > 0 && (
+        <ul className="mt-1 list-disc pl-4.5 text-ink-2">
+          {words.map((word) => (
+            <li key={word}>{word}</li>
+          ))}
+        </ul>
+      )}
+      {open && (
+        <WindChoicesDialog
+          chosen={options.wind ?? DEFAULT_CHOICES}
+          onChoose={(wind) => {
+            const { wind: _, ...rest } = options;
+            onChange(chosenOf(wind).length === 0 ? rest : { ...rest, wind });
+          }}
+          onClose={() => setOpen(false)}
+        />
+      )}
+    </div>
   );
 }
 

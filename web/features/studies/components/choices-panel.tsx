@@ -5,7 +5,7 @@ import { Button } from '../../../ui/button.tsx';
 import { Chip } from '../../../ui/chip.tsx';
 import { ScrollArea } from '../../../ui/scroll-area.tsx';
 import { CHOICES, DEFAULT_SETTINGS, departuresOf, valueOf, withValue } from '../chain-settings.ts';
-import { ChoicesForm } from './choices-form.tsx';
+import { ChoicesForm } from '../../../ui/choices-form.tsx';
 
 export const CHOICES_ID = 'wind-field-choices';
 

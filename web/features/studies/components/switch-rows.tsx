@@ -3,7 +3,7 @@ import { Check, Info, Pencil } from 'lucide-react';
 import type { SpreadReply, SpreadRow } from '#contract/studies.ts';
 import { classNames } from '../../../lib/class-names.ts';
 import { columnScale } from '../../../lib/money.ts';
-import { decimal, decimalsFor, signed } from '../../../lib/numbers.ts';
+import { counted, decimal, decimalsFor, signed } from '../../../lib/numbers.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { tickDecimals } from '../../../ui/charts/axis.ts';
 import { signedAxis } from '../../../ui/charts/signed-axis.ts';
@@ -19,6 +19,8 @@ interface SwitchRowsProps {
 const WITHOUT_BARS = 'grid-cols-[minmax(0,1fr)_4.25rem_4.25rem]';
 const WITH_BARS = '@3xl:grid-cols-[minmax(0,11.5rem)_minmax(0,13rem)_minmax(0,1fr)_3.5rem_minmax(0,1fr)_3.75rem]';
 const GRID = classNames('grid items-center gap-x-2.5 px-4', WITHOUT_BARS, WITH_BARS);
+
+const keyOf = ({ choice, to }: SpreadRow) => `${choice} ${to.value}`;
 
 /** Whether the base of a row is the default, where there is one. */
 const isDefault = ({ choice, from }: SpreadRow): boolean =>
@@ -39,6 +41,21 @@ export function SwitchRows({ reply, onTry }: SwitchRowsProps) {
   const gustAxis = signedAxis(gusts.map((change) => change ?? 0));
   const grossAxis = signedAxis(gross.map((change) => change ?? 0));
   const decimals = decimalsFor(scale === null ? 0 : largest / scale.minor);
+
+  const moving = rows.filter(({ reason }) => reason === null).length;
+  const rowLook = (index: number) =>
+    classNames(
+      GRID,
+      'min-h-12 border-b border-rule py-1.5 last:border-b-0',
+      index === current && 'bg-selected shadow-[inset_3px_0_var(--action)]',
+    );
+  const setting = (row: SpreadRow, index: number) => (
+    <span role="cell" className="flex flex-wrap items-center gap-x-2 gap-y-0.5 @max-3xl:hidden">
+      <Values row={row} />
+      <TryButton {...{ row, index, current, onTry }} settings={reply.settings} onFocus={() => setCurrent(index)} />
+      {index === current && <span className="basis-full text-12 leading-tight text-ink-2">{row.to.source}</span>}
+    </span>
+  );
 
   const move = (event: KeyboardEvent) => {
     const step = { ArrowDown: 1, ArrowUp: -1, Home: -rows.length, End: rows.length }[event.key];
@@ -81,37 +98,15 @@ export function SwitchRows({ reply, onTry }: SwitchRowsProps) {
           </div>
         </div>
         <div role="rowgroup">
-          {rows.map((row, index) => (
-            <div
-              key={`${row.choice} ${row.to.value}`}
-              role="row"
-              className={classNames(
-                GRID,
-                'min-h-12 border-b border-rule py-1.5 last:border-b-0',
-                index === current && 'bg-selected shadow-[inset_3px_0_var(--action)]',
-              )}
-            >
+          {rows.slice(0, moving).map((row, index) => (
+            <div key={keyOf(row)} role="row" className={rowLook(index)}>
               <span role="rowheader" className="leading-tight @max-3xl:pr-2">
                 <b>{row.title}</b>
-                {row.reason && <span className="block text-12 text-ink-2">{row.reason}</span>}
                 <span className="mt-1 flex flex-wrap items-center gap-1.5 @3xl:hidden">
                   <Values row={row} />
                 </span>
               </span>
-              <span role="cell" className="flex flex-wrap items-center gap-x-2 gap-y-0.5 @max-3xl:hidden">
-                <Values row={row} />
-                <TryButton
-                  row={row}
-                  index={index}
-                  current={current}
-                  settings={reply.settings}
-                  onFocus={() => setCurrent(index)}
-                  onTry={onTry}
-                />
-                {index === current && (
-                  <span className="basis-full text-12 leading-tight text-ink-2">{row.to.source}</span>
-                )}
-              </span>
+              {setting(row, index)}
               <StepBar axis={gustAxis} change={gusts[index] ?? null} className="@max-3xl:hidden" />
               <b role="cell" className="text-right text-13 whitespace-nowrap">
                 {gusts[index] == null ? '–' : signed(gusts[index], 1)}
@@ -123,13 +118,36 @@ export function SwitchRows({ reply, onTry }: SwitchRowsProps) {
             </div>
           ))}
         </div>
-      </div>
-      <div className={classNames(GRID, 'h-5.5 border-t border-rule-strong @max-3xl:hidden')}>
-        <span className="col-span-2" />
-        <StepAxis axis={gustAxis} format={(tick) => decimal(tick, tickDecimals(gustAxis))} />
-        <span />
-        <StepAxis axis={grossAxis} format={(tick) => decimal(tick, tickDecimals(grossAxis))} />
-        <span />
+        <div aria-hidden className={classNames(GRID, 'h-5.5 border-t border-rule-strong @max-3xl:hidden')}>
+          <span className="col-span-2" />
+          <StepAxis axis={gustAxis} format={(tick) => decimal(tick, tickDecimals(gustAxis))} />
+          <span />
+          <StepAxis axis={grossAxis} format={(tick) => decimal(tick, tickDecimals(grossAxis))} />
+          <span />
+        </div>
+        {moving < rows.length && (
+          <div role="rowgroup" className="border-t border-rule-strong">
+            <div role="row">
+              <span role="columnheader" className="block bg-well px-4 py-1.5 text-12 text-ink-2">
+                No effect here, or not computed: {counted(rows.length - moving, 'setting')}
+              </span>
+            </div>
+            {rows.slice(moving).map((row, offset) => (
+              <div key={keyOf(row)} role="row" className={rowLook(moving + offset)}>
+                <span role="rowheader" className="leading-tight @max-3xl:col-span-3">
+                  <b>{row.title}</b>
+                  <span className="mt-1 flex flex-wrap items-center gap-1.5 @3xl:hidden">
+                    <Values row={row} />
+                  </span>
+                </span>
+                {setting(row, moving + offset)}
+                <span role="cell" className="text-12 leading-tight text-ink-2 @max-3xl:col-span-3 @3xl:col-span-4">
+                  {row.reason}
+                </span>
+              </div>
+            ))}
+          </div>
+        )}
       </div>
       <p className="flex gap-2 border-t border-rule px-4 pt-2.25 pb-2.75 text-13 text-ink-2">
         <Info size={15} strokeWidth={1.75} className="mt-px flex-none" aria-hidden />

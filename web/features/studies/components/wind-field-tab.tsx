@@ -159,12 +159,18 @@ function Fields({ a, b, difference, isOld, fileName }: FieldsProps) {
   }).join(', ');
   return (
     <div aria-busy={isOld} className="flex flex-col gap-3.5">
-      <div className={classNames('grid grid-cols-2 items-start gap-3.5 max-md:grid-cols-1', isOld && 'opacity-75')}>
+      <div
+        className={classNames(
+          'grid grid-cols-2 gap-3.5 max-md:grid-cols-1',
+          b === null && 'items-start',
+          isOld && 'opacity-75',
+        )}
+      >
         {shown.map((reply) => (
           <section
             key={name(reply)}
             aria-label={`Wind field, ${name(reply)}`}
-            className="overflow-hidden rounded-3 border border-rule bg-sheet shadow-1"
+            className="flex flex-col overflow-hidden rounded-3 border border-rule bg-sheet shadow-1"
           >
             <header className="flex min-h-13.5 flex-wrap content-center items-baseline gap-x-2.5 px-4 py-2">
               <h2 className="text-15">{name(reply)}</h2>
@@ -179,6 +185,7 @@ function Fields({ a, b, difference, isOld, fileName }: FieldsProps) {
               cursor={cursor}
               onCursor={setCursor}
               describedBy={readoutId}
+              className="mt-auto"
             />
           </section>
         ))}

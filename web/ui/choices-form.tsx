@@ -1,5 +1,5 @@
 import type { Choice } from '#contract/wind-choices.ts';
-import { SelectField } from '../../../ui/field.tsx';
+import { SelectField } from './field.tsx';
 
 interface ChoicesFormProps<Key extends string> {
   choices: readonly Choice<Key>[];
