@@ -53,12 +53,19 @@ export const namesOf = ({ errors }: Validation, group: GustErrors['group']): str
 export const residualOf = ({ role, standardisedMs }: ComparedObservation, modelledMs: number): number | null =>
   standardisedMs === null || role === 'S' ? null : modelledMs / standardisedMs - 1;
 
-const BASIS_WORDS: Record<string, string> = { memory: 'recalled', town: 'town centre', area: 'area' };
+/** A difference of two shares, in percentage points. */
+export const points = (difference: number): string => `${signed(100 * difference, 1)} points`;
+
+const BASIS_WORDS: Record<string, string> = {
+  memory: 'recalled',
+  town: 'taken at the town centre',
+  area: 'an area only',
+};
 
 /** What is known of where and how a wind was measured, in few words. */
 export const honestyOf = (one: ComparedObservation): string =>
   [
-    one.how === 'found' ? 'wind read in a public text' : 'wind recalled, not read',
+    one.how === 'found' ? 'Wind read in a public text' : 'Wind recalled, not read',
     `place ${BASIS_WORDS[one.placeBasis] ?? one.placeBasis}`,
     one.heightM === null ? 'height not stated, 10 m assumed' : `height ${decimal(one.heightM, 1)} m`,
     one.gustAveragingS === null ? 'averaging not stated, 3 s assumed' : `${one.gustAveragingS}-s gust`,

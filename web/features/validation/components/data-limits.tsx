@@ -1,11 +1,15 @@
 import type { Validation } from '#contract/validation.ts';
 import { counted } from '../../../lib/numbers.ts';
+import { useUnits } from '../../../lib/units.tsx';
 import { Card } from '../../../ui/card.tsx';
 import { Message } from '../../../ui/message.tsx';
-import { errorsFor, share, shareRange, signedShare } from '../validation-words.ts';
+import { errorsFor, points, residualOf, share, shareRange, signedShare } from '../validation-words.ts';
+
+const STRONG_MS = 58;
 
 /** What the comparison can't show, said beside it. */
 export function DataLimits({ validation }: { validation: Validation }) {
+  const { gust, label } = useUnits();
   const { observations } = validation;
   const of = <T extends { settings: string }>(list: readonly T[], settings: string): T =>
     list.find((one) => one.settings === settings)!;
@@ -18,6 +22,10 @@ export function DataLimits({ validation }: { validation: Validation }) {
   const lead = of(validation.againstDefault, 'wind').meanAbsolute;
   const recalled = observations.filter(({ role, how }) => role === 'P' && how === 'memory').length;
   const noHeight = observations.filter(({ role, heightM }) => role === 'P' && heightM === null).length;
+  const strong = observations
+    .filter(({ role, standardisedMs }) => role === 'P' && standardisedMs! >= STRONG_MS)
+    .map((one) => residualOf(one, one.modelled.default.plainMs)!);
+  const strongBias = strong.reduce((sum, residual) => sum + residual, 0) / strong.length;
   const largest = Math.max(
     ...validation.errors.filter(({ group, layer }) => group === 'storm' && layer === 'plain').map(({ count }) => count),
   );
@@ -26,9 +34,9 @@ export function DataLimits({ validation }: { validation: Validation }) {
     <Card title="What this can’t show">
       <Message tone="caution" title="The enhanced band isn’t a prediction interval.">
         It is the spread of one effect, where the vortices are and how strong. {inBand.count} of {inBand.of} observed
-        peaks lie inside it. No wind record validates the mesovortex enhancement: the median of the draws is{' '}
-        {signedShare(enhanced.bias.value)} off on average against {signedShare(plain.bias.value)} plain, with a mean
-        error of {share(enhanced.meanAbsolute.value)} against {share(plain.meanAbsolute.value)}.
+        peaks lie inside it. No wind record validates the mesovortex enhancement: the median of the draws has a bias of{' '}
+        {signedShare(enhanced.bias.value)} against {signedShare(plain.bias.value)} plain, and a mean error of{' '}
+        {share(enhanced.meanAbsolute.value)} against {share(plain.meanAbsolute.value)}.
       </Message>
       <ul className="mt-3 flex list-disc flex-col gap-1.5 pl-5 text-14">
         <li>
@@ -38,9 +46,14 @@ export function DataLimits({ validation }: { validation: Validation }) {
         </li>
         <li>
           <b>Few storms.</b> {counted(plain.count, 'peak')} in {counted(plain.storms, 'storm')}, {largest} of them in
-          one. The default’s mean error less that of wind is {signedShare(lead.value)} ({shareRange(lead)} over the
+          one. The default’s mean error less that of wind is {points(lead.value)} ({shareRange(lead)} over the
           resamples)
           {leadIsClear ? '' : ': the range includes zero, so these data alone don’t settle it'}.
+        </li>
+        <li>
+          <b>The strongest gusts.</b> At the {counted(strong.length, 'place')} that saw {gust(STRONG_MS)} {label} and
+          more the bias is {signedShare(strongBias)}. Picking places by what was observed lowers such a figure by
+          itself.
         </li>
         <li>
           <b>Open data.</b> Public copies of preliminary reports, not the agencies’ station tables. Heights are unstated

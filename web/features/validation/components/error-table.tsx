@@ -37,7 +37,9 @@ export function ErrorTable({ validation }: { validation: Validation }) {
           <tr>
             <Th>Setting</Th>
             <Th numeric>Bias</Th>
-            <Th numeric>Mean absolute error</Th>
+            <Th numeric className="whitespace-normal!">
+              Mean absolute error
+            </Th>
             <Th numeric priority={2}>
               RMSE, {label}
             </Th>

@@ -21,8 +21,12 @@ export function GroupTable({ validation, title, group, nameHeader, name }: Group
           <tr>
             <Th>{nameHeader}</Th>
             <Th numeric>Peaks</Th>
-            <Th numeric>Bias, pressure</Th>
-            <Th numeric>Mean error, pressure</Th>
+            <Th numeric className="whitespace-normal!">
+              Bias, pressure
+            </Th>
+            <Th numeric className="whitespace-normal!">
+              Mean error, pressure
+            </Th>
             <Th numeric priority={2}>
               Bias, wind
             </Th>

@@ -49,9 +49,10 @@ export function GustScatter({ validation }: { validation: Validation }) {
   const points = validation.observations.filter(
     ({ role, standardisedMs }) => standardisedMs !== null && (shown === 'all' ? DRAWN[role] : role === 'P'),
   );
-  const reach = validation.observations
-    .filter(({ role, standardisedMs }) => standardisedMs !== null && DRAWN[role])
-    .flatMap((one) => [one.standardisedMs!, one.modelled.wind.p50Ms, one.modelled.default.plainMs]);
+  // The axes stay when another setting is looked at.
+  const reach = points.flatMap(({ standardisedMs, modelled: { default: byPressure, wind } }) => [
+    ...[standardisedMs!, byPressure.plainMs, byPressure.p50Ms, wind.plainMs, wind.p50Ms],
+  ]);
   const axis = linearAxis(toUnit(Math.min(...reach)), toUnit(Math.max(...reach)), 6);
   const near = points.filter((one) => Math.abs(residualOf(one, modelledMs(one)) ?? 1) <= NEAR).length;
   const way = `${settings === 'default' ? 'pressure' : 'wind'}, ${layer === 'plain' ? 'plain' : 'enhanced, median of the draws'}`;

@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { Fragment, useState } from 'react';
 import type { ComparedObservation, Validation } from '#contract/validation.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { Card } from '../../../ui/card.tsx';
@@ -36,8 +36,12 @@ export function StationTable({ validation }: { validation: Validation }) {
             <Th numeric priority={3}>
               Reported, {label}
             </Th>
-            <Th numeric>At 10 m, 3 s, {label}</Th>
-            <Th numeric>Pressure, {label}</Th>
+            <Th numeric className="whitespace-normal!">
+              Observed, {label}
+            </Th>
+            <Th numeric className="whitespace-normal!">
+              Pressure, {label}
+            </Th>
             <Th numeric>Residual</Th>
             <Th numeric priority={2}>
               Wind, {label}
@@ -51,62 +55,63 @@ export function StationTable({ validation }: { validation: Validation }) {
           {rows.map((one) => {
             const { default: byPressure, wind } = one.modelled;
             return (
-              <Tr key={one.id}>
-                <Td className="min-w-32 py-1.5 md:min-w-64">
-                  <b>{one.station}</b>
-                  <span className="block text-12 text-ink-2">
-                    {one.storm}; {honestyOf(one)}; {ground(one)}
-                  </span>
-                  <span className="block text-12 text-ink-2">
-                    {SOURCE_WORDS[one.sourceClass]}: <Source one={one} />
-                    {one.note && `; ${one.note}`}
-                  </span>
-                </Td>
-                <Td priority={2} className="min-w-32 py-1.5 text-13">
-                  {ROLE_WORDS[one.role].name}
-                  {one.compareUntilUtc && (
-                    <span className="block text-12 text-ink-2">until {untilText(one.compareUntilUtc)}</span>
-                  )}
-                </Td>
-                <Td numeric priority={3}>
-                  {one.gustMs === null
-                    ? `mean ${one.sustainedMs === null ? '–' : gust(one.sustainedMs)}`
-                    : gust(one.gustMs)}
-                </Td>
-                <Td numeric>
-                  {one.standardisedMs === null ? '–' : `${one.role === 'L' ? '≥ ' : ''}${gust(one.standardisedMs)}`}
-                </Td>
-                <Td numeric className="whitespace-nowrap">
-                  {gust(byPressure.plainMs)}
-                  <span className="block text-12 text-ink-2">{gustRange(byPressure.p5Ms, byPressure.p95Ms)}</span>
-                </Td>
-                <Td numeric className="font-bold whitespace-nowrap">
-                  {residualText(one, byPressure.plainMs)}
-                </Td>
-                <Td numeric priority={2} className="whitespace-nowrap">
-                  {gust(wind.plainMs)}
-                  <span className="block text-12 text-ink-2">{gustRange(wind.p5Ms, wind.p95Ms)}</span>
-                </Td>
-                <Td numeric priority={2} className="whitespace-nowrap">
-                  {residualText(one, wind.plainMs)}
-                </Td>
-              </Tr>
+              <Fragment key={one.id}>
+                <Tr className="border-b-0 [&>td]:pt-1.5 [&>td]:align-top max-md:[&>td]:px-1.5 max-md:[&>td:first-child]:pl-4 max-md:[&>td:last-child]:pr-3">
+                  <Td className="min-w-24 font-bold">{one.station}</Td>
+                  <Td priority={2} className="text-13">
+                    {ROLE_WORDS[one.role].name}
+                  </Td>
+                  <Td numeric priority={3}>
+                    {one.gustMs === null
+                      ? `mean ${one.sustainedMs === null ? '–' : gust(one.sustainedMs)}`
+                      : gust(one.gustMs)}
+                  </Td>
+                  <Td numeric className="whitespace-nowrap">
+                    {one.standardisedMs === null ? '–' : `${one.role === 'L' ? '≥ ' : ''}${gust(one.standardisedMs)}`}
+                  </Td>
+                  <Td numeric className="whitespace-nowrap">
+                    {gust(byPressure.plainMs)}
+                    <span className="block text-12 text-ink-2">{gustRange(byPressure.p5Ms, byPressure.p95Ms)}</span>
+                  </Td>
+                  <Td numeric className="font-bold">
+                    {residualText(one, byPressure.plainMs)}
+                  </Td>
+                  <Td numeric priority={2} className="whitespace-nowrap">
+                    {gust(wind.plainMs)}
+                    <span className="block text-12 text-ink-2">{gustRange(wind.p5Ms, wind.p95Ms)}</span>
+                  </Td>
+                  <Td numeric priority={2}>
+                    {residualText(one, wind.plainMs)}
+                  </Td>
+                </Tr>
+                <Tr>
+                  <td colSpan={8} className="px-4 pb-2 text-12 text-ink-2">
+                    {one.storm}. <span className="md:hidden">{ROLE_WORDS[one.role].name}. </span>
+                    {one.compareUntilUtc && `Until ${untilText(one.compareUntilUtc)}. `}
+                    {honestyOf(one)}; {ground(one)}. {SOURCE_WORDS[one.sourceClass]}: <Source one={one} />
+                    {one.note && `; ${one.note}`}.
+                  </td>
+                </Tr>
+              </Fragment>
             );
           })}
         </tbody>
       </Table>
-      <dl className="border-t border-rule px-4 py-2.5 text-13 text-ink-2">
-        <div>
-          Modelled: plain gust, and under it the 5th to 95th percentile over 264 vortex draws, which isn’t a prediction
-          interval. Residual: plain less observed, as a share of the observed.
-        </div>
-        {Object.values(ROLE_WORDS).map(({ name, meaning }) => (
-          <div key={name}>
-            <dt className="inline font-bold text-ink">{name}: </dt>
-            <dd className="inline">{meaning}.</dd>
-          </div>
-        ))}
-      </dl>
+      <div className="border-t border-rule px-4 py-2.5 text-13 text-ink-2">
+        <p>
+          Observed: at 10 m and over 3 s in the same exposure. Modelled: plain gust, and under it the 5th to 95th
+          percentile over 264 vortex draws, which isn’t a prediction interval. Residual: plain less observed, as a share
+          of the observed.
+        </p>
+        <dl className="mt-1.5">
+          {Object.values(ROLE_WORDS).map(({ name, meaning }) => (
+            <div key={name}>
+              <dt className="inline font-bold text-ink">{name}: </dt>
+              <dd className="inline">{meaning}.</dd>
+            </div>
+          ))}
+        </dl>
+      </div>
     </Card>
   );
 }
@@ -128,7 +133,7 @@ const residualText = (one: ComparedObservation, modelledMs: number): string => {
 function Source({ one: { source, sourceUrl } }: { one: ComparedObservation }) {
   if (sourceUrl === null) return <>{source}</>;
   return (
-    <a href={sourceUrl} target="_blank" rel="noreferrer" className="break-words">
+    <a href={sourceUrl} target="_blank" rel="noreferrer" className="break-words text-link underline underline-offset-2">
       {source}
     </a>
   );
