@@ -28,6 +28,8 @@ const Environment = z
     STRIPE_API_URL: optional(z.url()),
     /** Threads a worker scores sites with; absent, two. Results don't depend on it. */
     COMPUTE_THREADS: optional(z.coerce.number().int().min(1).max(256)),
+    /** Hours after which a track from an advisory counts as stale; absent, six. */
+    STALE_AFTER_HOURS: optional(z.coerce.number().gt(0).max(8760)),
   })
   .superRefine(
     (values, check) => {
@@ -54,6 +56,7 @@ export interface Config {
   readonly mail: { readonly smtpUrl: string; readonly from: string; readonly sinkFolder: string | null };
   readonly stripe: { readonly secretKey: string; readonly webhookSecret: string; readonly apiUrl: string | null };
   readonly computeThreads: number | null;
+  readonly staleAfterHours: number;
 }
 
 /** Reads the environment once; a bad or missing value stops the start, and all of them are named. */
@@ -84,5 +87,6 @@ export const readConfig = (environment: NodeJS.ProcessEnv): Config => {
       apiUrl: values.STRIPE_API_URL ?? null,
     }),
     computeThreads: values.COMPUTE_THREADS ?? null,
+    staleAfterHours: values.STALE_AFTER_HOURS ?? 6,
   });
 };

@@ -68,6 +68,8 @@ import { ScenarioReader } from './features/scenarios/scenario-reader.ts';
 import { scenarioRoutes } from './features/scenarios/scenario-routes.ts';
 import { ScenarioService } from './features/scenarios/scenario-service.ts';
 import { ScenarioStore } from './features/scenarios/scenario-store.ts';
+import { variantRoutes } from './features/scenarios/variant-routes.ts';
+import { VariantService } from './features/scenarios/variant-service.ts';
 import { AccessClaims, TOKEN_ALGORITHM, TOKEN_ISSUER } from './features/session/access-token.ts';
 import { sessionRoutes } from './features/session/session-routes.ts';
 import { SessionService } from './features/session/session-service.ts';
@@ -198,7 +200,10 @@ export const createContainer = (
   const checkJob = new CheckJob(portfolioParts);
 
   // Scenarios, curves, calibrations
-  const scenarios = new ScenarioService(transact, new ScenarioStore(), landIndex, { clock, ids, audit });
+  const scenarios = new ScenarioService(transact, new ScenarioStore(), landIndex, {
+    ...{ clock, ids, audit, staleAfterHours: config.staleAfterHours },
+  });
+  const variants = new VariantService(transact, new ScenarioStore(), scenarios, landIndex);
   const curves = new CurveService(transact, new CurveStore());
   const calibrations = new CalibrationService(transact, new CalibrationStore());
 
@@ -221,6 +226,7 @@ export const createContainer = (
     ...{ runs: new RunStore(), quotes: new QuoteStore(), editions: new PortfolioReader() },
     ...{ tracks: new ScenarioReader(), models: new ModelsReader(new CalibrationStore()) },
     ...{ jobs: queue, announcements: listener, publicUrl: config.publicUrl },
+    staleAfterHours: config.staleAfterHours,
     fetches: new SiteFetchStore(landDigest),
   };
   const runParts = { ...runBase, closing: new RunClosing(runBase) };
@@ -245,6 +251,7 @@ export const createContainer = (
     sessionRoutes(sessions, cookies, limitSignIn(limits)),
     portfolioRoutes(portfolioServices),
     scenarioRoutes(scenarios),
+    variantRoutes(variants, limitCompute(limits)),
     curveRoutes(curves),
     calibrationRoutes(calibrations),
     billingRoutes(billing),

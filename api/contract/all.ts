@@ -8,6 +8,7 @@ import * as runs from './runs.ts';
 import * as scenarios from './scenarios.ts';
 import * as session from './session.ts';
 import * as studies from './studies.ts';
+import * as variants from './variants.ts';
 import * as validation from './validation.ts';
 
 const isEndpoint = (value: unknown): value is Endpoint =>
@@ -27,6 +28,7 @@ export const ALL_ENDPOINTS: readonly Endpoint[] = [
   runs,
   evaluations,
   studies,
+  variants,
   validation,
   rings,
   billing,

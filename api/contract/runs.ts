@@ -4,6 +4,7 @@ import { endpoint } from './endpoint.ts';
 import { LocationQuality, Reconciliation, RowState } from './portfolios.ts';
 import { EVERY_ROLE, READERS, UNDERWRITERS } from './roles.ts';
 import { Anchor, Intensity } from './scenarios.ts';
+import { Stale } from './track-age.ts';
 import { WindChoices } from './wind-choices.ts';
 
 export const Purpose = z.enum(['exploratory', 'underwriting_file', 'event', 'placement']);
@@ -109,6 +110,12 @@ export const RunScenario = z.object({
   scenarioVersionId: Id,
   name: z.string(),
   version: z.int(),
+  /** Issue time of the advisory the track is from, and its age when the run was accepted [h]. */
+  asOf: Instant.nullable(),
+  ageHoursWhenRun: z.number().nullable(),
+  /** Whether it was stale then, and since it is now: at the time of reading. */
+  staleWhenRun: z.boolean(),
+  stale: Stale.nullable(),
   state: ScenarioState,
   sitesDone: z.int(),
   sitesTotal: z.int(),
@@ -337,7 +344,11 @@ export const RunSlip = z.object({
       name: z.string(),
       version: z.int(),
       digest: Digest,
+      /** As declared, and what a variant was made from. */
       source: z.string(),
+      asOf: Instant.nullable(),
+      ageHoursWhenRun: z.number().nullable(),
+      staleWhenRun: z.boolean(),
       windAveragingS: z.int(),
       conversion: z.string(),
       filled: z.array(z.string()),

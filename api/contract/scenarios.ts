@@ -1,7 +1,9 @@
 import { z } from 'zod';
 import { Digest, Id, Instant, Notice, PageQuery, pageOf } from './common.ts';
+import { Derivation } from './derivations.ts';
 import { endpoint } from './endpoint.ts';
 import { READERS, TRACK_WRITERS } from './roles.ts';
+import { Stale } from './track-age.ts';
 
 export const Averaging = z.union([z.literal(60), z.literal(120), z.literal(180), z.literal(600)], {
   error: 'Declare how long the winds were averaged: 60, 120, 180 or 600 seconds. A 10-min wind reads about 5 % lower.',
@@ -133,6 +135,10 @@ export const ScenarioVersion = z.object({
   digest: Digest,
   track: Track,
   resolution: TrackResolution,
+  /** What the scenario was made from, when it is a variant of another; later versions may have been edited. */
+  derivation: Derivation.nullable(),
+  /** Set while the advisory the track is from is older than the limit, at the time of reading. */
+  stale: Stale.nullable(),
   notices: z.array(Notice),
 });
 export type ScenarioVersion = z.infer<typeof ScenarioVersion>;
@@ -150,6 +156,8 @@ export const ScenarioSummary = z.object({
   lastTime: Instant,
   source: z.string(),
   asOf: Instant.nullable(),
+  stale: Stale.nullable(),
+  derivation: Derivation.nullable(),
   updatedAt: Instant,
   updatedBy: z.string(),
   path: z.array(z.tuple([z.number(), z.number()])),

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { TrackChange as ContractChange } from '#contract/studies.ts';
+import { TrackChange as ContractChange } from '#contract/derivations.ts';
 import { windAt } from '#engine/footprint/wind-at.ts';
 import { destination, greatCircleDistance, initialBearing, unitVector, type Place } from '#engine/geo/geodesy.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';

@@ -27,6 +27,9 @@ export interface FinishedTrack extends Place {
   calibrationState: string;
   /** When the track is an advisory: its issue time. */
   trackAsOf: string | null;
+  /** How old the advisory was when the run was accepted [h], and whether that was too old. */
+  trackAgeHoursWhenRun: number | null;
+  trackStaleWhenRun: boolean;
   path: readonly [number, number][];
   notices: Notice[];
 }

@@ -81,6 +81,11 @@ const columnsFor = (currency: string): readonly Column[] => {
     ['run', (_site, { runNumber }) => safeText(runNumber)],
     ['track', (_site, { trackName }) => safeText(trackName)],
     ['track_as_of_utc', (_site, { trackAsOf }) => trackAsOf],
+    ['track_age_when_run_h', (_site, { trackAgeHoursWhenRun }) => fixed(trackAgeHoursWhenRun, 1)],
+    [
+      'track_stale_when_run',
+      (_site, track) => (track.trackAsOf === null ? null : track.trackStaleWhenRun ? 'stale' : 'no'),
+    ],
     ['calibration', (_site, { calibration }) => safeText(calibration)],
     ['calibration_state', (_site, { calibrationState }) => safeText(calibrationState)],
     ['engine_version', (_site, { engineVersion }) => safeText(engineVersion)],

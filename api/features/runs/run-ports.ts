@@ -55,6 +55,7 @@ export interface RunTrack {
   digest: string;
   track: Track;
   fixes: TrackFix[];
+  provenance: string;
   conversion: string;
   asOf: string | null;
   path: [number, number][];

@@ -1,4 +1,5 @@
 import type { Notice } from '#contract/common.ts';
+import { staleness, trackAgeHours } from '#contract/track-age.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import { fixesWithRing } from '../../compute/ring-defaults.ts';
@@ -26,16 +27,19 @@ export interface FinishedTrack {
   calibrationState: string;
   /** When the track is an advisory: its issue time. */
   trackAsOf: string | null;
+  /** How old the advisory was when the run was accepted [h], and whether that was too old. */
+  trackAgeHoursWhenRun: number | null;
+  trackStaleWhenRun: boolean;
   path: readonly [number, number][];
   notices: Notice[];
 }
 
 /** Answers results: what stands behind this track of this run? */
 export class RunReader {
-  constructor(private readonly parts: { runs: RunStore; tracks: Tracks; models: Models }) {}
+  constructor(private readonly parts: { runs: RunStore; tracks: Tracks; models: Models; staleAfterHours: number }) {}
 
   async require(tx: Tx, orgId: string, runId: string, runScenarioId: string): Promise<FinishedTrack> {
-    const { runs, tracks, models } = this.parts;
+    const { runs, tracks, models, staleAfterHours } = this.parts;
     const run = await runs.find(tx, orgId, runId);
     if (!run) throw notFound('Run', runId);
     const scenario = await runs.scenario(tx, orgId, runId, runScenarioId);
@@ -61,8 +65,10 @@ export class RunReader {
       calibration: `${calibration.code} version ${calibration.version}`,
       calibrationState: calibration.state,
       trackAsOf: track!.asOf,
+      trackAgeHoursWhenRun: track!.asOf === null ? null : trackAgeHours(track!.asOf, run.acceptedAt),
+      trackStaleWhenRun: staleness(track!.asOf, run.acceptedAt, staleAfterHours) !== null,
       path: track!.path,
-      notices: runNotices(run, [track!]),
+      notices: runNotices(run, staleAfterHours, [track!]),
     };
   }
 }

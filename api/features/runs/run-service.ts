@@ -28,6 +28,8 @@ export interface RunParts {
   jobs: Jobs;
   announcements: Announcements;
   engineVersion: () => string;
+  /** Hours after which an advisory counts as stale. */
+  staleAfterHours: number;
   clock: Clock;
   ids: Ids;
 }
@@ -205,7 +207,7 @@ export class RunService {
   }
 
   private async whole(tx: Tx, orgId: string, runId: string): Promise<WholeRun> {
-    const { runs, tracks, models } = this.parts;
+    const { runs, tracks, models, clock, staleAfterHours } = this.parts;
     const run: RunRecord | null = await runs.find(tx, orgId, runId);
     if (!run) throw notFound('Run', runId);
     const scenarios = await runs.scenarios(tx, orgId, [runId]);
@@ -217,7 +219,7 @@ export class RunService {
     const calibration = (await models.calibration(tx, orgId, run.calibrationId))!;
     const curveSet = (await models.curveSet(tx, orgId, run.curveSetId))!;
     return {
-      ...{ run, scenarios, calibration, curveSet },
+      ...{ run, scenarios, calibration, curveSet, staleAfterHours, readAt: clock.now() },
       tracks: new Map(versions.map((track): [string, RunTrack] => [track.id, track])),
     };
   }

@@ -5,6 +5,7 @@ import { chosenInWords } from '#contract/wind-choice-catalogue.ts';
 import type { Run, RunEvent, RunScenario, RunSlip, RunSummary } from '#contract/runs.ts';
 import type { Notice } from '#contract/common.ts';
 import { NOTICE_VERSION } from '#contract/notices.ts';
+import { ageWhenRunWords, staleness, trackAgeHours } from '#contract/track-age.ts';
 import { toInstantOrNull } from '../../db/mapping.ts';
 import type { StoredQuote } from './quote-store.ts';
 import type { RunTrack } from './run-ports.ts';
@@ -59,14 +60,15 @@ const STAMP: Notice = {
 
 /** What every reply about a run carries. */
 export const runNotices = (
-  { stamped }: { stamped: boolean },
+  { stamped, acceptedAt }: { stamped: boolean; acceptedAt: Date },
+  staleAfterHours: number,
   tracks: readonly { asOf: string | null; name: string }[],
 ): Notice[] => {
   const provisional = tracks
-    .filter(({ asOf }) => asOf !== null)
+    .filter((track): track is { asOf: string; name: string } => track.asOf !== null)
     .map(({ asOf, name }): Notice => ({
       code: 'provisional',
-      text: `${name}: track as of ${asOf}; the next advisory supersedes it.`,
+      text: `${name}: track ${ageWhenRunWords(asOf, acceptedAt, staleAfterHours)}; the next advisory supersedes it.`,
       version: NOTICE_VERSION,
     }));
   return [
@@ -77,11 +79,24 @@ export const runNotices = (
   ];
 };
 
-const toScenario = (scenario: ScenarioRecord, track: RunTrack): RunScenario => ({
+/** What stays the same whenever the run is read: how old the advisory was when the run was accepted. */
+const ageWhenRun = (asOf: string | null, acceptedAt: Date, staleAfterHours: number) => ({
+  asOf,
+  ageHoursWhenRun: asOf === null ? null : trackAgeHours(asOf, acceptedAt),
+  staleWhenRun: staleness(asOf, acceptedAt, staleAfterHours) !== null,
+});
+
+const toScenario = (
+  scenario: ScenarioRecord,
+  track: RunTrack,
+  { run, readAt, staleAfterHours }: WholeRun,
+): RunScenario => ({
   id: scenario.id,
   scenarioVersionId: scenario.scenarioVersionId,
   name: track.name,
   version: track.number,
+  ...ageWhenRun(track.asOf, run.acceptedAt, staleAfterHours),
+  stale: staleness(track.asOf, readAt, staleAfterHours),
   state: scenario.state,
   sitesDone: scenario.sitesDone,
   sitesTotal: scenario.sitesTotal,
@@ -110,28 +125,33 @@ export interface WholeRun {
   tracks: ReadonlyMap<string, RunTrack>;
   calibration: Calibration;
   curveSet: CurveSet;
+  readAt: Date;
+  staleAfterHours: number;
 }
 
-export const toRun = ({ run, scenarios, tracks, calibration, curveSet }: WholeRun): Run => ({
-  ...toSummary(run, scenarios, new Map([...tracks].map(([id, { name }]) => [id, name]))),
-  asAt: run.asAt,
-  options: run.options,
-  calibration: {
-    id: calibration.id,
-    code: calibration.code,
-    version: calibration.version,
-    state: calibration.state,
-    signedBy: calibration.signedBy,
-  },
-  curveSet: { id: curveSet.id, name: curveSet.name, version: curveSet.version, note: curveSet.note },
-  costCentre: run.costCentre,
-  reconciliation: run.reconciliation,
-  assumedTivMinor: run.assumedTivMinor,
-  assumedSites: run.assumedSites,
-  engineVersion: run.engineVersion,
-  scenarios: scenarios.map((scenario) => toScenario(scenario, tracks.get(scenario.scenarioVersionId)!)),
-  notices: runNotices(run, [...tracks.values()]),
-});
+export const toRun = (whole: WholeRun): Run => {
+  const { run, scenarios, tracks, calibration, curveSet } = whole;
+  return {
+    ...toSummary(run, scenarios, new Map([...tracks].map(([id, { name }]) => [id, name]))),
+    asAt: run.asAt,
+    options: run.options,
+    calibration: {
+      id: calibration.id,
+      code: calibration.code,
+      version: calibration.version,
+      state: calibration.state,
+      signedBy: calibration.signedBy,
+    },
+    curveSet: { id: curveSet.id, name: curveSet.name, version: curveSet.version, note: curveSet.note },
+    costCentre: run.costCentre,
+    reconciliation: run.reconciliation,
+    assumedTivMinor: run.assumedTivMinor,
+    assumedSites: run.assumedSites,
+    engineVersion: run.engineVersion,
+    scenarios: scenarios.map((scenario) => toScenario(scenario, tracks.get(scenario.scenarioVersionId)!, whole)),
+    notices: runNotices(run, whole.staleAfterHours, [...tracks.values()]),
+  };
+};
 
 export const toEvent = (run: Pick<RunRecord, 'id' | 'state'>, scenarios: readonly ScenarioRecord[]): RunEvent => ({
   runId: run.id,
@@ -142,7 +162,10 @@ export const toEvent = (run: Pick<RunRecord, 'id' | 'state'>, scenarios: readonl
 const DRAWS =
   '264 fixed draws: 11 vortex strengths with their weights × 24 starting phases of equal weight; no seed. One draw holds for all sites of a track.';
 
-export const toSlip = ({ run, scenarios, tracks, calibration, curveSet }: WholeRun, quote: StoredQuote): RunSlip => ({
+export const toSlip = (
+  { run, scenarios, tracks, calibration, curveSet, staleAfterHours }: WholeRun,
+  quote: StoredQuote,
+): RunSlip => ({
   run: run.number,
   state: run.state,
   acceptedAt: run.acceptedAt.toISOString(),
@@ -158,12 +181,13 @@ export const toSlip = ({ run, scenarios, tracks, calibration, curveSet }: WholeR
     held: quote.lines.heldSites,
   },
   scenarios: scenarios.map(({ scenarioVersionId, resultDigest, resolution }) => {
-    const { name, number, digest, track, conversion } = tracks.get(scenarioVersionId)!;
+    const { name, number, digest, track, asOf, provenance, conversion } = tracks.get(scenarioVersionId)!;
     return {
       name,
       version: number,
       digest,
-      source: track.declarations.source,
+      source: provenance,
+      ...ageWhenRun(asOf, run.acceptedAt, staleAfterHours),
       windAveragingS: track.declarations.windAveragingS,
       conversion,
       filled: resolution?.filled ?? [],
@@ -190,5 +214,5 @@ export const toSlip = ({ run, scenarios, tracks, calibration, curveSet }: WholeR
     currency: quote.currency,
   },
   chargedMinor: run.chargedMinor,
-  notices: runNotices(run, [...tracks.values()]),
+  notices: runNotices(run, staleAfterHours, [...tracks.values()]),
 });

@@ -1,4 +1,6 @@
+import type { Derivation } from '#contract/derivations.ts';
 import type { Track } from '#contract/scenarios.ts';
+import { derivationWords } from '#contract/variant-words.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import { toInstantOrNull } from '../../db/mapping.ts';
 import type { Tx } from '../../transact.ts';
@@ -15,12 +17,20 @@ export type RunTrack = {
   digest: string;
   /** As the engine takes them. */
   fixes: TrackFix[];
+  /** Where the track comes from: as declared, and what a variant was made from. */
+  provenance: string;
   /** What happens to the winds on their way to 1 min, in words. */
   conversion: string;
   asOf: string | null;
   /** Continuous longitudes, [longitude, latitude] each half hour. */
   path: [number, number][];
 };
+
+const provenanceOf = ({ track, derivation, number }: Row): string =>
+  [track.declarations.source, derivation === null ? '' : derivationWords(derivation, number)]
+    .filter((part) => part !== '')
+    .map((part) => part.replace(/\.$/, ''))
+    .join('. ');
 
 type Row = {
   id: string;
@@ -30,6 +40,7 @@ type Row = {
   track: Track;
   digest: string;
   as_of: Date | null;
+  derivation: Derivation | null;
   path: [number, number][];
 };
 
@@ -49,6 +60,7 @@ export class ScenarioReader {
         'version.track',
         'version.digest',
         'version.as_of',
+        'scenarios.derivation',
         tx.raw(`version.resolution -> 'path' as path`),
       );
     const found = new Map(
@@ -62,6 +74,7 @@ export class ScenarioReader {
           track: row.track,
           digest: row.digest,
           fixes: engineFixes(row.track),
+          provenance: provenanceOf(row),
           conversion: averagingConversion(row.track),
           asOf: toInstantOrNull(row.as_of),
           path: row.path,

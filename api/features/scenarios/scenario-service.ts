@@ -1,4 +1,6 @@
+import type { Derivation } from '#contract/derivations.ts';
 import { noticesFor } from '#contract/notices.ts';
+import type { RingToScenario } from '#contract/rings.ts';
 import type {
   NewScenario,
   NewVersion,
@@ -10,6 +12,7 @@ import type {
   TrackFinding,
   TrackResolution,
 } from '#contract/scenarios.ts';
+import { staleness, type Stale } from '#contract/track-age.ts';
 import type { LandIndex } from '#engine/geo/land.ts';
 import type { Actor } from '../../actor.ts';
 import { decodeMomentCursor, encodeCursor, pageFrom } from '../../db/cursor.ts';
@@ -21,14 +24,13 @@ import { readTrackText } from './reading/read-track.ts';
 import { resolveTrack, type Resolved } from './resolve-track.ts';
 import type { ScenarioStore, StoredVersion } from './scenario-store.ts';
 import { trackDigest } from './track-digest.ts';
-import { checkEntry, isSavable } from './track-rules.ts';
+import { savable } from './savable.ts';
+import { checkEntry } from './track-rules.ts';
 
 const noticesOf = ({ track }: Pick<StoredVersion, 'track'>) =>
   track.declarations.asOf === null
     ? noticesFor('life-safety', 'uncertainty', 'scope')
     : noticesFor('provisional', 'life-safety', 'uncertainty', 'scope');
-
-const toContract = (version: StoredVersion): ScenarioVersion => ({ ...version, notices: noticesOf(version) });
 
 type Audit = {
   record(tx: Tx, actor: Actor, action: string, object: string, details: object): Promise<void>;
@@ -50,7 +52,7 @@ export class ScenarioService {
     private readonly transact: Transact,
     private readonly scenarios: ScenarioStore,
     private readonly land: () => LandIndex,
-    private readonly context: { clock: Clock; ids: Ids; audit: Audit },
+    private readonly context: { clock: Clock; ids: Ids; audit: Audit; staleAfterHours: number },
   ) {}
 
   /** Text → fixes with what was converted and found; nothing is saved, and no line is dropped silently. */
@@ -91,38 +93,50 @@ export class ScenarioService {
 
   create(actor: Actor, { name, description, track, sortByTime }: NewScenario): Promise<ScenarioVersion> {
     const resolved = this.savable(track, sortByTime);
-    const scenarioId = this.context.ids.next();
-    return this.transact(actor, async (tx) => {
-      await this.scenarios.insert(tx, actor.orgId, {
-        id: scenarioId,
-        name,
-        description,
-        createdBy: actor.userId,
-        createdAt: this.context.clock.now(),
-      });
-      return this.keep(tx, actor, scenarioId, name, 1, resolved, 'scenario.created');
-    });
+    return this.transact(actor, (tx) => this.add(tx, actor, { name, description, derivation: null }, resolved));
+  }
+
+  /** Keeps a resolved track as the first version of a new scenario. */
+  async add(
+    tx: Tx,
+    actor: Actor,
+    scenario: { name: string; description: string; derivation: Derivation | null },
+    resolved: Resolved,
+  ): Promise<ScenarioVersion> {
+    const id = this.context.ids.next();
+    const createdAt = this.context.clock.now();
+    await this.scenarios.insert(tx, actor.orgId, { id, ...scenario, createdBy: actor.userId, createdAt });
+    const { name, derivation } = scenario;
+    return this.keep(tx, actor, { scenarioId: id, name, number: 1, derivation }, resolved, 'scenario.created');
   }
 
   saveVersion(actor: Actor, scenarioId: string, { track, basedOn, sortByTime }: NewVersion): Promise<ScenarioVersion> {
     const resolved = this.savable(track, sortByTime);
     return this.transact(actor, async (tx) => {
-      const latest = await this.scenarios.latest(tx, actor.orgId, scenarioId);
-      if (!latest) throw notFound('Scenario', scenarioId);
-      if (latest.number !== basedOn) {
-        throw new AppError(
-          'conflict',
-          `${latest.createdBy} saved version ${latest.number} meanwhile; yours is based on version ${basedOn}. Compare the two, then save on top of version ${latest.number}.`,
-        );
-      }
-      return this.keep(tx, actor, scenarioId, latest.name, latest.number + 1, resolved, 'scenario.version_saved');
+      const latest = await this.latestFor(tx, actor, scenarioId, basedOn);
+      return this.keep(tx, actor, { ...latest, number: latest.number + 1 }, resolved, 'scenario.version_saved');
+    });
+  }
+
+  /** The same ring at every fix, as the next version. */
+  setRing(
+    actor: Actor,
+    scenarioId: string,
+    { basedOn, ringWidthFraction, eyeVorticityRatio }: RingToScenario,
+  ): Promise<ScenarioVersion> {
+    return this.transact(actor, async (tx) => {
+      const latest = await this.latestFor(tx, actor, scenarioId, basedOn);
+      const { track, number } = latest;
+      const fixes = track.fixes.map((fix) => ({ ...fix, ringWidthFraction, eyeVorticityRatio }));
+      const resolved = this.savable({ ...track, fixes }, false);
+      return this.keep(tx, actor, { ...latest, number: number + 1 }, resolved, 'scenario.ring_set');
     });
   }
 
   async get(actor: Actor, scenarioId: string): Promise<ScenarioVersion> {
     const latest = await this.transact(actor, (tx) => this.scenarios.latest(tx, actor.orgId, scenarioId));
     if (!latest) throw notFound('Scenario', scenarioId);
-    return toContract(latest);
+    return this.toContract(latest);
   }
 
   list(
@@ -132,35 +146,31 @@ export class ScenarioService {
     const before = decodeMomentCursor(cursor);
     return this.transact(actor, async (tx) => {
       const rows = await this.scenarios.list(tx, actor.orgId, { before, limit: limit + 1 });
-      return pageFrom(rows, limit, ({ updatedAt, id: last }) => encodeCursor(updatedAt, last));
+      const items = rows.map((row) => ({ ...row, stale: this.staleNow(row.asOf) }));
+      return pageFrom(items, limit, ({ updatedAt, id: last }) => encodeCursor(updatedAt, last));
     });
+  }
+
+  /** The latest version, when it is the one an edit is based on. */
+  private async latestFor(tx: Tx, actor: Actor, scenarioId: string, basedOn: number): Promise<StoredVersion> {
+    const latest = await this.scenarios.latest(tx, actor.orgId, scenarioId);
+    if (!latest) throw notFound('Scenario', scenarioId);
+    if (latest.number === basedOn) return latest;
+    throw new AppError(
+      'conflict',
+      `${latest.createdBy} saved version ${latest.number} meanwhile; yours is based on version ${basedOn}. Compare the two, then save on top of version ${latest.number}.`,
+    );
   }
 
   /** The resolved track, or every finding that keeps it from being saved. */
   private savable(track: NewScenario['track'], sortByTime: boolean): Resolved {
-    const resolved = resolveTrack(track, 'pressure', sortByTime, this.land());
-    const { findings } = resolved.resolution;
-    if (isSavable(findings)) return resolved;
-    const faults = findings
-      .filter(({ severity }) => severity !== 'note')
-      .map(({ code, fix, text }) => ({
-        code,
-        path: fix === null ? 'body.track' : `body.track.fixes.${fix}`,
-        message: text,
-      }));
-    throw new AppError(
-      'track_unreadable',
-      faults.length === 1 ? faults[0]!.message : `${faults.length} things keep this track from being saved.`,
-      { faults },
-    );
+    return savable(resolveTrack(track, 'pressure', sortByTime, this.land()));
   }
 
   private async keep(
     tx: Tx,
     actor: Actor,
-    scenarioId: string,
-    name: string,
-    number: number,
+    { scenarioId, name, number, derivation }: Pick<StoredVersion, 'scenarioId' | 'name' | 'number' | 'derivation'>,
     { track, resolution }: Resolved,
     action: string,
   ): Promise<ScenarioVersion> {
@@ -182,8 +192,9 @@ export class ScenarioService {
       version: number,
       fixes: track.fixes.length,
       digest,
+      ...(derivation !== null && number === 1 ? { derivation } : {}),
     });
-    return toContract({
+    return this.toContract({
       id,
       scenarioId,
       name,
@@ -193,6 +204,15 @@ export class ScenarioService {
       digest,
       track,
       resolution,
+      derivation,
     });
+  }
+
+  private toContract(version: StoredVersion): ScenarioVersion {
+    return { ...version, stale: this.staleNow(version.track.declarations.asOf), notices: noticesOf(version) };
+  }
+
+  private staleNow(asOf: string | null): Stale | null {
+    return staleness(asOf, this.context.clock.now(), this.context.staleAfterHours);
   }
 }

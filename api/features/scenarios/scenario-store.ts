@@ -1,3 +1,4 @@
+import type { Derivation } from '#contract/derivations.ts';
 import type { ScenarioSummary, Track, TrackResolution } from '#contract/scenarios.ts';
 import { toInstant, toInstantOrNull } from '../../db/mapping.ts';
 import { AppError } from '../../errors.ts';
@@ -13,7 +14,10 @@ export type StoredVersion = {
   digest: string;
   track: Track;
   resolution: TrackResolution;
+  derivation: Derivation | null;
 };
+/** Whether it is stale depends on when it is read. */
+export type StoredSummary = Omit<ScenarioSummary, 'stale'>;
 export type NewStoredVersion = {
   id: string;
   scenarioId: string;
@@ -35,6 +39,7 @@ type VersionRow = {
   digest: string;
   track: Track;
   resolution: TrackResolution;
+  derivation: Derivation | null;
 };
 type SummaryRow = VersionRow & { description: string; as_of: Date | null };
 
@@ -54,9 +59,10 @@ const toVersion = (row: VersionRow): StoredVersion => ({
   digest: row.digest,
   track: row.track,
   resolution: row.resolution,
+  derivation: row.derivation,
 });
 
-const toSummary = (row: SummaryRow): ScenarioSummary => ({
+const toSummary = (row: SummaryRow): StoredSummary => ({
   id: row.scenario_id,
   name: row.name,
   description: row.description,
@@ -69,6 +75,7 @@ const toSummary = (row: SummaryRow): ScenarioSummary => ({
   lastTime: row.track.fixes.at(-1)!.time,
   source: row.track.declarations.source,
   asOf: toInstantOrNull(row.as_of),
+  derivation: row.derivation,
   updatedAt: toInstant(row.created_at),
   updatedBy: row.created_by_name,
   path: row.resolution.path,
@@ -79,7 +86,14 @@ export class ScenarioStore {
   async insert(
     tx: Tx,
     orgId: string,
-    scenario: { id: string; name: string; description: string; createdBy: string; createdAt: Date },
+    scenario: {
+      id: string;
+      name: string;
+      description: string;
+      derivation: Derivation | null;
+      createdBy: string;
+      createdAt: Date;
+    },
   ): Promise<void> {
     try {
       await tx('scenarios').insert({
@@ -87,6 +101,7 @@ export class ScenarioStore {
         org_id: orgId,
         name: scenario.name,
         description: scenario.description,
+        derivation: scenario.derivation === null ? null : JSON.stringify(scenario.derivation),
         created_by: scenario.createdBy,
         created_at: scenario.createdAt,
       });
@@ -126,11 +141,25 @@ export class ScenarioStore {
   }
 
   async latest(tx: Tx, orgId: string, scenarioId: string): Promise<StoredVersion | null> {
+    return this.version(tx, orgId, scenarioId);
+  }
+
+  /** The version with that number, the latest without one. */
+  async version(tx: Tx, orgId: string, scenarioId: string, number?: number): Promise<StoredVersion | null> {
     const row = await this.versions(tx, orgId)
-      .where('version.scenario_id', scenarioId)
+      .where({ 'version.scenario_id': scenarioId, ...(number === undefined ? {} : { 'version.number': number }) })
       .orderBy('version.number', 'desc')
       .first();
     return row ? toVersion(row) : null;
+  }
+
+  /** Names of scenarios that begin like this. */
+  async namesLike(tx: Tx, orgId: string, beginning: string): Promise<string[]> {
+    const rows = await tx('scenarios')
+      .where({ org_id: orgId })
+      .whereRaw('starts_with(name, ?)', [beginning])
+      .select<{ name: string }[]>('name');
+    return rows.map(({ name }) => name);
   }
 
   /** Newest change first; `before` continues after the last scenario already seen. */
@@ -138,7 +167,7 @@ export class ScenarioStore {
     tx: Tx,
     orgId: string,
     page: { before: { at: string; id: string } | null; limit: number },
-  ): Promise<ScenarioSummary[]> {
+  ): Promise<StoredSummary[]> {
     const rows = await this.versions(tx, orgId)
       .whereRaw(
         'version.number = (select max(other.number) from scenario_versions other where other.scenario_id = version.scenario_id)',
@@ -174,6 +203,7 @@ export class ScenarioStore {
         'version.digest',
         'version.track',
         'version.resolution',
+        'scenarios.derivation',
       );
   }
 }
