@@ -100,15 +100,18 @@ describe('linear boundary layer, computed from the published formula by another 
     ['outside', '-9.748786', '29.461280', '-5.968563', '26.202286'],
     ['far outside, where a root changes its branch', '-9.896234', '23.752678', '-11.928697', '19.818499'],
     ['over a rough sea', '-11.723740', '33.329577', '-8.135766', '30.754832'],
-  ] as const)('%s: ahead on the right and on the left', (name, ...expected) => {
-    const frontRight = windAt(CASES[name], -45);
-    expectPrinted(frontRight.radial, expected[0]);
-    expectPrinted(frontRight.tangential, expected[1]);
-    const frontLeft = windAt(CASES[name], 45);
-    // One printed value of the twenty was cut off rather than rounded.
-    expect(Math.abs(frontLeft.radial - Number(expected[2]))).toBeLessThan(1e-6);
-    expectPrinted(frontLeft.tangential, expected[3]);
-  });
+  ] as const)(
+    '%s: ahead on the right and on the left',
+    (name, rightRadial, rightTangential, leftRadial, leftTangential) => {
+      const frontRight = windAt(CASES[name], -45);
+      expectPrinted(frontRight.radial, rightRadial);
+      expectPrinted(frontRight.tangential, rightTangential);
+      const frontLeft = windAt(CASES[name], 45);
+      // One of the values given was cut off rather than rounded.
+      expect(Math.abs(frontLeft.radial - Number(leftRadial))).toBeLessThan(1e-6);
+      expectPrinted(frontLeft.tangential, leftTangential);
+    },
+  );
 
   // Sites S2 and S3 of the worked storm at 15 h.
   it('finds the worked storm’s gradient wind, and the winds at two of its sites on both hemispheres', () => {
