@@ -10,6 +10,8 @@ export const PEAK_FACTOR = peakFactor(GUST_AVERAGING, MEAN_AVERAGING);
 /** What the ground around a site does to the wind. */
 export type Exposure = {
   readonly isAtSea: boolean;
+  /** Roughness length of the land [m]; NaN at sea. */
+  readonly roughnessM: number;
   /** Weight of the land for wind FROM 0, 45, ..., 315 degrees [1], shape (8,); rewritten by setExposure. */
   readonly weights: Float64Array;
   /** True when all weights are equal, so that the direction does not matter. */
@@ -47,7 +49,15 @@ export function exposureOf(
   }
   if (Number.isNaN(roughness)) {
     weights.fill(0);
-    return { isAtSea: true, weights, isUniform: true, landFactor: 1, landTurbulence: 0, topographicFactor };
+    return {
+      isAtSea: true,
+      roughnessM: NaN,
+      weights,
+      isUniform: true,
+      landFactor: 1,
+      landTurbulence: 0,
+      topographicFactor,
+    };
   }
   if (!(roughness > 0 && roughness < 10)) {
     throw new DomainError(`roughness length of ${site}`, roughness, 'in (0, 10) m');
@@ -61,6 +71,7 @@ export function exposureOf(
   }
   return {
     isAtSea: false,
+    roughnessM: roughness,
     weights,
     isUniform,
     landFactor: roughnessFactor(roughness),

@@ -108,6 +108,7 @@ function timesBetween(storm: Storm, first: number, last: number): Storm {
     stateCount: to - from,
     states: storm.states.slice(from * STATE_SIZE, to * STATE_SIZE),
     outer: storm.outer.slice(first, last + 1).map((state) => state - from),
+    field: storm.field && storm.field.slice(from, to),
   };
 }
 

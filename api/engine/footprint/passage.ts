@@ -7,6 +7,7 @@ import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
 import { quickLog } from '../numerics/quick-log.ts';
 import { radians } from '../units.ts';
 import { INNER_FACTOR, INNER_RADIUS, OUTER_FACTOR, OUTER_RADIUS } from '../winds/surface-factor.ts';
+import { chosenFieldOf, evaluateChosen, type ChosenField } from './chosen-passage.ts';
 import { PEAK_FACTOR, type Exposure } from './exposure.ts';
 import { DRAG_WINDS, EIGHTH_TURN, PER_SEA_FACTOR, PRESSURE_TERM, PRESSURE_TERM_RANGE } from './tables.ts';
 
@@ -38,6 +39,8 @@ export type Passage = {
   readonly mark: Uint8Array;
   /** Times at which the wind is to be computed, as indices into the series. */
   readonly wanted: Int32Array;
+  /** The chosen relations; null under the default field. */
+  readonly chosen: ChosenField | null;
 };
 
 /** A place as a unit vector. */
@@ -69,6 +72,7 @@ export function makePassage(storm: Storm): Passage {
     phaseSin: new Float64Array(n),
     mark: new Uint8Array(storm.outer.length),
     wanted: new Int32Array(n),
+    chosen: chosenFieldOf(storm),
   };
 }
 
@@ -98,7 +102,8 @@ export function followPassage(
   floor = 0,
 ): number {
   const place = unitPlace(latitude, longitude);
-  const quiet = Math.min(Math.floor(floor / greatestFactor(exposure)) - FIRST_QUIET_WIND, QUIET_WIND_COUNT - 1);
+  const factor = passage.chosen === null ? greatestFactor(exposure) : passage.chosen.greatestFactor(exposure);
+  const quiet = Math.min(Math.floor(floor / factor) - FIRST_QUIET_WIND, QUIET_WIND_COUNT - 1);
   const count = layTimes(storm, place, quiet, passage);
   const { wanted } = passage;
   for (let i = 0; i < count; i++) wanted[i] = i;
@@ -179,6 +184,10 @@ export function windsAt(
   from: number,
   to: number,
 ): void {
+  if (passage.chosen !== null) {
+    evaluateChosen(storm, passage.chosen, place, exposure, passage, from, to);
+    return;
+  }
   const { states, wavenumber } = storm;
   locate(states, place, passage, from, to);
   seaWinds(states, passage, from, to);

@@ -1,9 +1,10 @@
 import { EARTH_RADIUS, GUST_FLOOR } from '../constants.ts';
 import { distanceToLandM, type LandIndex } from '../geo/land.ts';
-import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
+import { fieldAt, STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
 import { degrees, radians } from '../units.ts';
-import { hollandGradientWind } from '../winds/holland-1980.ts';
-import { surfaceFactor } from '../winds/surface-factor.ts';
+import { seaWindOf } from '../winds/sea-wind.ts';
+import { exposureOf } from './exposure.ts';
+import { groundOf } from './ground.ts';
 
 /** Rectangle in longitude and latitude [deg]; longitudes continuous, so east may exceed 180. */
 export type Area = { readonly west: number; readonly south: number; readonly east: number; readonly north: number };
@@ -16,6 +17,8 @@ export type StrongWindArea = Area & {
 
 // Peak 3-s gust over the 10-min mean at sea near the floor; over land the mean falls by more than the factor rises.
 const GUST_OVER_MEAN = 1.25;
+/** Open country [m]: what the grid takes for every land node. */
+const LAND_ROUGHNESS = 0.03;
 const SEARCH_LIMIT = 1_000_000;
 const FOCUS_MARGIN_DEG = 1;
 // Half an hour of the strongest storms is some 50 km, well inside the radius of the floor.
@@ -114,6 +117,8 @@ export type FloorCircle = {
 export function floorCircles(storm: Storm): FloorCircle[] {
   const circles: FloorCircle[] = [];
   const times = timesLookedAt(storm);
+  const { bound } = seaWindOf(storm.options);
+  const overMean = storm.field === null ? GUST_OVER_MEAN : greatestOverMean(storm);
   let lastLongitude: number | null = null;
   times.forEach((position, k) => {
     const at = storm.outer[position]! * STATE_SIZE;
@@ -122,21 +127,15 @@ export function floorCircles(storm: Storm): FloorCircle[] {
     if (lastLongitude !== null) longitude += 360 * Math.round((lastLongitude - longitude) / 360);
     lastLongitude = longitude;
     const rMax = storm.states[at + STATE.rMax]!;
-    const motion = Math.hypot(storm.states[at + STATE.motionU]!, storm.states[at + STATE.motionV]!);
-    const vortex = {
-      rMax,
-      b: storm.states[at + STATE.b]!,
-      deficit: storm.states[at + STATE.deficit]!,
-      f: 2 * storm.states[at + STATE.halfF]!,
-    };
-    const mean = (r: number) => surfaceFactor(r) * hollandGradientWind(r, vortex) + motion;
+    const field = fieldAt(storm, storm.outer[position]!);
+    const mean = (r: number) => bound(field, r);
     const wind = mean(rMax);
-    if (GUST_OVER_MEAN * wind < GUST_FLOOR) return;
+    if (overMean * wind < GUST_FLOOR) return;
     let radius = rMax;
     let beyond = SEARCH_LIMIT;
     for (let k = 0; k < 30; k++) {
       const middle = (radius + beyond) / 2;
-      if (GUST_OVER_MEAN * mean(middle) >= GUST_FLOOR) radius = middle;
+      if (overMean * mean(middle) >= GUST_FLOOR) radius = middle;
       else beyond = middle;
     }
     const dLat = degrees(radius / EARTH_RADIUS);
@@ -152,6 +151,16 @@ export function floorCircles(storm: Storm): FloorCircle[] {
     circles.push({ latitude, longitude, radius, wind, area, previous, next });
   });
   return circles;
+}
+
+/** The same factor for a chosen ground, at sea or over open country. */
+function greatestOverMean(storm: Storm): number {
+  const { greatestFactor } = groundOf(storm.options);
+  const { f } = storm.field![0]!;
+  const nowhere = new Array<number>(8).fill(0);
+  const over = (roughness: number) =>
+    greatestFactor(exposureOf('the grid', roughness, nowhere, 0, 1, new Float64Array(8)), f);
+  return Math.max(over(NaN), over(LAND_ROUGHNESS));
 }
 
 /** Positions in Storm.outer of the first and last time and of times at least SPACING_S apart between them. */

@@ -1,14 +1,10 @@
 import { greatCircleDistance, initialBearing, normalisedBearing } from '../geo/geodesy.ts';
-import { turbulenceIntensity } from '../gust/turbulence.ts';
-import { seaRoughness } from '../terrain/drag.ts';
-import { sectorWeight } from '../terrain/fetch.ts';
-import { equilibriumRatio } from '../terrain/roughness.ts';
-import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
+import { fieldAt, STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
 import { degrees, radians } from '../units.ts';
-import { hollandGradientWind } from '../winds/holland-1980.ts';
-import { inflowAngle } from '../winds/inflow.ts';
-import { surfaceFactor } from '../winds/surface-factor.ts';
-import { exposureOf, PEAK_FACTOR, type Exposure } from './exposure.ts';
+import { makeSeaWindSteps } from '../winds/field-state.ts';
+import { seaWindOf } from '../winds/sea-wind.ts';
+import { exposureOf, type Exposure } from './exposure.ts';
+import { groundOf, makeGroundSteps } from './ground.ts';
 
 /** A single site. */
 export type Site = {
@@ -78,45 +74,34 @@ export function windAt(storm: Storm, k: number, site: Site): WindSteps {
   const state = (offset: number): number => storm.states[k * STATE_SIZE + offset]!;
   const centre = { latitude: state(STATE.latitude), longitude: state(STATE.longitude) };
   const exposure = siteExposure(site);
-  const sign = state(STATE.sign);
-  const rMax = state(STATE.rMax);
   const distanceM = Math.max(greatCircleDistance(centre, site), 1);
   const bearingDeg = initialBearing(centre, site);
-  const vortex = { rMax, b: state(STATE.b), deficit: state(STATE.deficit), f: 2 * state(STATE.halfF) };
-  const gradientMs = hollandGradientWind(distanceM, vortex);
-  const reduction = surfaceFactor(distanceM);
-  const surfaceMs = reduction * gradientMs;
-  const inflowDeg = inflowAngle(distanceM / rMax);
-  const towards = radians(bearingDeg - sign * (90 + inflowDeg));
-  const eastwardMs = surfaceMs * Math.sin(towards) + state(STATE.motionU);
-  const northwardMs = surfaceMs * Math.cos(towards) + state(STATE.motionV);
-  const seaWindMs = Math.hypot(eastwardMs, northwardMs);
-  const directionDeg = normalisedBearing(degrees(Math.atan2(-eastwardMs, -northwardMs)));
-  const seaZ0 = seaRoughness(seaWindMs);
-  const landWeight = exposure.isAtSea ? 0 : sectorWeight(exposure.weights, directionDeg);
-  const terrainFactor = site.roughnessM === null ? 1 : 1 + landWeight * (equilibriumRatio(site.roughnessM, seaZ0) - 1);
-  const seaTurbulence = turbulenceIntensity(seaZ0);
-  const turbulence = seaTurbulence + landWeight * (exposure.landTurbulence - seaTurbulence);
-  const gustFactor = 1 + PEAK_FACTOR * turbulence;
-  const meanMs = seaWindMs * terrainFactor;
+  const field = fieldAt(storm, k);
+  const sea = makeSeaWindSteps();
+  const bearing = radians(bearingDeg);
+  seaWindOf(storm.options).write(field, distanceM, Math.sin(bearing), Math.cos(bearing), sea);
+  const seaWindMs = Math.hypot(sea.eastward, sea.northward);
+  const ground = makeGroundSteps();
+  groundOf(storm.options).write(exposure, sea.eastward, sea.northward, field.f, ground);
+  const meanMs = seaWindMs * ground.terrainFactor;
   return {
     timeS: state(STATE.timeS),
     distanceM,
     bearingDeg,
-    gradientMs,
-    surfaceFactor: reduction,
-    surfaceMs,
-    inflowDeg,
-    eastwardMs,
-    northwardMs,
+    gradientMs: sea.gradient,
+    surfaceFactor: sea.surfaceFactor,
+    surfaceMs: sea.surface,
+    inflowDeg: sea.inflowDeg,
+    eastwardMs: sea.eastward,
+    northwardMs: sea.northward,
     seaWindMs,
-    directionDeg,
-    landWeight,
-    terrainFactor,
+    directionDeg: normalisedBearing(degrees(Math.atan2(-sea.eastward, -sea.northward))),
+    landWeight: ground.landWeight,
+    terrainFactor: ground.terrainFactor,
     meanMs,
-    turbulence,
-    gustFactor,
+    turbulence: ground.turbulence,
+    gustFactor: ground.gustFactor,
     topographicFactor: site.topographicFactor,
-    gustMs: meanMs * gustFactor * site.topographicFactor,
+    gustMs: meanMs * ground.gustFactor * site.topographicFactor,
   };
 }

@@ -9,7 +9,8 @@ import { coriolis, hemisphereSign } from '../winds/coriolis.ts';
 import { fieldStateOf, type FieldState } from '../winds/field-state.ts';
 import { surfaceShare } from '../winds/implied-wind.ts';
 import { seaWindOf } from '../winds/sea-wind.ts';
-import { fitVortex } from '../winds/vortex-fit.ts';
+import { hollandGradientWind } from '../winds/holland-1980.ts';
+import { fitVortex, strongestWind } from '../winds/vortex-fit.ts';
 import type { EngineNotice, ResolvedFix, TrackFix } from './fixes.ts';
 import { motionAt } from './motion.ts';
 import { oneMinuteOverTen, usesDefaultField, type ChainOptions } from './options.ts';
@@ -213,6 +214,36 @@ function writeQuiet(states: Float64Array, at: number): void {
   };
   const motion = Math.hypot(states[at + STATE.motionU]!, states[at + STATE.motionV]!);
   writeQuietDistances(vortex, motion, states, at + STATE.quietChord2);
+}
+
+/**
+ * What the wind field needs to know of a state, under any choice of relations.
+ *
+ * @param storm The storm.
+ * @param k     Index of the state.
+ * @returns Plain data.
+ * @source Under the default field the numbers of `states`, where a vortex stands without what other relations need.
+ */
+export function fieldAt({ field, states, options }: Storm, k: number): FieldState {
+  if (field !== null) return field[k]!;
+  const state = (offset: number): number => states[k * STATE_SIZE + offset]!;
+  const [rMax, b, deficit, f] = [state(STATE.rMax), state(STATE.b), state(STATE.deficit), 2 * state(STATE.halfF)];
+  const gradientMax = hollandGradientWind(rMax, { rMax, b, deficit, f });
+  return fieldStateOf(
+    {
+      vortex: { rMax, b, deficit, f, gradientMax, unclampedB: b },
+      latitude: state(STATE.latitude),
+      sign: state(STATE.sign),
+      speed: state(STATE.speed),
+      heading: state(STATE.heading),
+      maxWind: strongestWind(gradientMax, state(STATE.speed), rMax, f, options, 1),
+      motion: { u: state(STATE.motionU), v: state(STATE.motionV) },
+      surfaceShare: 1,
+      outer: null,
+      quadrants: null,
+    },
+    options,
+  );
 }
 
 /** Angle turned by the pattern up to each fix [rad]: the exact integral of a rate that is linear between fixes. */

@@ -132,13 +132,20 @@ export function matchKepertGradient(maxWind10min: number, layerOf: (gradient: nu
   let [low, high]: readonly [number, number] = GRADIENT_RANGE;
   for (let i = 0; i < BISECTIONS; i++) {
     const middle = 0.5 * (low + high);
-    if (strongestOf(kepertCoefficients(layerOf(middle))) < maxWind10min) low = middle;
+    if (strongestKepertWind(kepertCoefficients(layerOf(middle))) < maxWind10min) low = middle;
     else high = middle;
   }
   return 0.5 * (low + high);
 }
 
-function strongestOf(coefficients: KepertCoefficients): number {
+/**
+ * Greatest surface wind on a circle.
+ *
+ * @param coefficients Of `kepertCoefficients`.
+ * @returns 10-min wind at 10 m relative to the ground [m s⁻¹], the greatest of 72 azimuths.
+ * @source Kepert (2001), J. Atmos. Sci. 58, 2469–2484; azimuths 5 degrees apart: product rule.
+ */
+export function strongestKepertWind(coefficients: KepertCoefficients): number {
   let strongest = 0;
   for (let i = 0; i < AZIMUTHS; i++) {
     const { radial, tangential } = kepertWind(coefficients, (2 * Math.PI * i) / AZIMUTHS);

@@ -1,3 +1,5 @@
+import { KEPERT_DIFFUSIVITY } from './kepert-2001.ts';
+
 /** Wind 10 m over the sea around a circle, in waves of the angle from the heading; the ground at rest. Rewritten in place. */
 export type KepertCircle = {
   /** Radial wind, outwards positive: mean, and what goes with cosine and sine of the angle [m s⁻¹]. */
@@ -10,8 +12,6 @@ export type KepertCircle = {
   tangentialSin: number;
 };
 
-/** Eddy diffusivity of the layer [m² s⁻¹]. Kepert (2001). */
-const DIFFUSIVITY = 50;
 const LEAST_WIND = 1e-6;
 
 /**
@@ -53,11 +53,11 @@ export function writeKepertCircle(
   const absolute = f + turning + slope;
   const floor = f > 0.2 * turning ? f : 0.2 * turning;
   const eta = absolute > floor ? absolute : floor;
-  const half = 1 / (2 * DIFFUSIVITY);
+  const half = 1 / (2 * KEPERT_DIFFUSIVITY);
   const q = Math.sqrt(xi * eta) * half;
   const ratio = Math.sqrt(xi / eta);
   const ga = turning * half;
-  const k = (drag * v) / DIFFUSIVITY;
+  const k = (drag * v) / KEPERT_DIFFUSIVITY;
   const chi = k / Math.sqrt(q);
   const still = (-chi * v) / (chi * (2 * chi + 3) + 2);
   // Waves with and against the rotation: (g + i g + 1.5 k) A - 0.5 k B = -k c (0.5 - S), and its partner.

@@ -21,7 +21,7 @@ export function kepertSeaWind(options: WindOptions, profile: RadialProfile): Sea
     write(state, r, sinBearing, cosBearing, out) {
       const { f, speed, sign, headingSin, headingCos } = state;
       const gradient = profile(r, state);
-      const drag = seaDrag(DRAG_WIND_SHARE * gradient);
+      const drag = seaDrag(DRAG_WIND_SHARE * gradient, options.seaDrag);
       writeKepertCircle(gradient, slope(r, state, gradient), r, f, speed, drag, circle);
       // Angle from the heading, positive in the cyclonic sense.
       const cosine = cosBearing * headingCos + sinBearing * headingSin;
@@ -37,7 +37,7 @@ export function kepertSeaWind(options: WindOptions, profile: RadialProfile): Sea
     },
     bound(state, r) {
       const gradient = profile(r, state);
-      const drag = seaDrag(DRAG_WIND_SHARE * gradient);
+      const drag = seaDrag(DRAG_WIND_SHARE * gradient, options.seaDrag);
       writeKepertCircle(gradient, slope(r, state, gradient), r, state.f, state.speed, drag, circle);
       const radial = Math.abs(circle.radial) + Math.hypot(circle.radialCos, circle.radialSin);
       const cyclonic = Math.abs(circle.tangential) + Math.hypot(circle.tangentialCos, circle.tangentialSin);

@@ -2,7 +2,8 @@ import { LEAST_SYMMETRIC_WIND, MOTION_SHARE } from '../constants.ts';
 import { DEFAULT_WIND_OPTIONS, oneMinuteOverTen, type WindOptions } from '../track/options.ts';
 import { type HollandVortex } from './holland-1980.ts';
 import { clampedB, fittedB } from './holland-b.ts';
-import { matchedKepertWind, strongestKepertWind } from './kepert-maximum.ts';
+import { kepertCoefficients, matchKepertGradient, strongestKepertWind } from './kepert-2001.ts';
+import { maximumLayer } from './kepert-maximum.ts';
 import { schwerdtAddition } from './schwerdt.ts';
 import { SURFACE_FACTORS } from './surface-factor.ts';
 
@@ -85,7 +86,7 @@ function matchedGradient(
       return Math.max(Math.sqrt(force + half * half) - half, LEAST_SYMMETRIC_WIND / factor);
     }
     case 'kepert':
-      return matchedKepertWind(mean, { rMax, f, speed }, options);
+      return matchKepertGradient(mean, maximumLayer({ rMax, f, speed }, options));
   }
 }
 
@@ -123,7 +124,7 @@ export function strongestWind(
         return factor * (half + Math.sqrt(half * half + gradient * (gradient + rMax * f)));
       }
       case 'kepert':
-        return strongestKepertWind(gradient, { rMax, f, speed }, options);
+        return strongestKepertWind(kepertCoefficients(maximumLayer({ rMax, f, speed }, options)(gradient)));
     }
   };
   return oneMinuteOverTen(options.averaging) * ten();
