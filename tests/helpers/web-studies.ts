@@ -78,6 +78,8 @@ export const testScenario = (): ScenarioVersion => {
     number: 3,
     createdAt: at(0),
     createdBy: 'Teodor Brask',
+    derivation: null,
+    stale: null,
     digest: 'a'.repeat(64),
     track: {
       fixes: times.map((time) => ({

@@ -18,6 +18,7 @@ import { Skeleton } from '../../../ui/skeleton.tsx';
 import { siteQuery } from '../result-queries.ts';
 import { noRangeReason } from '../result-words.ts';
 import { buildingText, fetchRows, ladderRungs } from '../site-words.ts';
+import { TerrainEffects } from './terrain-effects.tsx';
 
 interface SiteDrawerProps {
   run: Run;
@@ -154,6 +155,7 @@ function ScoredSite({ run, site }: { run: Run; site: SiteDetail }) {
         {place && <p className="text-13 text-ink-2">{place}</p>}
         <CurveAndTerms run={run} site={site} vortices={vortices} />
         <Ground site={site} />
+        <TerrainEffects effects={site.terrainEffects} />
       </div>
     </>
   );
