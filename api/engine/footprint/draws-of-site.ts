@@ -6,6 +6,7 @@ const NODES = Float64Array.from(AMPLITUDE_NODES);
 const WEAKEST = AMPLITUDE_NODES[0];
 const STRONGEST = AMPLITUDE_NODES[NODE_COUNT - 1]!;
 const HALF = PHASE_COUNT / 2;
+const SEED_STRIDE = 5;
 const START_COS = Float64Array.from({ length: HALF }, (_, j) => Math.cos(startingPhase(j)));
 const START_SIN = Float64Array.from({ length: HALF }, (_, j) => Math.sin(startingPhase(j)));
 
@@ -16,6 +17,9 @@ export type DrawWork = {
   /** Per phase, value at the weakest and the strongest node of the line that dominates most so far [m s⁻¹]. */
   readonly low: Float64Array;
   readonly high: Float64Array;
+  /** Smallest of each: a line below both of them at its ends changes no draw. */
+  leastLow: number;
+  leastHigh: number;
 };
 
 /**
@@ -30,6 +34,8 @@ export function makeDrawWork(stateCount: number): DrawWork {
     inside: new Int32Array(stateCount),
     low: new Float64Array(PHASE_COUNT),
     high: new Float64Array(PHASE_COUNT),
+    leastLow: 0,
+    leastHigh: 0,
   };
 }
 
@@ -48,7 +54,7 @@ export function makeDrawWork(stateCount: number): DrawWork {
  * @source Largest of max(0, F (U + a A v E C / 1.05)) over time, term by term.
  */
 export function drawPeaks(passage: Passage, count: number, peak: number, work: DrawWork, gusts: Float64Array): boolean {
-  const { gust, crest, phaseCos, phaseSin } = passage;
+  const { gust, crest } = passage;
   const { inside, low, high } = work;
   let insideCount = 0;
   let firstAfterPeak = 0;
@@ -67,14 +73,36 @@ export function drawPeaks(passage: Passage, count: number, peak: number, work: D
   gusts.fill(level);
   low.fill(level);
   high.fill(level);
-  let leastLow = level;
-  let leastHigh = level;
-  let before = firstAfterPeak - 1;
+  work.leastLow = level;
+  work.leastHigh = level;
+  // A few times well apart first: each meets the pattern at another phase, and together they rule out most others.
+  takeOutward(passage, firstAfterPeak, insideCount, SEED_STRIDE, work, gusts);
+  takeOutward(passage, firstAfterPeak, insideCount, 1, work, gusts);
+  return true;
+}
+
+/** Takes every so many of the times inside the layer, outward from the highest plain gust. */
+function takeOutward(
+  { gust, crest, phaseCos, phaseSin }: Passage,
+  firstAfterPeak: number,
+  insideCount: number,
+  stride: number,
+  work: DrawWork,
+  gusts: Float64Array,
+): void {
+  const { inside, low, high } = work;
+  let { leastLow, leastHigh } = work;
+  let before = firstAfterPeak - stride;
   let after = firstAfterPeak;
   while (before >= 0 || after < insideCount) {
     let i: number;
-    if (before < 0 || (after < insideCount && gust[inside[after]!]! >= gust[inside[before]!]!)) i = inside[after++]!;
-    else i = inside[before--]!;
+    if (before < 0 || (after < insideCount && gust[inside[after]!]! >= gust[inside[before]!]!)) {
+      i = inside[after]!;
+      after += stride;
+    } else {
+      i = inside[before]!;
+      before -= stride;
+    }
     const g = gust[i]!;
     const p = crest[i]!;
     // No phase can gain more than the crest itself.
@@ -107,7 +135,8 @@ export function drawPeaks(passage: Passage, count: number, peak: number, work: D
       if (high[j]! < leastHigh) leastHigh = high[j]!;
     }
   }
-  return true;
+  work.leastLow = leastLow;
+  work.leastHigh = leastHigh;
 }
 
 /** Lets one line compete at every node of its phase, and makes it the reference when it is higher on the whole. */

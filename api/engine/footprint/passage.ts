@@ -126,6 +126,35 @@ export function unitPlace(latitude: number, longitude: number): UnitPlace {
 }
 
 /**
+ * Gust at a site at the outer time at which the centre is nearest: no more than the peak.
+ *
+ * @param storm    The storm.
+ * @param place    The site.
+ * @param exposure Ground around it.
+ * @param passage  Working arrays; their series is lost.
+ * @returns Gust [m s⁻¹].
+ * @source The chain as footprint/wind-at.ts states it.
+ */
+export function gustWhenNearest(storm: Storm, place: UnitPlace, exposure: Exposure, passage: Passage): number {
+  const { states, outer } = storm;
+  const { x, y, z } = place;
+  let nearest = 0;
+  let cosine = -Infinity;
+  for (let o = 0; o < outer.length; o++) {
+    const at = outer[o]! * STATE_SIZE;
+    const dot = x * states[at]! + y * states[at + 1]! + z * states[at + 2]!;
+    if (dot > cosine) {
+      cosine = dot;
+      nearest = outer[o]!;
+    }
+  }
+  passage.state[0] = nearest;
+  passage.wanted[0] = 0;
+  windsAt(storm, place, exposure, passage, 0, 1);
+  return passage.gust[0]!;
+}
+
+/**
  * Lists the times at which a storm is looked at from a site: outer times, and inner ones next to outer times at which
  * the centre is near.
  *

@@ -11,7 +11,7 @@ import { degrees } from '../units.ts';
 import { drawPeaks, makeDrawWork } from './draws-of-site.ts';
 import { secondsAtLeast } from './durations.ts';
 import { exposureOf } from './exposure.ts';
-import { followPassage, makePassage } from './passage.ts';
+import { followPassage, gustWhenNearest, makePassage, unitPlace } from './passage.ts';
 import { outOfReach, reachPath } from './reach.ts';
 
 /** Sites to be scored; one entry per site in every array. */
@@ -142,14 +142,10 @@ export function scoreSites(
     const hill = sites.topographicFactor[s]!;
     const exposure = exposureOf(`site ${s}`, sites.roughnessM[s]!, sites.fetchM, SECTOR_COUNT * s, hill, weights);
     // Gusts below the lower threshold matter only at a site that never reaches it, plain or in some draw.
-    let floor = LOWER_THRESHOLD;
+    const place = unitPlace(latitude, longitude);
+    const floor = Math.min(LOWER_THRESHOLD, gustWhenNearest(storm, place, exposure, passage));
     let times = followPassage(storm, latitude, longitude, exposure, passage, floor);
     let peak = highest(passage.gust, times);
-    if (times === 0 || passage.gust[peak]! < floor) {
-      floor = times === 0 ? 0 : passage.gust[peak]!;
-      times = followPassage(storm, latitude, longitude, exposure, passage, floor);
-      peak = highest(passage.gust, times);
-    }
     let touched = drawPeaks(passage, times, peak, work, gusts);
     if (touched && floor > 0 && lowest(gusts) < floor) {
       times = followPassage(storm, latitude, longitude, exposure, passage);

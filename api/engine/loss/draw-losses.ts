@@ -8,6 +8,9 @@ export const LOSS_QUANTUM = 1 / 1024;
 
 // Tried in this order until the last coefficients say the interpolant is good enough.
 const RULES: readonly ChebyshevRule[] = [8, 16, 32].map(chebyshevRule);
+// Working space of each rule: values at its points, and their coefficients.
+const VALUES = RULES.map(({ degree }) => new Float64Array(degree + 1));
+const COEFFICIENTS = RULES.map(({ degree }) => new Float64Array(degree + 1));
 const TRUNCATION = 1e-11;
 
 /**
@@ -74,10 +77,11 @@ export function drawLosses(
     outGross.set(outGroundUp);
     return;
   }
-  let values: Float64Array | null = null;
-  for (const rule of RULES) {
-    values = grossShares(rule, values, lowest, highest, value, deductible, limit);
-    const coefficients = chebyshevCoefficients(rule, values, new Float64Array(rule.degree + 1));
+  for (let k = 0; k < RULES.length; k++) {
+    const rule = RULES[k]!;
+    const values = VALUES[k]!;
+    writeGrossShares(rule, k === 0 ? null : VALUES[k - 1]!, lowest, highest, value, deductible, limit, values);
+    const coefficients = chebyshevCoefficients(rule, values, COEFFICIENTS[k]!);
     const tail = Math.abs(coefficients[rule.degree]!) + Math.abs(coefficients[rule.degree - 1]!);
     if (tail > TRUNCATION * Math.min(values[0]!, values[rule.degree]!)) continue;
     if (rule.degree === 8) interpolateNine(coefficients, lowest, highest, limit, outGroundUp, outGross);
@@ -88,7 +92,7 @@ export function drawLosses(
 }
 
 /** Gross over mean damage ratio at a rule's points; every second one is known from the rule of half the degree. */
-function grossShares(
+function writeGrossShares(
   rule: ChebyshevRule,
   coarser: Float64Array | null,
   lowest: number,
@@ -96,8 +100,8 @@ function grossShares(
   value: number,
   deductible: number,
   limit: number,
-): Float64Array {
-  const shares = new Float64Array(rule.degree + 1);
+  shares: Float64Array,
+): void {
   for (let j = 0; j <= rule.degree; j++) {
     if (coarser && j % 2 === 0) {
       shares[j] = coarser[j / 2]!;
@@ -106,7 +110,6 @@ function grossShares(
     const mu = j === 0 ? highest : Math.max(lowest + (highest - lowest) * (0.5 + 0.5 * rule.points[j]!), lowest);
     shares[j] = expectedGross(mu, value, deductible, limit) / mu;
   }
-  return shares;
 }
 
 /** Turns the ratios in outGross into losses, in place: the usual case of nine coefficients, as an ordinary polynomial. */

@@ -112,30 +112,54 @@ export function drawQuantiles(
   }
   if (lowest === highest) return out.fill(lowest);
   const scale = (BUCKETS - 1) / (highest - lowest);
-  const weightIn = new Int32Array(BUCKETS);
-  for (let d = 0; d < DRAW_COUNT; d++) weightIn[((values[d]! - lowest) * scale) | 0]! += DRAW_WEIGHT_UNITS[d]!;
-  const inBucket: number[] = [];
+  WEIGHT_IN.fill(0);
+  FIRST_IN.fill(-1);
+  for (let i = 0, d = 0; i < AMPLITUDE_NODES.length; i++) {
+    const weight = NODE_THOUSANDTHS[i]!;
+    for (const end = d + PHASE_COUNT; d < end; d++) {
+      const bucket = ((values[d]! - lowest) * scale) | 0;
+      WEIGHT_IN[bucket]! += weight;
+      NEXT_IN[d] = FIRST_IN[bucket]!;
+      FIRST_IN[bucket] = d;
+    }
+  }
+  let bucket = 0;
+  let before = 0;
   let sortedBucket = -1;
+  let lastTarget = 0;
   for (let k = 0; k < levels.length; k++) {
     const target = (levels[k]! - 1e-12) * DRAW_WEIGHT_TOTAL;
-    let bucket = 0;
-    let before = 0;
-    while (bucket < BUCKETS - 1 && before + weightIn[bucket]! < target) before += weightIn[bucket++]!;
-    if (bucket !== sortedBucket) {
-      inBucket.length = 0;
-      for (let d = 0; d < DRAW_COUNT; d++) if ((((values[d]! - lowest) * scale) | 0) === bucket) inBucket.push(d);
-      inBucket.sort((a, b) => values[a]! - values[b]!);
-      sortedBucket = bucket;
-    }
+    if (target < lastTarget) bucket = before = 0;
+    lastTarget = target;
+    while (bucket < BUCKETS - 1 && before + WEIGHT_IN[bucket]! < target) before += WEIGHT_IN[bucket++]!;
+    if (bucket !== sortedBucket) sortBucket(values, bucket);
+    sortedBucket = bucket;
     let at = 0;
-    let reached = before + DRAW_WEIGHT_UNITS[inBucket[0]!]!;
-    while (reached < target && at < inBucket.length - 1) reached += DRAW_WEIGHT_UNITS[inBucket[++at]!]!;
-    out[k] = values[inBucket[at]!]!;
+    let reached = before + DRAW_WEIGHT_UNITS[SORTED[0]!]!;
+    while (reached < target && SORTED[at + 1]! >= 0) reached += DRAW_WEIGHT_UNITS[SORTED[++at]!]!;
+    out[k] = values[SORTED[at]!]!;
   }
   return out;
 }
 
+// Working space of drawQuantiles: per bucket its weight and a chain of its draws; the draws of one bucket in order of
+// their values, ended by -1.
 const BUCKETS = 128;
+const WEIGHT_IN = new Int32Array(BUCKETS);
+const FIRST_IN = new Int32Array(BUCKETS);
+const NEXT_IN = new Int32Array(DRAW_COUNT);
+const SORTED = new Int32Array(DRAW_COUNT + 1);
+
+function sortBucket(values: ArrayLike<number>, bucket: number): void {
+  let count = 0;
+  for (let d = FIRST_IN[bucket]!; d >= 0; d = NEXT_IN[d]!) {
+    const value = values[d]!;
+    let at = count++;
+    for (; at > 0 && values[SORTED[at - 1]!]! > value; at--) SORTED[at] = SORTED[at - 1]!;
+    SORTED[at] = d;
+  }
+  SORTED[count] = -1;
+}
 
 function requireDraws(values: ArrayLike<number>): void {
   if (values.length !== DRAW_COUNT) throw new DomainError('number of draws', values.length, String(DRAW_COUNT));
