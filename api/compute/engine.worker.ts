@@ -96,7 +96,13 @@ const fetchOf = ({
   return fetchM ?? fetchBySector(landIndex(), latitude, longitude, none);
 };
 
-export const explain = ({ fixes, options, site, gustsMs }: ExplainTask): Answer<Tasks['explain']['reply']> =>
+export const explain = ({
+  fixes,
+  options,
+  site,
+  gustsMs,
+  otherRoughnessM,
+}: ExplainTask): Answer<Tasks['explain']['reply']> =>
   answer(() => {
     const prepared = prepareStorm(fixes, options, landIndex());
     const fetchM = [...fetchOf(site)];
@@ -109,6 +115,7 @@ export const explain = ({ fixes, options, site, gustsMs }: ExplainTask): Answer<
         staysInEye: staysInEye(prepared, whole),
         passing: passingOf(prepared, whole),
         chances: chancesOf(prepared, whole, gustsMs),
+        otherPlainMs: otherRoughnessM.map((roughnessM) => plainPeakOf(prepared, { ...whole, roughnessM })),
         wavenumber: prepared.wavenumber,
         notices: prepared.notices,
       },
@@ -144,6 +151,12 @@ const passingOf = ({ states, outer }: Storm, site: Site): Tasks['explain']['repl
   }
   const off = initialBearing(centreAt(nearest), site) - states[nearest + STATE.heading]!;
   return { distanceM, side: Math.sin(radians(off)) >= 0 ? 'right' : 'left' };
+};
+
+const plainPeakOf = (prepared: Storm, site: Site): number => {
+  const passage = makePassage(prepared);
+  const times = followPassage(prepared, site.latitude, site.longitude, siteExposure(site), passage);
+  return passage.gust.subarray(0, times).reduce((peak, gust) => Math.max(peak, gust), 0);
 };
 
 const chancesOf = (prepared: Storm, site: Site, gustsMs: readonly number[]): number[] => {

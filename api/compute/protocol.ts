@@ -44,6 +44,8 @@ export type ExplainTask = StormTask & {
   /** Without overland distances they come from the land polygons. */
   readonly site: Omit<Site, 'fetchM'> & { readonly fetchM: readonly number[] | null };
   readonly gustsMs: readonly number[];
+  /** Roughness lengths under which the site’s plain gust is asked for, too [m]. */
+  readonly otherRoughnessM: readonly number[];
 };
 export type ExplainReply = {
   readonly fetchM: number[];
@@ -54,6 +56,8 @@ export type ExplainReply = {
   readonly passing: { readonly distanceM: number; readonly side: 'left' | 'right' };
   /** Weighted share of the draws whose peak reaches each of the gusts asked for. */
   readonly chances: number[];
+  /** Plain peak gust under each of the roughness lengths asked for [m s⁻¹]. */
+  readonly otherPlainMs: number[];
   readonly wavenumber: number | null;
   readonly notices: readonly EngineNotice[];
 };

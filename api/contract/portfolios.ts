@@ -46,6 +46,15 @@ export const LocationQuality = z.enum([
   'unknown',
 ]);
 export const Terrain = z.enum(['water_edge', 'open', 'suburban', 'wooded', 'dense_urban', 'unknown']);
+/** Roughness length of each terrain class [m]; unknown is taken as open and marked assumed. */
+export const TERRAIN_ROUGHNESS_M: Readonly<Record<z.infer<typeof Terrain>, number>> = {
+  water_edge: 0.003,
+  open: 0.03,
+  suburban: 0.3,
+  wooded: 0.5,
+  dense_urban: 1.0,
+  unknown: 0.03,
+};
 export const RowState = z.enum(['ready', 'notes', 'held', 'set_aside']);
 export type RowState = z.infer<typeof RowState>;
 export const Severity = z.enum(['stop', 'blocks_sealing', 'hold', 'note', 'set_aside']);

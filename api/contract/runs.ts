@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { Currency, Digest, Id, Instant, LossRange, Minor, Notice, PageQuery, pageOf } from './common.ts';
 import { endpoint } from './endpoint.ts';
-import { LocationQuality, Reconciliation, RowState } from './portfolios.ts';
+import { LocationQuality, Reconciliation, RowState, Terrain } from './portfolios.ts';
 import { EVERY_ROLE, READERS, UNDERWRITERS } from './roles.ts';
 import { Anchor, Intensity } from './scenarios.ts';
 import { Stale } from './track-age.ts';
@@ -270,6 +270,18 @@ export const SiteDetail = SiteResult.extend({
   wavenumber: z.int().nullable(),
   /** Weighted share of the 264 draws in which the site's peak reaches each of the run's chosen gusts (0–1). */
   chanceAbove: z.array(z.object({ gustMs: z.number(), chance: z.number() })),
+  /**
+   * Plain peak gust under this storm if the site's ground were of each class, its own marked, everything else as it is.
+   * Empty at sea and out of reach.
+   */
+  terrainEffects: z.array(
+    z.object({
+      terrain: Terrain.exclude(['unknown']),
+      roughnessM: z.number(),
+      plainMs: z.number(),
+      isPresent: z.boolean(),
+    }),
+  ),
   /** Empty when the site is out of reach, as is the series. */
   ladder: z.array(LadderStep),
   /** Hours around the peak, at most 400 points. */

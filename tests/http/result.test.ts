@@ -41,6 +41,28 @@ it('says when a track isn’t finished', () => {
   expect(early.body.code).toBe('result_not_ready');
 });
 
+it('says what each class of ground would make of a site’s plain gust', async () => {
+  const sites = (await page()).items.filter(({ reach }) => reach === 'scored').slice(0, 5);
+  for (const { siteNo, plainMs } of sites) {
+    const detail = SiteDetail.parse((await underwriter.get(`${base}/sites/${siteNo}`)).body);
+    const { terrain, terrainEffects, ladder } = detail;
+    expect(terrainEffects.map((effect) => [effect.terrain, effect.roughnessM])).toEqual([
+      ['water_edge', 0.003],
+      ['open', 0.03],
+      ['suburban', 0.3],
+      ['wooded', 0.5],
+      ['dense_urban', 1],
+    ]);
+    const present = terrainEffects.filter(({ isPresent }) => isPresent);
+    expect(present.map((effect) => effect.terrain)).toEqual([terrain]);
+    expect(present[0]!.plainMs).toBeCloseTo(ladder.at(-1)!.afterMs, 9);
+    expect(present[0]!.plainMs).toBeCloseTo(plainMs!, 5);
+    // Published property: up to 0.5 m the gust doesn't rise with the roughness.
+    const gusts = terrainEffects.slice(0, 4).map((effect) => effect.plainMs);
+    expect(gusts).toEqual([...gusts].sort((a, b) => b - a));
+  }
+});
+
 describe('the sites table', () => {
   it('holds every site with its range, largest gross first, and ties with the run', async () => {
     const { items, total, totals, notices } = await page();

@@ -1,5 +1,6 @@
 import type { Footprint, FootprintView, ResultPoints, SiteDetail, SitesPage, SitesQuery } from '#contract/runs.ts';
 import type { Notice } from '#contract/common.ts';
+import { Terrain, TERRAIN_ROUGHNESS_M } from '#contract/portfolios.ts';
 import type { z } from 'zod';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
@@ -126,6 +127,7 @@ export class ResultService {
       options: track.options,
       site: { latitude, longitude, roughnessM, fetchM, topographicFactor: 1 },
       gustsMs: track.gustThresholdsMs,
+      otherRoughnessM: roughnessM === null ? [] : CLASSES.map((terrain) => TERRAIN_ROUGHNESS_M[terrain]),
     });
     return { ...common, ...explanation(track, site, explained) };
   }
@@ -164,11 +166,15 @@ export class ResultService {
   }
 }
 
+/** The classes a site’s ground can be of, from smooth to rough. */
+const CLASSES = Terrain.exclude(['unknown']).options;
+
 const NOTHING_TO_EXPLAIN = {
   fetchM: [],
   distanceToTrackKm: null,
   sideOfTrack: null,
   wavenumber: null,
+  terrainEffects: [],
   ladder: [],
 };
 
@@ -184,6 +190,12 @@ const explanation = (track: FinishedTrack, site: SiteRecord, explained: ExplainR
   sideOfTrack: explained.passing.side,
   wavenumber: explained.wavenumber,
   chanceAbove: track.gustThresholdsMs.map((gustMs, i) => ({ gustMs, chance: explained.chances[i]! })),
+  terrainEffects: explained.otherPlainMs.map((plainMs, i) => ({
+    terrain: CLASSES[i]!,
+    roughnessM: TERRAIN_ROUGHNESS_M[CLASSES[i]!],
+    plainMs,
+    isPresent: CLASSES[i] === (site.terrain === 'unknown' ? 'open' : site.terrain),
+  })),
   ladder: ladderOf(explained.ladder, site),
   series: seriesAroundPeak(explained.series),
   notices: explained.staysInEye ? [IN_EYE, ...track.notices] : track.notices,

@@ -53,6 +53,7 @@ export type SiteRecord = Omit<
   | 'distanceToTrackKm'
   | 'sideOfTrack'
   | 'wavenumber'
+  | 'terrainEffects'
   | 'ladder'
   | 'series'
   | 'notices'

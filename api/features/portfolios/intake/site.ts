@@ -1,3 +1,4 @@
+import { TERRAIN_ROUGHNESS_M } from '#contract/portfolios.ts';
 import { readSite, type Correction, type FileFacts, type FileRow, type TerrainClass } from './file-row.ts';
 import { hasCorrection } from './file-row.ts';
 import type { JudgedRow } from './judge.ts';
@@ -36,16 +37,6 @@ export interface SealedSite {
   assumed: string[];
 }
 
-/** Roughness length of each terrain class [m]; unknown is taken as open and marked assumed. */
-const ROUGHNESS_M: Readonly<Record<TerrainClass, number>> = {
-  water_edge: 0.003,
-  open: 0.03,
-  suburban: 0.3,
-  wooded: 0.5,
-  dense_urban: 1.0,
-  unknown: 0.03,
-};
-
 const counted = (amount: { kind: string; minor?: number }) => (amount.kind === 'amount' ? (amount.minor ?? 0) : 0);
 const text = (cell: string | undefined) => cell?.trim() ?? '';
 
@@ -83,7 +74,7 @@ export function sealedSite(
     yearBuilt: yearBuiltOf(site, facts.year),
     storeys: storeysOf(site),
     terrain,
-    roughnessM: hasCorrection(site, 'keep_all', 'PLACE-07') ? null : ROUGHNESS_M[terrain],
+    roughnessM: hasCorrection(site, 'keep_all', 'PLACE-07') ? null : TERRAIN_ROUGHNESS_M[terrain],
     deductibleMinor: site.deductible.kind === 'applied' ? site.deductible.minor : 0,
     limitMinor: site.limit.minor,
     state: judged.state === 'ready' ? 'ready' : 'notes',
