@@ -48,8 +48,10 @@ import { UploadService } from './features/portfolios/upload-service.ts';
 import { evaluationRoutes } from './features/evaluations/evaluation-routes.ts';
 import { EvaluationService } from './features/evaluations/evaluation-service.ts';
 import { SpreadService } from './features/studies/spread-service.ts';
+import { StudyGate } from './features/studies/study-gate.ts';
 import { studyRoutes } from './features/studies/study-routes.ts';
 import { WindFieldService } from './features/studies/wind-field-service.ts';
+import { BreakdownService } from './features/rings/breakdown-service.ts';
 import { ringRoutes } from './features/rings/ring-routes.ts';
 import { RingService } from './features/rings/ring-service.ts';
 import { resultRoutes } from './features/results/result-routes.ts';
@@ -205,7 +207,7 @@ export const createContainer = (
   });
   const variants = new VariantService(transact, new ScenarioStore(), scenarios, landIndex);
   const curves = new CurveService(transact, new CurveStore());
-  const calibrations = new CalibrationService(transact, new CalibrationStore());
+  const calibrations = new CalibrationService(transact, new CalibrationStore(), { clock, ids, audit });
 
   // Billing; the ledger is what runs reserve and settle with
   const payments = overrides.payments ?? new StripePayments(config.stripe);
@@ -247,6 +249,11 @@ export const createContainer = (
   };
   const studies = { spreads: new SpreadService(studyParts), windFields: new WindFieldService(studyParts) };
 
+  const rings = {
+    rings: new RingService(engineVersion),
+    breakdowns: new BreakdownService({ pool, engineVersion, gate: new StudyGate(1, 4, 10) }),
+  };
+
   const routers: Router[] = [
     sessionRoutes(sessions, cookies, limitSignIn(limits)),
     portfolioRoutes(portfolioServices),
@@ -258,7 +265,7 @@ export const createContainer = (
     runRoutes(runServices),
     resultRoutes(resultService),
     studyRoutes(studies, limitCompute(limits)),
-    ringRoutes(new RingService(engineVersion), limitCompute(limits)),
+    ringRoutes(rings, limitCompute(limits)),
     evaluationRoutes(new EvaluationService(landIndex, engineVersion), limitCompute(limits)),
     validationRoutes(new ValidationService()),
   ];

@@ -12,9 +12,11 @@ import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
 import { prepareStorm, STATE, STATE_SIZE, type Storm } from '#engine/track/storm.ts';
 import { radians } from '#engine/units.ts';
 import { footprintBands } from './bands.ts';
+import { breakdownFrames } from './breakdown.ts';
 import { landIndex } from './land.ts';
 import type {
   Answer,
+  BreakdownTask,
   ExplainTask,
   OverlandTask,
   FootprintTask,
@@ -134,6 +136,12 @@ export const windField = ({ fixes, options, question, stop }: WindFieldTask): An
   answer(() => {
     if (isStopped(stop)) return STOPPED;
     return { reply: windFieldAt(prepareStorm(fixes, options, landIndex()), question) };
+  });
+
+export const breakdown = ({ setup, withVorticity, stop }: BreakdownTask): Answer<Tasks['breakdown']['reply']> =>
+  answer(() => {
+    const reply = breakdownFrames(setup, withVorticity, () => isStopped(stop));
+    return reply === null ? STOPPED : { reply };
   });
 
 const passingOf = ({ states, outer }: Storm, site: Site): Tasks['explain']['reply']['passing'] => {

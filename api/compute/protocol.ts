@@ -7,6 +7,7 @@ import type { FootprintGrid } from '#engine/footprint/grid.ts';
 import type { DamageCurve } from '#engine/loss/damage-curve.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import type { Storm } from '#engine/track/storm.ts';
+import type { BreakdownFrame, BreakdownSetup } from '#engine/ring/breakdown.ts';
 import type { Bands, BandView } from './bands.ts';
 import type { SpreadBase, Trial, TrialResult } from './spread.ts';
 import type { WindField, WindFieldQuestion } from './wind-field.ts';
@@ -74,6 +75,13 @@ export type SpreadReply = { readonly base: SpreadBase; readonly trials: readonly
 
 export type WindFieldTask = StormTask & { readonly question: WindFieldQuestion; readonly stop: StopFlag };
 
+export type BreakdownTask = {
+  readonly setup: BreakdownSetup;
+  /** Without it the frames come with their measures only. */
+  readonly withVorticity: boolean;
+  readonly stop: StopFlag;
+};
+
 /** What a thread can be asked for: name → task and reply. */
 export type Tasks = {
   storm: { task: StormTask; reply: Storm };
@@ -83,6 +91,7 @@ export type Tasks = {
   explain: { task: ExplainTask; reply: ExplainReply };
   spread: { task: SpreadTask; reply: SpreadReply };
   windField: { task: WindFieldTask; reply: WindField };
+  breakdown: { task: BreakdownTask; reply: BreakdownFrame[] };
 };
 
 /** A thread's answer; the engine's refusals travel as words, since error classes don't survive the journey. */

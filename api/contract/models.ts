@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { Digest, Id, Instant } from './common.ts';
 import { endpoint } from './endpoint.ts';
-import { READERS } from './roles.ts';
+import { MODELERS, READERS } from './roles.ts';
 import { Anchor, Intensity } from './scenarios.ts';
 
 /** A damage curve as data, with the gust it expects. */
@@ -82,4 +82,29 @@ export const listCalibrations = endpoint({
   access: READERS,
   response: z.object({ items: z.array(Calibration) }),
   status: 200,
+});
+
+const ringShare = (name: string, least: number, most: number) =>
+  z.number().refine((value) => value >= least && value <= most, {
+    error: ({ input }) => `${name} is ${String(input)}. Give ${least} to ${most}.`,
+  });
+
+/** A ring for a draft; everything else stays as in the version it is based on. */
+export const CalibrationDraft = z.strictObject({
+  basedOnId: Id,
+  ringWidthFraction: ringShare('The ring width over the radius of maximum wind', 0.1, 0.45),
+  eyeVorticityRatio: ringShare('The eye’s vorticity over the average', 0, 0.9),
+  note: z.string().trim().min(1, 'Say why, in a few words.').max(500),
+});
+export type CalibrationDraft = z.infer<typeof CalibrationDraft>;
+export const draftCalibration = endpoint({
+  id: 'draftCalibration',
+  method: 'post',
+  path: '/calibrations',
+  summary: 'Draft the next version of a calibration with another ring; a run on it is stamped until it is signed',
+  access: MODELERS,
+  idempotent: true,
+  body: CalibrationDraft,
+  response: Calibration,
+  status: 201,
 });

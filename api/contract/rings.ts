@@ -106,6 +106,7 @@ export const stabilityMap = endpoint({
 
 /** How a breakdown is computed. */
 export const BreakdownRequest = RingRequest.omit({ hoursInland: true }).extend({
+  maxWindMs: within('The maximum wind', 10, 110, ' m/s'),
   ringWidthFraction: within('The ring width', 0.1, 0.45, ' of the radius of maximum wind').default(0.35),
   eyeVorticityRatio: within('The eye’s vorticity over the average', 0, 0.9, '').default(0.2),
   points: z.union([z.literal(64), z.literal(96), z.literal(128), z.literal(192), z.literal(256)]).default(128),

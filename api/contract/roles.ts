@@ -12,4 +12,6 @@ export const UNDERWRITERS = ['underwriter', 'modeler'] as const satisfies readon
 export const TRACK_WRITERS = ['modeler', 'underwriter'] as const satisfies readonly Role[];
 export const EVERY_ROLE = ['underwriter', 'modeler', 'admin', 'auditor'] as const satisfies readonly Role[];
 export const MONEY_READERS = ['underwriter', 'modeler', 'admin', 'auditor'] as const satisfies readonly Role[];
+/** May draft calibrations. */
+export const MODELERS = ['modeler'] as const satisfies readonly Role[];
 export const ADMINS = ['admin'] as const satisfies readonly Role[];

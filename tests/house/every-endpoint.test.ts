@@ -28,11 +28,15 @@ const BODIES: Record<string, (ids: Record<string, string>) => object> = {
   sealEdition: () => ({ asAt: '2026-11-01', heldReason: 'As agreed', controlReason: 'As agreed' }),
   saveVersion: () => ({ track, basedOn: 1 }),
   createQuote: quoteOf,
+  setRing: () => ({ basedOn: 1, ringWidthFraction: 0.3, eyeVorticityRatio: 0.1 }),
+  draftCalibration: ({ calibrationId }) => ({
+    ...{ basedOnId: calibrationId, ringWidthFraction: 0.3, eyeVorticityRatio: 0.1, note: 'Thinner' },
+  }),
   spread: ({ editionId }) => ({ editionId }),
   windField: () => ({ time: TRACK_FIX.time }),
 };
 /** Operations that take ids in their body only. */
-const IDS_IN_BODY = ['createQuote'];
+const IDS_IN_BODY = ['createQuote', 'draftCalibration'];
 
 const namesIn = ({ path }: Endpoint) => [...path.matchAll(/:(\w+)/g)].map((found) => found[1]!);
 const withIds = ALL_ENDPOINTS.filter((endpoint) => namesIn(endpoint).length > 0 || IDS_IN_BODY.includes(endpoint.id));

@@ -1,4 +1,5 @@
 import { Router } from 'express';
+import { setRing } from '#contract/rings.ts';
 import {
   createScenario,
   getScenario,
@@ -36,6 +37,10 @@ export const scenarioRoutes = (scenarios: ScenarioService): Router => {
   router.post(
     saveVersion.path,
     handle(saveVersion, ({ actor, params, body }) => scenarios.saveVersion(actor, params.scenarioId, body)),
+  );
+  router.post(
+    setRing.path,
+    handle(setRing, ({ actor, params, body }) => scenarios.setRing(actor, params.scenarioId, body)),
   );
   return router;
 };

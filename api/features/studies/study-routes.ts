@@ -1,6 +1,7 @@
-import { Router, type RequestHandler, type Response } from 'express';
+import { Router, type RequestHandler } from 'express';
 import { spread, windField } from '#contract/studies.ts';
 import { handle } from '../../http/handle.ts';
+import { whileListening } from '../../http/while-listening.ts';
 import type { SpreadService } from './spread-service.ts';
 import type { WindFieldService } from './wind-field-service.ts';
 
@@ -8,15 +9,6 @@ interface Services {
   spreads: SpreadService;
   windFields: WindFieldService;
 }
-
-/** Raised when whoever asked hangs up before the answer is out. */
-const whileListening = (res: Response): AbortSignal => {
-  const leaving = new AbortController();
-  res.once('close', () => {
-    if (!res.writableFinished) leaving.abort(new Error('Nobody waits for the answer any more'));
-  });
-  return leaving.signal;
-};
 
 /** What the settings do to a track: computed at once, stored nowhere. */
 export const studyRoutes = ({ spreads, windFields }: Services, limit: RequestHandler): Router => {
