@@ -1,7 +1,9 @@
 import { readFileSync } from 'node:fs';
 import { parse } from 'csv-parse/sync';
 import { ObservationRole, SourceClass, type ComparedObservation } from '#contract/validation.ts';
-import { standardisedGust } from './standardised-gust.ts';
+import { standardiseGust } from '#engine/calibration/standardise.ts';
+import { GUST_AVERAGING } from '#engine/gust/gust-factor.ts';
+import { seaRoughness } from '#engine/terrain/drag.ts';
 
 /** An observation with its role, before anything is modelled. */
 export type Observation = Omit<ComparedObservation, 'modelled'> & {
@@ -9,6 +11,10 @@ export type Observation = Omit<ComparedObservation, 'modelled'> & {
   /** The standardised gust written beside the role; null where none is. */
   writtenStandardisedMs: number | null;
 };
+
+const ASSUMED_HEIGHT_M = 10;
+/** A wind above which the sea’s drag no longer rises. */
+const STRONG_WIND = 40;
 
 type Row = Record<string, string>;
 
@@ -44,7 +50,14 @@ export const readObservations = (folder: URL): Observation[] => {
       roughnessLengthM,
       gustMs,
       standardisedMs:
-        gustMs === null ? null : standardisedGust({ gustMs, heightM, averagingS: gustAveragingS, roughnessLengthM }),
+        gustMs === null
+          ? null
+          : standardiseGust({
+              wind: gustMs,
+              height: heightM ?? ASSUMED_HEIGHT_M,
+              roughness: roughnessLengthM ?? seaRoughness(STRONG_WIND),
+              peakAveraging: gustAveragingS ?? GUST_AVERAGING,
+            }),
       writtenStandardisedMs: number(of.standardised_gust_ms!),
       sustainedMs: number(row.sustained_ms!),
       timeUtc: text(row.time_utc!),
