@@ -25,6 +25,7 @@ import {
   siteFeatures,
   tickFeatures,
   trackFeatures,
+  variantFeatures,
   type MapFix,
 } from './map-features.ts';
 import { addIcons } from './map-icons.ts';
@@ -38,6 +39,8 @@ export interface MapCanvasProps {
   label: string;
   bounds: Bounds;
   track?: MapTrack | null;
+  /** Paths of changed copies of the track, thin and dashed. */
+  variants?: readonly (readonly LonLat[])[];
   bands?: MapBands | null;
   sites?: MapSites | null;
   /** Index into the sites. */
@@ -90,7 +93,18 @@ const boundsIn = (map: MapEngine): Bounds => {
 
 /** The map engine with our layers; it draws what it is given and reports what is pointed at. */
 export function MapCanvas(props: MapCanvasProps) {
-  const { label, bounds, track, bands, sites = null, chosenSite = null, fixes, chosenFix = null, ringM = null } = props;
+  const {
+    label,
+    bounds,
+    track,
+    variants,
+    bands,
+    sites = null,
+    chosenSite = null,
+    fixes,
+    chosenFix = null,
+    ringM = null,
+  } = props;
   const frame = useRef<HTMLDivElement>(null);
   const [started, setStarted] = useState<Started | null>(null);
   const [view, setView] = useState<Bounds | null>(null);
@@ -208,6 +222,10 @@ export function MapCanvas(props: MapCanvasProps) {
     setData(started, 'track', track ? trackFeatures(track) : emptyCollection());
     setData(started, 'ticks', track ? tickFeatures(track) : emptyCollection());
   }, [started, track]);
+
+  useEffect(() => {
+    if (started) setData(started, 'variants', variants ? variantFeatures(variants) : emptyCollection());
+  }, [started, variants]);
 
   useEffect(() => {
     if (!started) return;

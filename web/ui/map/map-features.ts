@@ -106,6 +106,10 @@ export const trackFeatures = ({ path }: MapTrack) =>
       : [{ type: 'Feature', properties: {}, geometry: { type: 'LineString', coordinates: path.map(copy) } }],
   );
 
+/** Other tracks beside the one that is shown, as thin lines. */
+export const variantFeatures = (paths: readonly (readonly LonLat[])[]) =>
+  collection<LineString>(paths.flatMap((path) => trackFeatures({ path, times: [] }).features));
+
 const mercatorY = (latitude: number) => Math.log(Math.tan(Math.PI / 4 + (latitude * Math.PI) / 360)) * (180 / Math.PI);
 
 /** Way of the track on a flat map at one of its points [degrees clockwise from north]. */

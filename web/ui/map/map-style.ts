@@ -12,6 +12,7 @@ export const SOURCES = [
   'bands',
   'contours',
   'ring',
+  'variants',
   'track',
   'ticks',
   'fixes',
@@ -73,6 +74,13 @@ const layers = (token: MapTokens): LayerSpecification[] => [
     type: 'line',
     source: 'ring',
     paint: { 'line-color': token('--caution'), 'line-width': 1.2, 'line-dasharray': [2, 2] },
+  },
+  {
+    id: 'variants',
+    type: 'line',
+    source: 'variants',
+    layout: { 'line-join': 'round' },
+    paint: { 'line-color': token('--map-track'), 'line-width': 1.1, 'line-opacity': 0.75, 'line-dasharray': [4, 3] },
   },
   {
     id: 'track-halo',
