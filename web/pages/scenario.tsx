@@ -9,6 +9,7 @@ import { newIdempotencyKey } from '../api/idempotency-key.ts';
 import { LeaveGuard } from '../features/scenarios/components/leave-guard.tsx';
 import { SaveProblem } from '../features/scenarios/components/save-problem.tsx';
 import { TrackEditor } from '../features/scenarios/components/track-editor.tsx';
+import { VariantsTab } from '../features/scenarios/components/variants-tab.tsx';
 import { scenarioQuery, useSaveVersion } from '../features/scenarios/scenario-queries.ts';
 import { draftOf, missingFrom, trackOf } from '../features/scenarios/track-draft.ts';
 import { useDraft } from '../features/scenarios/use-draft.ts';
@@ -36,6 +37,7 @@ export const loader = async ({ params }: LoaderFunctionArgs) => {
 
 const TABS: readonly { tab: ScenarioTab; label: string }[] = [
   { tab: 'track', label: 'Track' },
+  { tab: 'variants', label: 'Variants' },
   { tab: 'settings', label: 'Settings, one at a time' },
   { tab: 'wind-field', label: 'Wind field' },
 ];
@@ -86,7 +88,7 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
   return (
     <Page
       title={base.name}
-      note={tab === 'settings' ? SPREAD_NOTE : undefined}
+      note={tab === 'settings' || tab === 'variants' ? SPREAD_NOTE : undefined}
       crumbs={[{ label: 'Scenarios', to: paths.scenarios() }, { label: base.name }]}
       sub={
         <>
@@ -166,6 +168,7 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
           Your changes to the track aren’t saved yet. What stands here is that of version {base.number}.
         </Message>
       )}
+      {tab === 'variants' && <VariantsTab scenario={base} canSave={canWrite} />}
       {tab === 'settings' && <SettingsView version={base} />}
       {tab === 'wind-field' && <WindFieldView version={base} />}
       {tab === 'track' && (
