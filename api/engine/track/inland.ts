@@ -1,4 +1,4 @@
-import { inlandHours, inlandSpells, type LandIndex } from '../geo/land.ts';
+import { inlandHours, inlandSpells, type InlandSpell, type LandIndex } from '../geo/land.ts';
 import type { TrackFix } from './fixes.ts';
 import { legAt } from './position.ts';
 
@@ -26,4 +26,29 @@ export function hoursInlandOf(fixes: readonly TrackFix[], land: LandIndex | null
     if (end > 0) return Math.max(0, end - (to - timeS) / 3600);
     return hours[i]! * (1 - (timeS - from) / (to - from));
   };
+}
+
+/**
+ * Times the centre spends over land, by the hours given at the fixes, else by the land polygons.
+ *
+ * @param fixes Fixes in order of time.
+ * @param land  Land polygons, null when there are none to ask.
+ * @returns Spells in order of time, as hoursInlandOf has them: one that ends within a leg counts as ended where it began.
+ *          One that began before the track enters at its first fix.
+ * @source Arrangement only.
+ */
+export function inlandSpellsOf(fixes: readonly TrackFix[], land: LandIndex | null): InlandSpell[] {
+  const known = land ? inlandSpells(land, fixes) : [];
+  if (fixes.every(({ hoursInland }) => hoursInland === null)) return known;
+  const spells: { enterS: number; leaveS: number }[] = [];
+  fixes.forEach((fix, i) => {
+    const hours = fix.hoursInland ?? inlandHours(known, fix.timeS);
+    if (!(hours > 0)) return;
+    const before = spells[spells.length - 1];
+    const enterS = fix.timeS - 3600 * hours;
+    const isSame = before !== undefined && before.leaveS === fixes[i - 1]!.timeS && enterS <= before.leaveS;
+    if (isSame) before.leaveS = fix.timeS;
+    else spells.push({ enterS: Math.max(enterS, fixes[0]!.timeS), leaveS: fix.timeS });
+  });
+  return spells;
 }

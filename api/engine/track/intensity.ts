@@ -118,11 +118,26 @@ function startFix(fixes: readonly TrackFix[], fix: TrackFix, options: ChainOptio
 
 /** Rate of change of the central pressure, over the neighbouring fixes. */
 function fillTendencies(fixes: readonly TrackFix[], started: Started[]): void {
-  started.forEach((entry, i) => {
-    const a = Math.max(i - 1, 0);
-    const b = Math.min(i + 1, fixes.length - 1);
-    const rise = started[b]!.centralPressure - started[a]!.centralPressure;
-    entry.tendency = rise / (fixes[b]!.timeS - fixes[a]!.timeS);
+  const tendencies = pressureTendencies(
+    fixes.map(({ timeS }, i) => ({ timeS, centralPressurePa: started[i]!.centralPressure })),
+  );
+  started.forEach((entry, i) => (entry.tendency = tendencies[i]!));
+}
+
+/**
+ * Rate of change of the central pressure at every fix.
+ *
+ * @param fixes Times [s] and central pressures [Pa].
+ * @returns Rates [Pa s⁻¹].
+ * @source Difference between the neighbours, one-sided at the ends.
+ */
+export function pressureTendencies(
+  fixes: readonly { readonly timeS: number; readonly centralPressurePa: number }[],
+): number[] {
+  return fixes.map((_, i) => {
+    const a = fixes[Math.max(i - 1, 0)]!;
+    const b = fixes[Math.min(i + 1, fixes.length - 1)]!;
+    return (b.centralPressurePa - a.centralPressurePa) / (b.timeS - a.timeS);
   });
 }
 

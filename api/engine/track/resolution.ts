@@ -6,7 +6,9 @@ import { surfaceShare } from '../winds/implied-wind.ts';
 import { fitVortex } from '../winds/vortex-fit.ts';
 import { choiceNotices } from './choice-words.ts';
 import { requireTrack, type Anchor, type EngineNotice, type ResolvedFix, type TrackFix } from './fixes.ts';
-import { hoursInlandOf, type HoursInland } from './inland.ts';
+import { hoursInlandOf, inlandSpellsOf, type HoursInland } from './inland.ts';
+import { weakeningOf, type WeakenedIntensity, type Weakening } from './inland-weakening.ts';
+import { fitOuterWinds, type OuterFix } from './outer-wind.ts';
 import { resolveIntensity, type IntensityFix } from './intensity.ts';
 import { requireOptions, type ChainOptions } from './options.ts';
 import { layVortices } from './vortex-layer.ts';
@@ -16,6 +18,10 @@ export type TrackResolution = {
   readonly fixes: readonly ResolvedFix[];
   readonly wavenumber: number | null;
   readonly hoursInland: HoursInland;
+  /** Weakening by a relation; null where the track's own intensities hold throughout. */
+  readonly weakening: Weakening | null;
+  /** What the radii say about the outer wind; null where it isn't asked. */
+  readonly outer: readonly OuterFix[] | null;
   readonly notices: readonly EngineNotice[];
 };
 
@@ -36,7 +42,9 @@ export function resolveFixes(
 ): TrackResolution {
   requireTrack(fixes);
   requireOptions(options);
-  const { fixes: settled, notices } = resolveIntensity(fixes, options);
+  const { fixes: asGiven, notices } = resolveIntensity(fixes, options);
+  const weakening = weakeningOf(fixes, asGiven, inlandSpellsOf(fixes, land), options);
+  const settled = asGiven.map((entry, i) => (weakening ? weakened(entry, weakening(fixes[i]!.timeS)) : entry));
   const hoursInland = hoursInlandOf(fixes, land);
   const inputs = settled.map((entry, i) => ({
     maxWind: entry.maxWind,
@@ -88,7 +96,36 @@ export function resolveFixes(
   if (options.mesovortices && layer.wavenumber === null) {
     notices.push({ code: 'vortex-layer-off', text: 'No ring of this storm grows vortices: enhanced equals plain.' });
   }
-  return { fixes: resolved, wavenumber: layer.wavenumber, hoursInland, notices };
+  if (options.decay !== 'as-given' && weakening === null) {
+    notices.push({
+      code: 'decay-without-effect',
+      text: 'The centre crosses no coast from the sea: nothing decays over land.',
+    });
+  }
+  const outer = usesRadii(options) ? fitOuterWinds(fixes, resolved, options) : null;
+  if (outer) notices.push(...outer.notices);
+  return {
+    fixes: resolved,
+    wavenumber: layer.wavenumber,
+    hoursInland,
+    weakening,
+    outer: outer && outer.fixes,
+    notices,
+  };
+}
+
+function usesRadii({ outerWind, quadrants }: ChainOptions): boolean {
+  return outerWind === 'radii-34' || quadrants === 'radii';
+}
+
+/** A fix with the intensity a relation gives it, where it gives one other than its own. */
+function weakened(entry: IntensityFix, intensity: WeakenedIntensity | null): IntensityFix {
+  if (intensity === null || intensity.maxWind === entry.maxWind) return entry;
+  const { maxWind, deficit, relation } = intensity;
+  const filled = { ...entry.filled, maxWindMs: `${relation}, after landfall` };
+  if (deficit === null) return { ...entry, maxWind, filled };
+  const pressure = { centralPressureHpa: `${relation}, after landfall` };
+  return { ...entry, maxWind, centralPressure: entry.ambientPressure - deficit, filled: { ...filled, ...pressure } };
 }
 
 function anchorOf({ source }: IntensityFix, { anchor }: ChainOptions): Anchor {

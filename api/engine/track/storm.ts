@@ -7,13 +7,15 @@ import { radians } from '../units.ts';
 import { motionWind } from '../winds/asymmetry.ts';
 import { coriolis, hemisphereSign } from '../winds/coriolis.ts';
 import { fieldStateOf, type FieldState } from '../winds/field-state.ts';
-import { surfaceShare } from '../winds/implied-wind.ts';
+import { impliedMaxWind, surfaceShare } from '../winds/implied-wind.ts';
 import { seaWindOf } from '../winds/sea-wind.ts';
 import { hollandGradientWind } from '../winds/holland-1980.ts';
 import { fitVortex, strongestWind } from '../winds/vortex-fit.ts';
 import type { EngineNotice, ResolvedFix, TrackFix } from './fixes.ts';
 import { motionAt } from './motion.ts';
 import { oneMinuteOverTen, usesDefaultField, type ChainOptions } from './options.ts';
+import { pressureTendencies } from './intensity.ts';
+import { outerWindAt } from './outer-wind.ts';
 import { legAt, positionAt } from './position.ts';
 import { writeQuietDistances, writeQuietDistancesBelow } from './quiet-distance.ts';
 import { resolveFixes, type TrackResolution } from './resolution.ts';
@@ -110,10 +112,11 @@ export function prepareStorm(fixes: readonly TrackFix[], options: ChainOptions, 
   const stateCount = grid.timeS.length;
   const states = new Float64Array(stateCount * STATE_SIZE);
   const angles = patternAngles(resolved);
+  const tendencies = pressureTendencies(resolved);
   const field: FieldState[] = [];
   for (let k = 0; k < stateCount; k++) {
     const timeS = grid.timeS[k]!;
-    field.push(writeState(states, k * STATE_SIZE, resolution, timeS, angles, options));
+    field.push(writeState(states, k * STATE_SIZE, resolution, timeS, angles, tendencies, options));
   }
   const storm = { fixes: resolved, options, notices: resolution.notices, wavenumber, stateCount, states };
   if (usesDefaultField(options)) {
@@ -131,9 +134,10 @@ export function prepareStorm(fixes: readonly TrackFix[], options: ChainOptions, 
 function writeState(
   states: Float64Array,
   at: number,
-  { fixes, wavenumber, hoursInland }: TrackResolution,
+  { fixes, wavenumber, hoursInland, weakening, outer }: TrackResolution,
   timeS: number,
   angles: readonly number[],
+  tendencies: readonly number[],
   options: ChainOptions,
 ): FieldState {
   const i = legAt(fixes, timeS);
@@ -147,17 +151,20 @@ function writeState(
   const rMax = mix(a.radiusOfMaxWindM, b.radiusOfMaxWindM);
   const ambient = mix(a.ambientPressurePa, b.ambientPressurePa);
   const central = mix(a.centralPressurePa, b.centralPressurePa);
-  const maxWind = mix(a.anchoredMaxWindMs, b.anchoredMaxWindMs);
+  const weakened = weakening && weakening(timeS);
+  const f = coriolis(place.latitude);
+  const deficit = Math.max(weakened?.deficit ?? ambient - central, LEAST_PRESSURE_DEFICIT);
   const ofSurface = mix(shareOf(a, options), shareOf(b, options));
-  const vortex = fitVortex(
-    maxWind,
-    speed,
-    rMax,
-    coriolis(place.latitude),
-    Math.max(ambient - central, LEAST_PRESSURE_DEFICIT),
-    options,
-    ofSurface,
-  );
+  let maxWind = mix(a.anchoredMaxWindMs, b.anchoredMaxWindMs);
+  const held = mix(heldShare(a), heldShare(b));
+  if (weakened) maxWind = held * weakened.maxWind;
+  else if (options.shapeSource === 'relation') {
+    // The relation holds at every time, not at the fixes alone.
+    const { latitude } = place;
+    const tendency = mix(tendencies[i]!, tendencies[i + 1]!);
+    maxWind = held * impliedMaxWind({ central, deficit, tendency, rMax, latitude, f, speed }, options, ofSurface);
+  }
+  const vortex = fitVortex(maxWind, speed, rMax, f, deficit, options, ofSurface);
   const wind = motionWind(speed, heading, sign);
   const [x, y, z] = unitVector(place);
   const lambda = radians(place.longitude);
@@ -198,7 +205,13 @@ function writeState(
   states[at + STATE.patternAngle] = patternAngle;
   const { latitude } = place;
   const field = { vortex, latitude, sign, speed, heading, maxWind, motion: wind, surfaceShare: ofSurface };
-  return fieldStateOf({ ...field, outer: null, quadrants: null }, options);
+  const fitted = outer === null ? { outer: null, quadrants: null } : outerWindAt(outer, timeS, rMax);
+  return fieldStateOf({ ...field, ...fitted }, options);
+}
+
+/** What anchoring left of the maximum wind of a fix [1]. */
+function heldShare({ anchoredMaxWindMs, maxWindMs }: ResolvedFix): number {
+  return maxWindMs > 0 ? anchoredMaxWindMs / maxWindMs : 1;
 }
 
 function shareOf({ intensitySource }: ResolvedFix, options: ChainOptions): number {

@@ -4,6 +4,7 @@ import type { FieldState, SeaWind } from './field-state.ts';
 import { georgiouWind } from './georgiou.ts';
 import { inflowAngle, zhangUhlhornInflow } from './inflow.ts';
 import { kepertSeaWind } from './kepert-sea-wind.ts';
+import { quadrantSeaWind } from './quadrant-sea-wind.ts';
 import { radialProfile, type RadialProfile } from './radial-profile.ts';
 import { schwerdtAddition } from './schwerdt.ts';
 import { SURFACE_FACTORS } from './surface-factor.ts';
@@ -17,6 +18,11 @@ import { SURFACE_FACTORS } from './surface-factor.ts';
  * @source Each part names its own.
  */
 export function seaWindOf(options: WindOptions): SeaWind {
+  const field = unfittedSeaWind(options);
+  return options.quadrants === 'radii' ? quadrantSeaWind(field) : field;
+}
+
+function unfittedSeaWind(options: WindOptions): SeaWind {
   const profile = radialProfile(options);
   switch (options.asymmetry) {
     case 'lin-chavas':
