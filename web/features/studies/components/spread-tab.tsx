@@ -180,10 +180,7 @@ function Results({ reply, stale, asTable, evidence, onSettings }: ResultsProps) 
           />
         )}
         <p className="text-12 text-ink-2">
-          {sites.used === sites.of
-            ? `All ${count(sites.of)} sites`
-            : `${count(sites.used)} of ${count(sites.of)} sites`}
-          : {sites.rule} Curve {reply.curve}. Track version {reply.scenario.version}, engine{' '}
+          {sites.rule} Curve {reply.curve}. Track version {reply.scenario.version}, engine{' '}
           {reply.engineVersion.slice(0, 8)}. Free, stored nowhere, and no substitute for a run.
         </p>
       </div>

@@ -209,7 +209,7 @@ function Fields({ a, b, difference, isOld, fileName }: FieldsProps) {
         </div>
       </section>
       {b && (
-        <div className="grid grid-cols-2 gap-3.5 max-md:grid-cols-1">
+        <div className="grid grid-cols-2 gap-3.5 max-wide:grid-cols-1">
           <CursorNumbers a={a} b={b} cursor={cursor} id={readoutId} />
           <StormNumbers a={a} b={b} />
         </div>
