@@ -28,7 +28,7 @@ export const factsOf = (
   inReach: base.outcome.strongest !== null,
 });
 
-const NOTHING = 'No effect at these sites: every gust and loss stays the same to the last digit.';
+const NOTHING = 'No effect at these sites: every gust and every loss stays the same.';
 
 /** Why a switch that changed nothing changes nothing here: the most particular reason that holds. */
 export const noEffectReason = (tried: Pick<Switch, 'choice' | 'to'>, facts: SpreadFacts): string => {

@@ -109,6 +109,9 @@ const refused = (error: unknown): never => {
   });
 };
 
+/** A change of the strongest gust that no screen shows. */
+const LEAST_SHOWN_MS = 1e-6;
+
 const rowOf = (tried: Switch, result: TrialResult, facts: SpreadFacts): SpreadRow => {
   const { choice, title, from, to } = tried;
   const head = { choice, title, from, to: { value: to.value, title: to.title, source: to.source } };
@@ -116,8 +119,18 @@ const rowOf = (tried: Switch, result: TrialResult, facts: SpreadFacts): SpreadRo
     const reason = `Can’t be computed here: ${result.refused}.`;
     return { ...head, peakGustMs: null, peakGustChangeMs: null, grossMinor: null, grossChangeMinor: null, reason };
   }
-  const { outcome, sameGusts, sameLosses } = result;
   const base = facts.base.outcome;
+  if (result.sameGusts && result.sameLosses) {
+    return {
+      ...head,
+      peakGustMs: base.peakMs,
+      peakGustChangeMs: 0,
+      grossMinor: base.grossMinor,
+      grossChangeMinor: base.grossMinor && 0,
+      reason: noEffectReason(tried, facts),
+    };
+  }
+  const { outcome } = result;
   const peakGustChangeMs = outcome.peakMs.p50 - base.peakMs.p50;
   const grossChangeMinor = grossChange(outcome, base);
   return {
@@ -127,11 +140,9 @@ const rowOf = (tried: Switch, result: TrialResult, facts: SpreadFacts): SpreadRo
     grossMinor: outcome.grossMinor,
     grossChangeMinor,
     reason:
-      sameGusts && sameLosses
-        ? noEffectReason(tried, facts)
-        : peakGustChangeMs === 0 && (grossChangeMinor ?? 0) === 0
-          ? 'Changes something at some sites, but neither the strongest gust nor the event’s loss.'
-          : null,
+      Math.abs(peakGustChangeMs) < LEAST_SHOWN_MS && (grossChangeMinor ?? 0) === 0
+        ? 'Changes something at some sites, but neither the strongest gust nor the event’s loss.'
+        : null,
   };
 };
 
