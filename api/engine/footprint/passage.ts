@@ -39,6 +39,10 @@ export type Passage = {
   readonly mark: Uint8Array;
   /** Times at which the wind is to be computed, as indices into the series. */
   readonly wanted: Int32Array;
+  /** Of each outer time: unit vector of the centre, and squared chord within which it is near, shape (outer times, 4). */
+  readonly centres: Float64Array;
+  /** Squared chords beyond which an outer time is quiet, shape (quiet winds, outer times) row-major. */
+  readonly quietChords: Float64Array;
   /** The chosen relations; null under the default field. */
   readonly chosen: ChosenField | null;
 };
@@ -55,6 +59,16 @@ export type UnitPlace = { readonly x: number; readonly y: number; readonly z: nu
  */
 export function makePassage(storm: Storm): Passage {
   const n = storm.stateCount;
+  const { states, outer } = storm;
+  const centres = new Float64Array(4 * outer.length);
+  const quietChords = new Float64Array(QUIET_WIND_COUNT * outer.length);
+  outer.forEach((k, o) => {
+    const at = k * STATE_SIZE;
+    centres.set([states[at]!, states[at + 1]!, states[at + 2]!, states[at + STATE.nearChord2]!], 4 * o);
+    for (let quiet = 0; quiet < QUIET_WIND_COUNT; quiet++) {
+      quietChords[quiet * outer.length + o] = states[at + STATE.quietChord2 + quiet]!;
+    }
+  });
   return {
     timeS: Float64Array.from({ length: n }, (_, k) => storm.states[k * STATE_SIZE + STATE.timeS]!),
     state: new Int32Array(n),
@@ -72,6 +86,8 @@ export function makePassage(storm: Storm): Passage {
     phaseSin: new Float64Array(n),
     mark: new Uint8Array(storm.outer.length),
     wanted: new Int32Array(n),
+    centres,
+    quietChords,
     chosen: chosenFieldOf(storm),
   };
 }
@@ -136,19 +152,18 @@ export function unitPlace(latitude: number, longitude: number): UnitPlace {
  * @source The chain as footprint/wind-at.ts states it.
  */
 export function gustWhenNearest(storm: Storm, place: UnitPlace, exposure: Exposure, passage: Passage): number {
-  const { states, outer } = storm;
+  const { centres } = passage;
   const { x, y, z } = place;
   let nearest = 0;
   let cosine = -Infinity;
-  for (let o = 0; o < outer.length; o++) {
-    const at = outer[o]! * STATE_SIZE;
-    const dot = x * states[at]! + y * states[at + 1]! + z * states[at + 2]!;
+  for (let o = 0, at = 0; at < centres.length; o++, at += 4) {
+    const dot = x * centres[at]! + y * centres[at + 1]! + z * centres[at + 2]!;
     if (dot > cosine) {
       cosine = dot;
-      nearest = outer[o]!;
+      nearest = o;
     }
   }
-  passage.state[0] = nearest;
+  passage.state[0] = storm.outer[nearest]!;
   passage.wanted[0] = 0;
   windsAt(storm, place, exposure, passage, 0, 1);
   return passage.gust[0]!;
@@ -167,18 +182,17 @@ export function gustWhenNearest(storm: Storm, place: UnitPlace, exposure: Exposu
  * @source Times of the chain.
  */
 export function layTimes(storm: Storm, place: UnitPlace, quiet: number, passage: Passage): number {
-  const { states, outer } = storm;
-  const { state, mark } = passage;
+  const { outer } = storm;
+  const { state, mark, centres, quietChords } = passage;
   const { x, y, z } = place;
   const last = outer.length - 1;
-  const quietAt = quiet < 0 ? -1 : STATE.quietChord2 + quiet;
+  const quietFrom = quiet * outer.length;
   for (let o = 0; o <= last; o++) {
-    const at = outer[o]! * STATE_SIZE;
-    const dx = x - states[at]!;
-    const dy = y - states[at + 1]!;
-    const dz = z - states[at + 2]!;
+    const dx = x - centres[4 * o]!;
+    const dy = y - centres[4 * o + 1]!;
+    const dz = z - centres[4 * o + 2]!;
     const chord2 = dx * dx + dy * dy + dz * dz;
-    mark[o] = chord2 < states[at + 19]! ? NEAR : quietAt >= 0 && chord2 > states[at + quietAt]! ? QUIET : FAR;
+    mark[o] = chord2 < centres[4 * o + 3]! ? NEAR : quiet >= 0 && chord2 > quietChords[quietFrom + o]! ? QUIET : FAR;
   }
   let count = 0;
   for (let o = 0; o <= last; o++) {
