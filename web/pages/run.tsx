@@ -3,6 +3,7 @@ import { useSuspenseQuery } from '@tanstack/react-query';
 import { ClockAlert, Download } from 'lucide-react';
 import { Link, useNavigate, useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
 import { exportSites, type Run, type RunScenario } from '#contract/runs.ts';
+import type { Stale } from '#contract/track-age.ts';
 import { addressOf } from '../api/call.ts';
 import { MapTab } from '../features/results/components/map-tab.tsx';
 import { Overview } from '../features/results/components/overview.tsx';
@@ -21,6 +22,7 @@ import { queryClient } from '../query-client.ts';
 import { Card } from '../ui/card.tsx';
 import { Chip } from '../ui/chip.tsx';
 import { Page } from '../ui/page.tsx';
+import { StaleChip } from '../ui/stale-chip.tsx';
 import { Tabs } from '../ui/tabs.tsx';
 
 export { RouteError as ErrorBoundary } from './route-error.tsx';
@@ -167,10 +169,15 @@ export function Component() {
 function Provenance({ run }: { run: Run }) {
   const { calibration } = run;
   const partial = run.scenariosDone < run.scenariosTotal;
+  const oldest = run.scenarios.reduce<Stale | null>(
+    (found, { stale }) => (stale && stale.ageHours > (found?.ageHours ?? 0) ? stale : found),
+    null,
+  );
   return (
     <>
       <RunStateChip state={run.state} />
       <PurposeChip purpose={run.purpose} />
+      {oldest && <StaleChip stale={oldest} what="Stale track" />}
       {partial && run.scenariosDone > 0 && (
         <Chip tone="caution">
           Partial: {run.scenariosDone} of {run.scenariosTotal}

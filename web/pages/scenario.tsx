@@ -1,9 +1,10 @@
 import { useRef, useState } from 'react';
 import { useQueryClient, useSuspenseQuery } from '@tanstack/react-query';
 import { Pencil, Play, RefreshCw, Save, Undo2 } from 'lucide-react';
-import { useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
+import { Link, useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
 import { TRACK_WRITERS, UNDERWRITERS } from '#contract/roles.ts';
 import type { ScenarioVersion } from '#contract/scenarios.ts';
+import { derivationWords } from '#contract/variant-words.ts';
 import { ApiError } from '../api/api-error.ts';
 import { newIdempotencyKey } from '../api/idempotency-key.ts';
 import { LeaveGuard } from '../features/scenarios/components/leave-guard.tsx';
@@ -23,6 +24,7 @@ import { Button, ButtonLink } from '../ui/button.tsx';
 import { Chip } from '../ui/chip.tsx';
 import { Message } from '../ui/message.tsx';
 import { Page } from '../ui/page.tsx';
+import { StaleChip } from '../ui/stale-chip.tsx';
 import { Tabs } from '../ui/tabs.tsx';
 
 import { SettingsView, WindFieldView } from './scenario-studies.tsx';
@@ -105,6 +107,13 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
           <span>
             {counted(draft.fixes.length, 'fix', 'fixes')}, {base.resolution.hemisphere}ern hemisphere
           </span>
+          {base.stale && <StaleChip stale={base.stale} what="Stale track" />}
+          {base.derivation && (
+            <span>
+              {derivationWords(base.derivation, base.number)}{' '}
+              <Link to={paths.scenario(base.derivation.scenarioId)}>See {base.derivation.name}</Link>
+            </span>
+          )}
         </>
       }
       actions={

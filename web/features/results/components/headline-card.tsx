@@ -76,6 +76,7 @@ export function HeadlineCard({ run, scenario }: HeadlineCardProps) {
               axis={axis}
               enhanced={enhanced}
               plain={plain}
+              stale={scenario.stale !== null}
               format={(minor) => moneyRangeParts(minor, axis.high, currency).amount.split('–')[0]!}
               className="mt-3"
             />

@@ -2,6 +2,7 @@ import type { ReactNode } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import { Copy, Download, Printer } from 'lucide-react';
 import type { RunSlip } from '#contract/runs.ts';
+import { ageWords } from '#contract/track-age.ts';
 import { failureOf } from '../../../api/failure.ts';
 import { day, utc } from '../../../lib/dates.ts';
 import { exactMoney } from '../../../lib/money.ts';
@@ -80,6 +81,12 @@ function Slip({ slip }: { slip: RunSlip }) {
             <Row term="Track" digest={scenario.digest}>
               {scenario.source || 'source not stated'}
             </Row>
+            {scenario.asOf && (
+              <Row term="As of">
+                {utc(scenario.asOf)}, {ageWords(scenario.ageHoursWhenRun ?? 0)} old when run
+                {scenario.staleWhenRun && ', stale'}
+              </Row>
+            )}
             <Row term="Winds">
               averaged over {scenario.windAveragingS} s; {scenario.conversion}
             </Row>

@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { ChevronDown, ChevronUp, HardHat } from 'lucide-react';
 import { ENGINEERING_NOTE } from '#contract/notices.ts';
 import type { Run, RunScenario, SiteDetail } from '#contract/runs.ts';
+import { ageWords } from '#contract/track-age.ts';
 import { failureOf } from '../../../api/failure.ts';
 import { utc } from '../../../lib/dates.ts';
 import { exactMoney, moneyRangeParts, shortMoney } from '../../../lib/money.ts';
@@ -65,6 +66,7 @@ export function SiteDrawer({ run, scenario, siteNo, onPrevious, onNext, onClose,
       className={className}
     >
       <div>
+        <TrackAge scenario={scenario} />
         {query.isError ? (
           <ProblemNotice
             title="This site wasn’t read"
@@ -79,6 +81,17 @@ export function SiteDrawer({ run, scenario, siteNo, onPrevious, onNext, onClose,
         )}
       </div>
     </Drawer>
+  );
+}
+
+/** A track from an advisory: as of when, how old at the run, and whether it has aged since. */
+function TrackAge({ scenario: { asOf, ageHoursWhenRun, staleWhenRun, stale } }: { scenario: RunScenario }) {
+  if (asOf === null || ageHoursWhenRun === null) return null;
+  return (
+    <p className="border-b border-rule bg-event-tint px-4 py-2 text-13 text-event">
+      Track as of {utc(asOf)}, {ageWords(ageHoursWhenRun)} old when run{staleWhenRun && ', stale'}.
+      {stale && ` Now ${ageWords(stale.ageHours)} old${staleWhenRun ? '' : ': stale'}.`}
+    </p>
   );
 }
 

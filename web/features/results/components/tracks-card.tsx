@@ -1,5 +1,6 @@
 import { useNavigate } from 'react-router-dom';
 import type { Run, RunScenario } from '#contract/runs.ts';
+import { ageWords } from '#contract/track-age.ts';
 
 import { millions, millionsRange } from '../../../lib/money.ts';
 import { countInWords } from '../../../lib/numbers.ts';
@@ -40,13 +41,21 @@ export function TracksCard({ run, chosen }: { run: Run; chosen: RunScenario }) {
                 scenario.id === chosen.id ? 'bg-selected shadow-[inset_3px_0_var(--action)]' : 'hover:bg-hover',
               )}
             >
-              <span className={classNames('truncate', scenario.id === chosen.id && 'font-bold')}>{scenario.name}</span>
+              <span className="min-w-0">
+                <span className={classNames('block truncate', scenario.id === chosen.id && 'font-bold')}>
+                  {scenario.name}
+                </span>
+                {scenario.stale && (
+                  <span className="block text-12 text-event">stale, {ageWords(scenario.stale.ageHours)} old</span>
+                )}
+              </span>
               {scenario.result ? (
                 <>
                   <RangeBar
                     axis={axis}
                     enhanced={scenario.result.gross}
                     plain={scenario.result.grossPlainMinor}
+                    stale={scenario.stale !== null}
                     format={(minor) => `${millions(minor, currency)} million`}
                   />
                   <b className="text-right">

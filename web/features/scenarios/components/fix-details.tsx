@@ -19,6 +19,18 @@ const FIELDS: readonly { key: Key; label: string; unit?: string; low: number; hi
   { key: 'eyeVorticityRatio', label: 'Eye vorticity ratio', low: 0, high: 1 },
   { key: 'hoursInland', label: 'Hours inland', unit: 'h', low: 0, high: 1000 },
 ];
+const RADII = [
+  { field: 'radius34KtM', knots: 34 },
+  { field: 'radius50KtM', knots: 50 },
+  { field: 'radius64KtM', knots: 64 },
+] as const;
+
+/** Which radii the fix holds, said on the folded line. */
+const radiiNote = (fix: DraftFix): string => {
+  const given = RADII.filter(({ field }) => fix[field]?.some((radius) => radius > 0)).map(({ knots }) => `${knots}`);
+  return given.length === 0 ? '' : ` (${given.join(', ')} kt given)`;
+};
+
 const QUADRANTS = ['NE', 'SE', 'SW', 'NW'] as const;
 
 const numberIn = (text: string): number | null | undefined => {
@@ -32,7 +44,7 @@ export function FixDetails({ fix, resolved, number, readOnly, onChange }: FixDet
   return (
     <details className="rounded-3 border border-rule bg-sheet shadow-1">
       <summary className="px-4 py-2.5 text-13 font-bold">
-        More of fix {number}: pressure outside, 64-kt radii, ring, hours inland
+        More of fix {number}: pressure outside, 34, 50 and 64-kt radii, ring, hours inland{radiiNote(fix)}
       </summary>
       <div className="grid grid-cols-4 gap-3 border-t border-rule p-4 max-rail:grid-cols-2" key={number}>
         {FIELDS.map(({ key, label, unit, low, high }) => (
@@ -48,23 +60,25 @@ export function FixDetails({ fix, resolved, number, readOnly, onChange }: FixDet
             onValue={(value) => onChange({ [key]: value })}
           />
         ))}
-        {QUADRANTS.map((quadrant, index) => (
-          <NumberEntry
-            key={quadrant}
-            label={`64-kt radius, ${quadrant}`}
-            unit="km"
-            value={fix.radius64KtM === null ? null : fix.radius64KtM[index]! / 1000}
-            low={0}
-            high={2000}
-            filled={undefined}
-            readOnly={readOnly}
-            onValue={(km) => {
-              const radii = [...(fix.radius64KtM ?? [0, 0, 0, 0])] as [number, number, number, number];
-              radii[index] = (km ?? 0) * 1000;
-              onChange({ radius64KtM: radii.every((radius) => radius === 0) ? null : radii });
-            }}
-          />
-        ))}
+        {RADII.map(({ field, knots }) =>
+          QUADRANTS.map((quadrant, index) => (
+            <NumberEntry
+              key={`${field} ${quadrant}`}
+              label={`${knots}-kt radius, ${quadrant}`}
+              unit="km"
+              value={fix[field] === null ? null : fix[field][index]! / 1000}
+              low={0}
+              high={2000}
+              filled={undefined}
+              readOnly={readOnly}
+              onValue={(km) => {
+                const radii = [...(fix[field] ?? [0, 0, 0, 0])] as [number, number, number, number];
+                radii[index] = (km ?? 0) * 1000;
+                onChange({ [field]: radii.every((radius) => radius === 0) ? null : radii });
+              }}
+            />
+          )),
+        )}
       </div>
     </details>
   );

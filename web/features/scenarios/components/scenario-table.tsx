@@ -1,15 +1,14 @@
-import { ClockAlert, Play } from 'lucide-react';
+import { Play } from 'lucide-react';
 import { Link, useNavigate } from 'react-router-dom';
 import type { ScenarioSummary } from '#contract/scenarios.ts';
-import { clock, day, elapsed, shortDay } from '../../../lib/dates.ts';
+import { clock, day, shortDay } from '../../../lib/dates.ts';
 import { count } from '../../../lib/numbers.ts';
-import { useNow } from '../../../lib/use-now.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { paths } from '../../../paths.ts';
 import { ButtonLink } from '../../../ui/button.tsx';
 import { Card } from '../../../ui/card.tsx';
-import { Chip } from '../../../ui/chip.tsx';
 import { TrackThumbnail } from '../../../ui/map/track-thumbnail.tsx';
+import { StaleChip } from '../../../ui/stale-chip.tsx';
 import { SkeletonRows, Table, TableBanner, Td, Th, Tr } from '../../../ui/table.tsx';
 
 interface ScenarioTableProps {
@@ -18,8 +17,6 @@ interface ScenarioTableProps {
   canRun: boolean;
   failedMore?: (() => void) | undefined;
 }
-
-const SIX_HOURS_MS = 6 * 3_600_000;
 
 export function ScenarioTable({ scenarios, loading, canRun, failedMore }: ScenarioTableProps) {
   const { gust, label } = useUnits();
@@ -68,6 +65,11 @@ export function ScenarioTable({ scenarios, loading, canRun, failedMore }: Scenar
                   <span className="block text-13 text-ink-2">
                     version {scenario.version}, {scenario.hemisphere}ern hemisphere
                   </span>
+                  {scenario.stale && (
+                    <span className="mt-1 block">
+                      <StaleChip stale={scenario.stale} />
+                    </span>
+                  )}
                   {scenario.description && (
                     <span className="block max-w-90 truncate text-13 text-ink-2">{scenario.description}</span>
                   )}
@@ -83,7 +85,11 @@ export function ScenarioTable({ scenarios, loading, canRun, failedMore }: Scenar
                 </Td>
                 <Td priority={3} className="max-w-56 text-13">
                   <span className="line-clamp-2">{scenario.source || 'not stated'}</span>
-                  {scenario.asOf && <AsOf instant={scenario.asOf} />}
+                  {scenario.asOf && (
+                    <span className="mt-1 block text-ink-2">
+                      as of {day(scenario.asOf)} {clock(scenario.asOf)}
+                    </span>
+                  )}
                 </Td>
                 <Td priority={2} className="text-13 whitespace-nowrap">
                   {day(scenario.updatedAt)}
@@ -107,24 +113,5 @@ export function ScenarioTable({ scenarios, loading, canRun, failedMore }: Scenar
         </tbody>
       </Table>
     </Card>
-  );
-}
-
-/** An advisory is superseded by the next one, about every six hours. */
-function AsOf({ instant }: { instant: string }) {
-  const now = useNow(60_000);
-  const age = now.getTime() - Date.parse(instant);
-  return (
-    <span className="mt-1 block">
-      {age > SIX_HOURS_MS ? (
-        <Chip tone="event" icon={ClockAlert}>
-          Stale, {elapsed(Date.parse(instant), now.getTime())} old
-        </Chip>
-      ) : (
-        <span className="text-ink-2">
-          as of {day(instant)} {clock(instant)}
-        </span>
-      )}
-    </span>
   );
 }
