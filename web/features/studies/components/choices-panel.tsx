@@ -42,7 +42,7 @@ export function ChoicesPanel({ settings, onSettings }: ChoicesPanelProps) {
           </p>
         )}
       </header>
-      <ScrollArea label="Settings of B" className="min-h-0 overflow-y-auto">
+      <ScrollArea label="List of the settings of B" className="min-h-0 overflow-y-auto">
         <ChoicesForm
           choices={CHOICES}
           value={(key) => valueOf(settings, key)}
