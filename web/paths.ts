@@ -34,5 +34,6 @@ export const paths = {
     withQuery(`/runs/${runId}`, view),
   billing: () => '/billing',
   validation: () => '/validation',
+  ringBench: () => '/ring-bench',
   limits: () => '/limits',
 };

@@ -26,6 +26,7 @@ export const router = createBrowserRouter([
           { path: 'runs/new', lazy: () => import('./pages/new-run.tsx') },
           { path: 'runs/:runId', lazy: () => import('./pages/run.tsx') },
           { path: 'billing', lazy: () => import('./pages/billing.tsx') },
+          { path: 'ring-bench', lazy: () => import('./pages/ring-bench.tsx') },
           { path: 'validation', lazy: () => import('./pages/validation.tsx') },
           { path: 'limits', lazy: () => import('./pages/limits.tsx') },
           { path: '*', lazy: () => import('./pages/not-found.tsx') },

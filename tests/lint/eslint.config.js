@@ -15,10 +15,12 @@ const rooms = (where) =>
     no(`./${where}/${feature}`, `./${where}`, 'Features meet one floor up.', [`./${feature}`]),
   );
 
+const clientSees = (...what) => no('./web', './api', 'The client sees only the contract.', what);
+
 const zones = [
   no('./api/engine', './api', 'The engine knows nothing but itself.', ['./engine']),
   no('./api/contract', './api', 'The contract knows nothing but itself.', ['./contract']),
-  no('./web', './api', 'The client sees only the contract.', ['./contract']),
+  clientSees('./contract'),
   no('./api', './web', 'The API never imports the client.'),
   no(['./api', './web'], './tests', 'Nothing imports the tests.'),
   no('./migrations', ['./api', './web'], 'A migration must still run when the code has moved on.'),
@@ -41,6 +43,9 @@ const zones = [
   ...rooms('web/features'),
 ];
 
+/** A Web Worker of the client may run the engine, so that both sides compute with one source; nothing else there may. */
+const zonesOfWebWorkers = zones.map((zone) => (zone.target === './web' ? clientSees('./contract', './engine') : zone));
+
 const forbidInEngine = ['process', 'console', 'fetch', 'setTimeout', 'setInterval', 'performance', 'Date'];
 
 export default tseslint.config(
@@ -62,6 +67,10 @@ export default tseslint.config(
       'import-x/no-cycle': 'error',
       'import-x/no-restricted-paths': ['error', { basePath: root, zones }],
     },
+  },
+  {
+    files: ['web/**/*.worker.ts'],
+    rules: { 'import-x/no-restricted-paths': ['error', { basePath: root, zones: zonesOfWebWorkers }] },
   },
   {
     files: ['api/**/*.{ts,mjs}', 'web/**/*.{ts,tsx}', 'tests/**/*.{ts,tsx}'],

@@ -1,6 +1,6 @@
 import { useEffect, useRef, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
-import { BookOpenText, ChartScatter, Home, Layers, Play, ReceiptText, Route } from 'lucide-react';
+import { BookOpenText, ChartScatter, Home, Layers, Orbit, Play, ReceiptText, Route } from 'lucide-react';
 import { Outlet, useLocation, useNavigate } from 'react-router-dom';
 import { MONEY_READERS, READERS } from '#contract/roles.ts';
 import type { Session } from '#contract/session.ts';
@@ -40,7 +40,10 @@ const workItems = (session: Session): NavigationItem[] => {
 /** What the numbers rest on, for those who own or check the model. */
 const modelItems = (session: Session): NavigationItem[] =>
   holdsOneOf(session, ['modeler', 'auditor'])
-    ? [{ to: paths.validation(), label: 'Validation', icon: ChartScatter }]
+    ? [
+        ...(holdsOneOf(session, ['modeler']) ? [{ to: paths.ringBench(), label: 'Ring bench', icon: Orbit }] : []),
+        { to: paths.validation(), label: 'Validation', icon: ChartScatter },
+      ]
     : [];
 const accountItems = (session: Session): NavigationItem[] => [
   ...(holdsOneOf(session, MONEY_READERS) ? [{ to: paths.billing(), label: 'Billing', icon: ReceiptText }] : []),

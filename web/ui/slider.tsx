@@ -31,11 +31,12 @@ export function Slider({ label, stops, marks = [], value, valueText, onChange, t
     direction === 1 ? list.find((stop) => stop > value) : list.findLast((stop) => stop < value);
   const onKeyDown = (event: KeyboardEvent) => {
     const jumps = marks.length > 0 ? marks : stops.filter((_, index) => index % 10 === 0);
+    const near = event.shiftKey ? jumps : stops;
     const next = {
-      ArrowRight: () => step(stops, 1),
-      ArrowUp: () => step(stops, 1),
-      ArrowLeft: () => step(stops, -1),
-      ArrowDown: () => step(stops, -1),
+      ArrowRight: () => step(near, 1),
+      ArrowUp: () => step(near, 1),
+      ArrowLeft: () => step(near, -1),
+      ArrowDown: () => step(near, -1),
       PageUp: () => step(jumps, 1),
       PageDown: () => step(jumps, -1),
       Home: () => low,

@@ -20,6 +20,8 @@ interface ChartFrameProps {
   fileName: string;
   children: ReactNode;
   className?: string;
+  /** The picture has controls of its own: it isn’t one image. */
+  interactive?: boolean;
 }
 
 const quoted = (text: string) => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text);
@@ -43,7 +45,16 @@ const TOOL =
   'flex h-7 items-center gap-1.25 rounded-1 px-1.5 text-12 font-bold text-link hover:bg-hover aria-pressed:bg-selected pointer-coarse:h-11';
 
 /** Title, picture with its text alternative, the same as a table, and the table as a file. */
-export function ChartFrame({ title, aside, summary, table, fileName, children, className }: ChartFrameProps) {
+export function ChartFrame({
+  title,
+  aside,
+  summary,
+  table,
+  fileName,
+  children,
+  className,
+  interactive = false,
+}: ChartFrameProps) {
   const [asTable, setAsTable] = useState(false);
   const titleId = useId();
   return (
@@ -71,7 +82,7 @@ export function ChartFrame({ title, aside, summary, table, fileName, children, c
       {asTable ? (
         <FigureTable table={table} label={summary} />
       ) : (
-        <div role="img" aria-label={summary}>
+        <div role={interactive ? undefined : 'img'} aria-label={interactive ? undefined : summary}>
           {children}
         </div>
       )}
