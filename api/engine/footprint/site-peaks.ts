@@ -84,10 +84,12 @@ export type SiteScores = Record<(typeof COLUMNS)[number], Float64Array> & {
   readonly eventAbove: Float64Array;
 };
 
-/** Asked every 64 sites: whether to stop, and told how many sites are done. */
+/** Asked every 64 sites: whether to stop, and told how many sites are done; told of each site that is within reach. */
 export type ScoreControl = {
   readonly shouldStop?: () => boolean;
   readonly onProgress?: (done: number) => void;
+  /** Given the site, its gusts in the scores so far, and its peak in every draw, shape (264,), which is used again. */
+  readonly onSite?: (site: number, scores: SiteScores, draws: Float64Array) => void;
 };
 
 const GUST_LEVELS = [0.05, 0.5, 0.9, 0.95, 0.99];
@@ -177,6 +179,7 @@ export function scoreSites(
     scores.p95[s] = levels[3]!;
     scores.p99[s] = levels[4]!;
     scores.reach[s] = Math.max(plain, levels[4]!) < GUST_FLOOR ? SITE_BELOW_FLOOR : SITE_SCORED;
+    control.onSite?.(s, scores, gusts);
 
     const damagePlain = meanDamage(curve, plain);
     scores.damagePlain[s] = damagePlain;
