@@ -83,7 +83,7 @@ export function drawPeaks(passage: Passage, count: number, peak: number, work: D
 
 /** Takes every so many of the times inside the layer, outward from the highest plain gust. */
 function takeOutward(
-  { gust, crest, phaseCos, phaseSin }: Passage,
+  { gust, crest, phaseCos, phaseSin, ownPhases }: Passage,
   firstAfterPeak: number,
   insideCount: number,
   stride: number,
@@ -111,7 +111,17 @@ function takeOutward(
     const cosNow = phaseCos[i]!;
     const sinNow = phaseSin[i]!;
     let changed = false;
-    for (let j = 0; j < HALF; j++) {
+    if (ownPhases !== null) {
+      for (let j = 0; j < PHASE_COUNT; j++) {
+        const c = cosNow * ownPhases[2 * j]! + sinNow * ownPhases[2 * j + 1]!;
+        const slope = scale * (c * c - 0.5 + c);
+        if (g + WEAKEST * slope > low[j]! || g + STRONGEST * slope > high[j]!) {
+          raise(gusts, j, g, slope, low, high);
+          changed = true;
+        }
+      }
+    }
+    for (let j = ownPhases === null ? 0 : HALF; j < HALF; j++) {
       // Phases j and j + 12 are opposite: the cosine changes its sign.
       const c = cosNow * START_COS[j]! + sinNow * START_SIN[j]!;
       const even = scale * (c * c - 0.5);

@@ -1,5 +1,5 @@
 import { EARTH_RADIUS } from '../constants.ts';
-import { radialShape } from '../ring/draws.ts';
+import { radialShape, startingPhase } from '../ring/draws.ts';
 import { DRAG_LINE, DRAG_RANGE, roughnessOfDrag } from '../terrain/drag.ts';
 import { roughnessFactor } from '../terrain/roughness.ts';
 import { FIRST_QUIET_WIND, QUIET_WIND_COUNT } from '../track/quiet-distance.ts';
@@ -7,7 +7,15 @@ import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
 import { quickLog } from '../numerics/quick-log.ts';
 import { radians } from '../units.ts';
 import { INNER_FACTOR, INNER_RADIUS, OUTER_FACTOR, OUTER_RADIUS } from '../winds/surface-factor.ts';
-import { chosenFieldOf, evaluateChosen, type ChosenField } from './chosen-passage.ts';
+import {
+  chosenGreatestFactor,
+  chosenGroundOf,
+  chosenGusts,
+  chosenSeaWindOf,
+  chosenSeaWinds,
+  type ChosenGround,
+  type ChosenSeaWind,
+} from './chosen-passage.ts';
 import { PEAK_FACTOR, type Exposure } from './exposure.ts';
 import { DRAG_WINDS, EIGHTH_TURN, PER_SEA_FACTOR, PRESSURE_TERM, PRESSURE_TERM_RANGE } from './tables.ts';
 
@@ -43,8 +51,11 @@ export type Passage = {
   readonly centres: Float64Array;
   /** Squared chords beyond which an outer time is quiet, shape (quiet winds, outer times) row-major. */
   readonly quietChords: Float64Array;
-  /** The chosen relations; null under the default field. */
-  readonly chosen: ChosenField | null;
+  /** Chosen relations of the open-sea wind and of the ground; null under the default ones. */
+  readonly chosenSea: ChosenSeaWind | null;
+  readonly chosenGround: ChosenGround | null;
+  /** Cosine and sine of the 24 starting phases, one after the other, shape (24, 2); null where they are evenly spread. */
+  readonly ownPhases: Float64Array | null;
 };
 
 /** A place as a unit vector. */
@@ -88,8 +99,15 @@ export function makePassage(storm: Storm): Passage {
     wanted: new Int32Array(n),
     centres,
     quietChords,
-    chosen: chosenFieldOf(storm),
+    chosenSea: chosenSeaWindOf(storm),
+    chosenGround: chosenGroundOf(storm),
+    ownPhases: ownPhasesOf(storm.phases),
   };
+}
+
+function ownPhasesOf(phases: readonly number[]): Float64Array | null {
+  if (phases.every((phase, j) => phase === startingPhase(j))) return null;
+  return Float64Array.from(phases.flatMap((phase) => [Math.cos(phase), Math.sin(phase)]));
 }
 
 /**
@@ -118,7 +136,8 @@ export function followPassage(
   floor = 0,
 ): number {
   const place = unitPlace(latitude, longitude);
-  const factor = passage.chosen === null ? greatestFactor(exposure) : passage.chosen.greatestFactor(exposure);
+  const { chosenGround } = passage;
+  const factor = chosenGround === null ? greatestFactor(exposure) : chosenGreatestFactor(chosenGround, exposure);
   const quiet = Math.min(Math.floor(floor / factor) - FIRST_QUIET_WIND, QUIET_WIND_COUNT - 1);
   const count = layTimes(storm, place, quiet, passage);
   const { wanted } = passage;
@@ -227,14 +246,13 @@ export function windsAt(
   from: number,
   to: number,
 ): void {
-  if (passage.chosen !== null) {
-    evaluateChosen(storm, passage.chosen, place, exposure, passage, from, to);
-    return;
-  }
   const { states, wavenumber } = storm;
+  const { chosenSea, chosenGround } = passage;
   locate(states, place, passage, from, to);
-  seaWinds(states, passage, from, to);
-  gustsOver(exposure, passage, from, to);
+  if (chosenSea === null) seaWinds(states, passage, from, to);
+  else chosenSeaWinds(chosenSea, passage, from, to);
+  if (chosenGround === null) gustsOver(exposure, passage, from, to);
+  else chosenGusts(chosenGround, states, exposure, passage, from, to);
   crests(states, wavenumber ?? 0, passage, from, to);
 }
 

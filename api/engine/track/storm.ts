@@ -3,6 +3,7 @@ import { unitVector } from '../geo/geodesy.ts';
 import type { LandIndex } from '../geo/land.ts';
 import { inlandFade } from '../ring/amplitude.ts';
 import { VORTEX_REACH } from '../ring/draws.ts';
+import type { ObservedVortices } from '../ring/observed-vortices.ts';
 import { radians } from '../units.ts';
 import { motionWind } from '../winds/asymmetry.ts';
 import { coriolis, hemisphereSign } from '../winds/coriolis.ts';
@@ -11,11 +12,13 @@ import { impliedMaxWind, surfaceShare } from '../winds/implied-wind.ts';
 import { seaWindOf } from '../winds/sea-wind.ts';
 import { hollandGradientWind } from '../winds/holland-1980.ts';
 import { fitVortex, strongestWind } from '../winds/vortex-fit.ts';
+import type { Conditioned } from './conditioning.ts';
 import type { EngineNotice, ResolvedFix, TrackFix } from './fixes.ts';
 import { motionAt } from './motion.ts';
-import { oneMinuteOverTen, usesDefaultField, type ChainOptions } from './options.ts';
+import { oneMinuteOverTen, usesDefaultSeaWind, type ChainOptions } from './options.ts';
 import { pressureTendencies } from './intensity.ts';
 import { outerWindAt } from './outer-wind.ts';
+import { patternAngleAt, patternAngles } from './pattern-angle.ts';
 import { legAt, positionAt } from './position.ts';
 import { writeQuietDistances, writeQuietDistancesBelow } from './quiet-distance.ts';
 import { resolveFixes, type TrackResolution } from './resolution.ts';
@@ -75,12 +78,16 @@ export type Storm = {
   readonly notices: readonly EngineNotice[];
   /** Number of vortices on the ring, null when the layer is off. */
   readonly wavenumber: number | null;
+  /** Starting phase of each of the draws' 24 patterns [rad]: evenly spread unless the storm is conditioned. */
+  readonly phases: readonly number[];
+  /** What was observed of the vortices; null where nothing was, or it has no effect. */
+  readonly conditioned: Conditioned | null;
   readonly stateCount: number;
   /** States at all outer and inner times, in order of time, shape (stateCount, STATE_SIZE) row-major. */
   readonly states: Float64Array;
   /** Indices of the outer times among the states, shape (outer times,). */
   readonly outer: Int32Array;
-  /** What a chosen wind field needs beyond `states`, one entry per state; null under the default field. */
+  /** What a chosen open-sea wind needs beyond `states`, one entry per state; null under the default one. */
   readonly field: readonly FieldState[] | null;
 };
 
@@ -95,13 +102,19 @@ const LEAST_NEAR_RADIUS = 60_000;
  * @param fixes   At least two fixes at strictly increasing times.
  * @param options Choices of the chain.
  * @param land    Land polygons for the hours inland, null when there are none to ask.
+ * @param observations What radar or satellite showed of the vortices, at times within the track.
  * @returns The storm.
- * @throws {DomainError} when the track or an option is outside its range, or the track has too many steps.
+ * @throws {DomainError} when the track, an option or an observation is outside its range, or the track has too many steps.
  * @source Order of this chain.
  */
-export function prepareStorm(fixes: readonly TrackFix[], options: ChainOptions, land: LandIndex | null): Storm {
-  const resolution = resolveFixes(fixes, options, land);
-  const { fixes: resolved, wavenumber } = resolution;
+export function prepareStorm(
+  fixes: readonly TrackFix[],
+  options: ChainOptions,
+  land: LandIndex | null,
+  observations: readonly ObservedVortices[] = [],
+): Storm {
+  const resolution = resolveFixes(fixes, options, land, observations);
+  const { fixes: resolved, wavenumber, phases, conditioned, notices } = resolution;
   const isFast = resolved.some(({ patternRadPerS }) => (wavenumber ?? 0) * (patternRadPerS ?? 0) > FAST_PATTERN);
   const grid = timeGrid(
     resolved[0]!.timeS,
@@ -118,8 +131,8 @@ export function prepareStorm(fixes: readonly TrackFix[], options: ChainOptions, 
     const timeS = grid.timeS[k]!;
     field.push(writeState(states, k * STATE_SIZE, resolution, timeS, angles, tendencies, options));
   }
-  const storm = { fixes: resolved, options, notices: resolution.notices, wavenumber, stateCount, states };
-  if (usesDefaultField(options)) {
+  const storm = { fixes: resolved, options, notices, wavenumber, phases, conditioned, stateCount, states };
+  if (usesDefaultSeaWind(options)) {
     for (const k of grid.outer) writeQuiet(states, k * STATE_SIZE);
     return { ...storm, outer: grid.outer, field: null };
   }
@@ -173,7 +186,7 @@ function writeState(
   const nearAngle = Math.min(Math.max(VORTEX_REACH * rMax, LEAST_NEAR_RADIUS) / EARTH_RADIUS, Math.PI);
   const vortexMax = mix(a.axisymmetricMaxWindMs, b.axisymmetricMaxWindMs);
   const amplitude = wavenumber === null ? 0 : mix(a.amplitude, b.amplitude) * inlandFade(hoursInland(timeS));
-  const patternAngle = wavenumber === null ? 0 : patternAngleAt(fixes, angles, i, timeS);
+  const patternAngle = wavenumber === null ? 0 : patternAngleAt(fixes, angles, timeS);
   const turned = (wavenumber ?? 0) * patternAngle;
   states[at + STATE.x] = x;
   states[at + STATE.y] = y;
@@ -257,24 +270,4 @@ export function fieldAt({ field, states, options }: Storm, k: number): FieldStat
     },
     options,
   );
-}
-
-/** Angle turned by the pattern up to each fix [rad]: the exact integral of a rate that is linear between fixes. */
-function patternAngles(fixes: readonly ResolvedFix[]): number[] {
-  const angles = [0];
-  for (let i = 0; i + 1 < fixes.length; i++) {
-    const a = fixes[i]!;
-    const b = fixes[i + 1]!;
-    const mean = ((a.patternRadPerS ?? 0) + (b.patternRadPerS ?? 0)) / 2;
-    angles.push(angles[i]! + mean * (b.timeS - a.timeS));
-  }
-  return angles;
-}
-
-function patternAngleAt(fixes: readonly ResolvedFix[], angles: readonly number[], i: number, timeS: number): number {
-  const from = fixes[i]!.patternRadPerS ?? 0;
-  const to = fixes[i + 1]!.patternRadPerS ?? 0;
-  const passed = timeS - fixes[i]!.timeS;
-  const now = from + ((to - from) * passed) / (fixes[i + 1]!.timeS - fixes[i]!.timeS);
-  return angles[i]! + 0.5 * (from + now) * passed;
 }

@@ -31,6 +31,7 @@ export type LayerFix = {
  * @param fixes Settled fixes; winds [m s⁻¹], radius [m], hours [h].
  * @param on    False leaves every amplitude 0 and the wavenumber null.
  * @param averaging Which factor leads from the 1-min to the 10-min wind.
+ * @param observed Number of vortices seen; null = the ring's own.
  * @returns One entry per fix; the wavenumber is null when no ring grows, and then every pattern is null.
  * @source Smooth-ring growth (Schubert et al. 1999 with smooth shoulders) and the amplitude law of ring/amplitude.ts.
  */
@@ -38,6 +39,7 @@ export function layVortices(
   fixes: readonly LayerInput[],
   on: boolean,
   averaging: WindOptions['averaging'] = DEFAULT_WIND_OPTIONS.averaging,
+  observed: number | null = null,
 ): { fixes: LayerFix[]; wavenumber: number | null } {
   const solved = new Map<string, RingMode[]>();
   const modesOf = ({ ringWidth, eyeRatio }: LayerInput): RingMode[] => {
@@ -48,7 +50,8 @@ export function layVortices(
     return modes;
   };
   const modes = on ? fixes.map(modesOf) : [];
-  const wavenumber = on ? stormWavenumber(fixes, modes) : null;
+  const own = on ? stormWavenumber(fixes, modes) : null;
+  const wavenumber = own === null ? null : (observed ?? own);
   return {
     wavenumber,
     fixes: fixes.map((fix, i) => {
