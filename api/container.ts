@@ -54,6 +54,8 @@ import { WindFieldService } from './features/studies/wind-field-service.ts';
 import { BreakdownService } from './features/rings/breakdown-service.ts';
 import { ringRoutes } from './features/rings/ring-routes.ts';
 import { RingService } from './features/rings/ring-service.ts';
+import { DrawService } from './features/results/draw-service.ts';
+import { DrawStore } from './features/results/draw-store.ts';
 import { resultRoutes } from './features/results/result-routes.ts';
 import { ResultService } from './features/results/result-service.ts';
 import { ResultStore } from './features/results/result-store.ts';
@@ -234,7 +236,9 @@ export const createContainer = (
   const runParts = { ...runBase, closing: new RunClosing(runBase) };
   const runServices = { quotes: new QuoteService(runParts), runs: new RunService(runParts) };
   const scoreJob = new ScoreJob(runParts);
-  const resultService = new ResultService({ ...runBase, tracks: new RunReader(runBase) });
+  const resultBase = { ...runBase, tracks: new RunReader(runBase), draws: new DrawStore() };
+  const resultService = new ResultService(resultBase);
+  const drawService = new DrawService({ ...resultBase, gate: new StudyGate(2, 20, 3) });
 
   // Studies
   const curveStore = new CurveStore();
@@ -263,7 +267,7 @@ export const createContainer = (
     calibrationRoutes(calibrations),
     billingRoutes(billing),
     runRoutes(runServices),
-    resultRoutes(resultService),
+    resultRoutes(resultService, drawService, limitCompute(limits)),
     studyRoutes(studies, limitCompute(limits)),
     ringRoutes(rings, limitCompute(limits)),
     evaluationRoutes(new EvaluationService(landIndex, engineVersion), limitCompute(limits)),

@@ -6,6 +6,8 @@ import type { FootprintGrid } from '#engine/footprint/grid.ts';
 export const GUST_LEVELS: readonly number[] = Array.from({ length: 14 }, (_, k) => 20 + 5 * k);
 /** Lower edges of the difference bands [m/s]: eleven steps of 1 m/s, symmetric about the one from -0.5 to 0.5. */
 export const DIFFERENCE_LEVELS: readonly number[] = Array.from({ length: 11 }, (_, k) => -5.5 + k);
+/** Lower edges of the bands of a chance, in parts of one. */
+export const CHANCE_LEVELS: readonly number[] = [0.05, 0.1, 0.25, 0.5, 0.75, 0.9, 0.95];
 
 /** Below every level, yet finite, so that contours of different levels never share a point where the field breaks off. */
 const NOTHING = -1e9;

@@ -1,5 +1,6 @@
 import { DomainError } from '#engine/errors.ts';
 import { drawPeaks, makeDrawWork } from '#engine/footprint/draws-of-site.ts';
+import { chanceOf } from '#engine/footprint/draw-fields.ts';
 import { footprintGrid } from '#engine/footprint/grid.ts';
 import { followPassage, makePassage } from '#engine/footprint/passage.ts';
 import { scoreSites, type SiteBatch } from '#engine/footprint/site-peaks.ts';
@@ -7,16 +8,19 @@ import { gustLadder, siteSeries, staysInEye } from '#engine/footprint/site-serie
 import { siteExposure, type Site } from '#engine/footprint/wind-at.ts';
 import { greatCircleDistance, initialBearing } from '#engine/geo/geodesy.ts';
 import { fetchBySector } from '#engine/geo/land.ts';
-import { DRAW_COUNT, DRAW_WEIGHT_TOTAL, DRAW_WEIGHT_UNITS } from '#engine/ring/draws.ts';
+import { DRAW_COUNT } from '#engine/ring/draws.ts';
 import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
 import { prepareStorm, STATE, STATE_SIZE, type Storm } from '#engine/track/storm.ts';
 import { radians } from '#engine/units.ts';
 import { footprintBands } from './bands.ts';
 import { breakdownFrames } from './breakdown.ts';
+import * as draws from './draws.ts';
 import { landIndex } from './land.ts';
 import type {
   Answer,
   BreakdownTask,
+  DrawBandsTask,
+  DrawSitesTask,
   ExplainTask,
   OverlandTask,
   FootprintTask,
@@ -85,6 +89,22 @@ export const footprint = ({ storm: prepared, focus, stop }: FootprintTask): Answ
     const grid = footprintGrid(prepared, landIndex(), { focus }, { shouldStop: () => isStopped(stop) });
     if (isStopped(stop)) return STOPPED;
     return { reply: grid && { grid, bands: footprintBands(grid) } };
+  });
+
+export const drawBands = ({ fixes, options, net, view, stop }: DrawBandsTask): Answer<Tasks['drawBands']['reply']> =>
+  answer(() => {
+    if (isStopped(stop)) return STOPPED;
+    const prepared = prepareStorm(fixes, options, landIndex());
+    const bands = draws.drawBands(prepared, landIndex(), net, view, { shouldStop: () => isStopped(stop) });
+    return isStopped(stop) ? STOPPED : { reply: bands };
+  });
+
+export const drawSites = ({ storm: prepared, sites, draw, stop }: DrawSitesTask): Answer<Tasks['drawSites']['reply']> =>
+  answer(() => {
+    if (isStopped(stop)) return STOPPED;
+    fillFetch(sites);
+    const reply = draws.sitesInDraw(prepared, sites, draw, { shouldStop: () => isStopped(stop) });
+    return isStopped(stop) ? STOPPED : { reply };
   });
 
 const fetchOf = ({
@@ -174,11 +194,7 @@ const chancesOf = (prepared: Storm, site: Site, gustsMs: readonly number[]): num
   for (let i = 1; i < times; i++) if (passage.gust[i]! > passage.gust[peak]!) peak = i;
   const peaks = new Float64Array(DRAW_COUNT);
   drawPeaks(passage, times, peak, makeDrawWork(prepared.stateCount), peaks);
-  return gustsMs.map((gust) => {
-    let weight = 0;
-    for (let d = 0; d < DRAW_COUNT; d++) if (peaks[d]! >= gust) weight += DRAW_WEIGHT_UNITS[d]!;
-    return weight / DRAW_WEIGHT_TOTAL;
-  });
+  return gustsMs.map((gust) => chanceOf(peaks, gust));
 };
 
 /** Loads the land polygons before the first task needs them. */

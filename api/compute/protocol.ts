@@ -3,7 +3,8 @@ import type { GustLadder, SiteSeries } from '#engine/footprint/site-series.ts';
 import type { SiteBatch, SiteScores } from '#engine/footprint/site-peaks.ts';
 import type { Site } from '#engine/footprint/wind-at.ts';
 import type { Area } from '#engine/footprint/strong-wind-area.ts';
-import type { FootprintGrid } from '#engine/footprint/grid.ts';
+import type { DrawView } from '#engine/footprint/draw-fields.ts';
+import type { FootprintGrid, Net } from '#engine/footprint/grid.ts';
 import type { DamageCurve } from '#engine/loss/damage-curve.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import type { Storm } from '#engine/track/storm.ts';
@@ -40,6 +41,19 @@ export type FootprintTask = {
   readonly stop: StopFlag;
 };
 export type FootprintReply = { readonly grid: FootprintGrid; readonly bands: Record<BandView, Bands> };
+
+export type DrawBandsTask = StormTask & { readonly net: Net; readonly view: DrawView; readonly stop: StopFlag };
+
+export type DrawSitesTask = {
+  readonly storm: Storm;
+  /** NaN as the first of a site's eight fetches asks for the land polygons. */
+  readonly sites: SiteBatch;
+  /** 0..263. */
+  readonly draw: number;
+  readonly stop: StopFlag;
+};
+/** Sites, as indices into the batch, where the draw changes the gust, and what it makes of it [m s⁻¹]. */
+export type DrawSitesReply = { readonly site: Int32Array; readonly gustMs: Float64Array };
 
 export type ExplainTask = StormTask & {
   /** Without overland distances they come from the land polygons. */
@@ -88,6 +102,8 @@ export type Tasks = {
   overland: { task: OverlandTask; reply: Float64Array };
   score: { task: ScoreTask; reply: SiteScores };
   footprint: { task: FootprintTask; reply: FootprintReply | null };
+  drawBands: { task: DrawBandsTask; reply: Bands };
+  drawSites: { task: DrawSitesTask; reply: DrawSitesReply };
   explain: { task: ExplainTask; reply: ExplainReply };
   spread: { task: SpreadTask; reply: SpreadReply };
   windField: { task: WindFieldTask; reply: WindField };

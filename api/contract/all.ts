@@ -1,4 +1,5 @@
 import * as billing from './billing.ts';
+import * as draws from './draws.ts';
 import type { Endpoint } from './endpoint.ts';
 import * as evaluations from './evaluations.ts';
 import * as models from './models.ts';
@@ -26,6 +27,7 @@ export const ALL_ENDPOINTS: readonly Endpoint[] = [
   scenarios,
   models,
   runs,
+  draws,
   evaluations,
   studies,
   variants,

@@ -310,13 +310,42 @@ export const ResultPoints = z.object({
 });
 export type ResultPoints = z.infer<typeof ResultPoints>;
 
-export const FootprintView = z.enum(['plain', 'p50', 'p90', 'difference']);
+/** Stored with the run; the others are worked out from its inputs when they are asked for. */
+export const StoredView = z.enum(['plain', 'p50', 'p90', 'difference']);
+export type StoredView = z.infer<typeof StoredView>;
+export const FootprintView = z.enum([...StoredView.options, 'p99', 'draw', 'chance']);
 export type FootprintView = z.infer<typeof FootprintView>;
-/** Filled bands: `level` is the lower edge in m/s (gust) or the lower edge of the difference step. */
+
+/** Number of a draw: strength node by strength node, 24 starting phases each. */
+export const DrawNumber = z.int().min(1).max(264);
+
+export const FootprintQuery = z
+  .object({
+    view: FootprintView.default('p50'),
+    /** Which draw, for view=draw. */
+    draw: z.coerce.number().pipe(DrawNumber).optional(),
+    /** Which gust [m/s], for view=chance. */
+    gustMs: z.coerce.number().min(20).max(85).optional(),
+  })
+  .superRefine(({ view, draw, gustMs }, context) => {
+    if (view === 'draw' && draw === undefined)
+      context.addIssue({ code: 'custom', path: ['draw'], message: 'Say which draw: 1 to 264.' });
+    if (view === 'chance' && gustMs === undefined)
+      context.addIssue({ code: 'custom', path: ['gustMs'], message: 'Say which gust, 20 to 85 m/s.' });
+  });
+export type FootprintQuery = z.output<typeof FootprintQuery>;
+
+/** Filled bands: `level` is the lower edge in m/s (gust), of the difference step, or of the chance (0–1). */
 export const Footprint = z.object({
   view: FootprintView,
+  draw: DrawNumber.nullable(),
+  gustMs: z.number().nullable(),
   levels: z.array(z.number()),
   bbox: z.tuple([z.number(), z.number(), z.number(), z.number()]),
+  /** The rectangle that was worked out; null when there is nothing in it. Partial: the wind may go on beyond it. */
+  computed: z
+    .object({ bounds: z.tuple([z.number(), z.number(), z.number(), z.number()]), isPartial: z.boolean() })
+    .nullable(),
   bands: z.object({
     type: z.literal('FeatureCollection'),
     features: z.array(
@@ -517,7 +546,7 @@ export const getFootprint = endpoint({
   summary: 'Footprint as filled bands',
   access: READERS,
   params: ScenarioParams,
-  query: z.object({ view: FootprintView.default('p50') }),
+  query: FootprintQuery,
   response: Footprint,
   status: 200,
 });

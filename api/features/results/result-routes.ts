@@ -1,12 +1,18 @@
-import { Router } from 'express';
-import { exportSites, getFootprint, getResultPoints, getSiteDetail, listSites } from '#contract/runs.ts';
+import { Router, type RequestHandler } from 'express';
+import { getDrawSites, listDraws } from '#contract/draws.ts';
+import { exportSites, getFootprint, getResultPoints, getSiteDetail, listSites, StoredView } from '#contract/runs.ts';
 import { handle, handleStream } from '../../http/handle.ts';
+import { whileListening } from '../../http/while-listening.ts';
+import type { DrawService } from './draw-service.ts';
 import type { ResultService } from './result-service.ts';
 import { writeSites } from './site-export.ts';
 
 /** Results of finished tracks: table, map, one site, file. */
-export const resultRoutes = (results: ResultService): Router => {
+export const resultRoutes = (results: ResultService, draws: DrawService, limit: RequestHandler): Router => {
   const router = Router();
+  // What is stored costs nothing to read again.
+  const limitComputed: RequestHandler = (req, res, next) =>
+    StoredView.safeParse(req.query.view ?? 'p50').success ? next() : limit(req, res, next);
   router.get(
     listSites.path,
     handle(listSites, ({ actor, params, query }) => results.sites(actor, params, query)),
@@ -33,7 +39,22 @@ export const resultRoutes = (results: ResultService): Router => {
   );
   router.get(
     getFootprint.path,
-    handle(getFootprint, ({ actor, params, query }) => results.footprint(actor, params, query.view)),
+    limitComputed,
+    handle(getFootprint, ({ actor, params, query, res }) => {
+      const stored = StoredView.safeParse(query.view);
+      return stored.success
+        ? results.footprint(actor, params, stored.data)
+        : draws.footprint(actor, params, query, whileListening(res));
+    }),
+  );
+  router.get(
+    listDraws.path,
+    handle(listDraws, ({ actor, params }) => draws.list(actor, params)),
+  );
+  router.get(
+    getDrawSites.path,
+    limit,
+    handle(getDrawSites, ({ actor, params, res }) => draws.sites(actor, params, params.draw, whileListening(res))),
   );
   return router;
 };

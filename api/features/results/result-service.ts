@@ -1,4 +1,4 @@
-import type { Footprint, FootprintView, ResultPoints, SiteDetail, SitesPage, SitesQuery } from '#contract/runs.ts';
+import type { Footprint, ResultPoints, SiteDetail, SitesPage, SitesQuery, StoredView } from '#contract/runs.ts';
 import type { Notice } from '#contract/common.ts';
 import { Terrain, TERRAIN_ROUGHNESS_M } from '#contract/portfolios.ts';
 import type { z } from 'zod';
@@ -9,6 +9,8 @@ import type { EnginePool } from '../../compute/pool.ts';
 import type { ExplainReply } from '../../compute/protocol.ts';
 import { AppError, notFound } from '../../errors.ts';
 import type { Transact, Tx } from '../../transact.ts';
+import type { DrawStore } from './draw-store.ts';
+import { footprintReply, requireSameEngine } from './footprint-view.ts';
 import { ladderOf } from './gust-reasons.ts';
 import type { Place, ResultStore } from './result-store.ts';
 import { seriesAroundPeak, NO_SERIES } from './site-series-view.ts';
@@ -32,6 +34,8 @@ export interface FinishedTrack extends Place {
   trackAgeHoursWhenRun: number | null;
   trackStaleWhenRun: boolean;
   path: readonly [number, number][];
+  /** Whether any draw changes anything at any site. */
+  hasVortexRange: boolean;
   notices: Notice[];
 }
 
@@ -54,6 +58,7 @@ export interface MeasuredFetches {
 export interface ResultParts {
   transact: Transact;
   results: ResultStore;
+  draws: DrawStore;
   tracks: FinishedTracks;
   fetches: MeasuredFetches;
   pool: EnginePool;
@@ -66,9 +71,6 @@ type Query = z.output<typeof SitesQuery>;
 
 /** Each holds a connection of the database while its reader takes its time. */
 const EXPORTS_AT_ONCE = 4;
-
-const GUST_DEFINITION =
-  'Peak 3-second gust at 10 m in m/s: over land in open country (roughness 0.03 m) with its own distance to the sea, over water at sea. Sites are scored with their own terrain, so a site and the field around it may differ.';
 
 /** Answers questions about what a finished track left behind. */
 export class ResultService {
@@ -89,17 +91,12 @@ export class ResultService {
     return this.read(actor, at, (tx, track) => this.parts.results.points(tx, actor.orgId, track));
   }
 
-  footprint(actor: Actor, at: At, view: FootprintView): Promise<Footprint> {
+  footprint(actor: Actor, at: At, view: StoredView): Promise<Footprint> {
+    const { results, draws } = this.parts;
     return this.read(actor, at, async (tx, track) => {
-      const found = await this.parts.results.footprint(tx, actor.orgId, track.runScenarioId, view);
-      const { levels, bbox, bands } = found ?? {
-        levels: [],
-        bbox: boundsOf(track.path),
-        bands: { type: 'FeatureCollection', features: [] },
-      };
-      const definition =
-        view === 'difference' ? `Median with vortices less plain, m/s. ${GUST_DEFINITION}` : GUST_DEFINITION;
-      return { view, levels: [...levels], bbox, bands, definition, notices: track.notices } as Footprint;
+      const found = await results.footprint(tx, actor.orgId, track.runScenarioId, view);
+      const net = found && (await draws.net(tx, actor.orgId, track.runScenarioId));
+      return footprintReply(track, { view }, found, net);
     });
   }
 
@@ -111,12 +108,7 @@ export class ResultService {
       const measured = await fetches.read(tx, actor.orgId, found.editionId, siteNo, siteNo);
       return { track: found, site: record, fetchM: measured.get(siteNo) ?? null };
     });
-    if (track.engineVersion !== engineVersion()) {
-      throw new AppError(
-        'result_not_ready',
-        `Run ${track.runNumber} was computed with engine ${track.engineVersion}; this service now runs ${engineVersion()}. The stored result stays as it is, but its steps can’t be worked out again. Run it again to see them.`,
-      );
-    }
+    requireSameEngine(track, engineVersion());
     const common = { ...site, curve: track.curve, notices: track.notices };
     if (site.reach === 'out_of_reach') {
       return { ...common, ...NOTHING_TO_EXPLAIN, chanceAbove: [], series: NO_SERIES };
@@ -200,9 +192,3 @@ const explanation = (track: FinishedTrack, site: SiteRecord, explained: ExplainR
   series: seriesAroundPeak(explained.series),
   notices: explained.staysInEye ? [IN_EYE, ...track.notices] : track.notices,
 });
-
-const boundsOf = (path: readonly [number, number][]): [number, number, number, number] => {
-  const longitudes = path.map(([longitude]) => longitude);
-  const latitudes = path.map(([, latitude]) => latitude);
-  return [Math.min(...longitudes), Math.min(...latitudes), Math.max(...longitudes), Math.max(...latitudes)];
-};

@@ -207,7 +207,7 @@ export class ResultStore {
   }
 
   async save(tx: Tx, orgId: string, runScenarioId: string, results: TrackResults): Promise<void> {
-    const { storedAt, sites, groundUp, gross, footprint } = results;
+    const { storedAt, sites, groundUp, gross, peak, above, footprint } = results;
     await copyInto(
       tx,
       'site_results',
@@ -219,6 +219,8 @@ export class ResultStore {
       run_scenario_id: runScenarioId,
       ground_up: [...groundUp],
       gross: [...gross],
+      strongest: [...peak],
+      sites_above: [...above],
     });
     if (!footprint) return;
     const { plain, p50, p90, difference } = footprint.bands;

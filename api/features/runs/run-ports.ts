@@ -81,6 +81,9 @@ export interface TrackResults {
   sites: Iterable<ScoredSite>;
   groundUp: Float64Array;
   gross: Float64Array;
+  /** Strongest gust at any site, per draw [m/s], and sites that reach each chosen gust, gust by gust. */
+  peak: Float64Array;
+  above: Float64Array;
   footprint: StoredFootprint | null;
 }
 

@@ -31,6 +31,8 @@ export interface FinishedTrack {
   trackAgeHoursWhenRun: number | null;
   trackStaleWhenRun: boolean;
   path: readonly [number, number][];
+  /** Whether any draw changes anything at any site. */
+  hasVortexRange: boolean;
   notices: Notice[];
 }
 
@@ -68,6 +70,7 @@ export class RunReader {
       trackAgeHoursWhenRun: track!.asOf === null ? null : trackAgeHours(track!.asOf, run.acceptedAt),
       trackStaleWhenRun: staleness(track!.asOf, run.acceptedAt, staleAfterHours) !== null,
       path: track!.path,
+      hasVortexRange: scenario.result !== null && scenario.result.gross !== null,
       notices: runNotices(run, staleAfterHours, [track!]),
     };
   }

@@ -216,8 +216,8 @@ export class ScoreJob {
       at: storedAt,
     });
     if (!isOurs) return;
-    const { groundUp, gross } = scored;
-    await results.save(tx, orgId, runScenarioId, { storedAt, sites: scored, groundUp, gross, footprint });
+    const { groundUp, gross, peak, above } = scored;
+    await results.save(tx, orgId, runScenarioId, { storedAt, sites: scored, groundUp, gross, peak, above, footprint });
     await closing.closeIfDone(tx, orgId, runId);
     await runs.announce(tx, runId);
   }

@@ -1,7 +1,7 @@
 import type { MultiPolygon } from 'geojson';
 import { longitudeNear, type Bounds, type LonLat } from './geography.ts';
 
-export type MapView = 'plain' | 'p50' | 'p90' | 'difference';
+export type MapView = 'plain' | 'p50' | 'p90' | 'p99' | 'difference' | 'draw' | 'chance';
 export type SiteState = 'ready' | 'notes' | 'held' | 'set_aside';
 
 /** Sites in columns, as they travel. */

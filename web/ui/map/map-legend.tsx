@@ -11,7 +11,10 @@ const TITLES: Record<MapView, string> = {
   plain: 'Peak 3-second gust, plain',
   p50: 'Peak 3-second gust, enhanced median',
   p90: 'Peak 3-second gust, enhanced 90 %',
+  p99: 'Peak 3-second gust, enhanced 99 %',
   difference: 'Enhanced median less plain',
+  draw: 'Peak 3-second gust, one draw',
+  chance: 'Chance over the draws',
 };
 
 interface MapLegendProps {

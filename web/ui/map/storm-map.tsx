@@ -19,7 +19,10 @@ const VIEW_LABELS: Record<MapView, string> = {
   plain: 'Plain',
   p50: 'Enhanced',
   p90: '90 %',
+  p99: '99 %',
   difference: 'Difference',
+  draw: 'One draw',
+  chance: 'Chance',
 };
 
 interface StormMapProps {
