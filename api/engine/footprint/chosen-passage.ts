@@ -1,101 +1,110 @@
-import { EARTH_RADIUS } from '../constants.ts';
-import { radialShape, VORTEX_REACH } from '../ring/draws.ts';
+import { usesDefaultGround } from '../track/options.ts';
 import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
-import { makeSeaWindSteps, type FieldState, type SeaWind, type SeaWindSteps } from '../winds/field-state.ts';
+import { makeSeaWindSteps, type FieldState, type SeaWind } from '../winds/field-state.ts';
 import { seaWindOf } from '../winds/sea-wind.ts';
 import type { Exposure } from './exposure.ts';
-import { groundOf, makeGroundSteps, type Ground, type GroundSteps } from './ground.ts';
-import type { Passage, UnitPlace } from './passage.ts';
+import { groundOf, makeGroundSteps, type Ground } from './ground.ts';
+import type { Passage } from './passage.ts';
 
-/** The chosen relations of a storm, ready to be followed over sites. */
-export type ChosenField = {
-  readonly field: readonly FieldState[];
-  readonly seaWind: SeaWind;
-  readonly ground: Ground;
-  /** Gust over open-sea wind that is not exceeded while that wind is in 2..21 m/s [1]. */
-  readonly greatestFactor: (exposure: Exposure) => number;
-  readonly sea: SeaWindSteps;
-  readonly land: GroundSteps;
+/** The open-sea wind by chosen relations. */
+export type ChosenSeaWind = SeaWind & { readonly field: readonly FieldState[] };
+
+/** The ground by chosen relations. */
+export type ChosenGround = Ground & {
+  /** Least and greatest Coriolis parameter of the storm [s⁻¹]. */
+  readonly turning: readonly [number, number];
 };
 
 /**
- * Puts the chosen relations of a storm together.
+ * The chosen open-sea wind of a storm.
  *
  * @param storm The storm.
- * @returns The relations and their working space; null under the default field, which has a kernel of its own.
+ * @returns The wind; null under the default relations, which have a kernel of their own.
  * @source Arrangement only.
  */
-export function chosenFieldOf({ field, options }: Storm): ChosenField | null {
-  if (field === null) return null;
-  const ground = groundOf(options);
-  const f = field.map((state) => state.f);
-  const ends = [f.reduce((a, b) => Math.min(a, b)), f.reduce((a, b) => Math.max(a, b))];
-  return {
-    field,
-    seaWind: seaWindOf(options),
-    ground,
-    greatestFactor: (exposure) => Math.max(...ends.map((end) => ground.greatestFactor(exposure, end))),
-    sea: makeSeaWindSteps(),
-    land: makeGroundSteps(),
-  };
+export function chosenSeaWindOf({ field, options }: Storm): ChosenSeaWind | null {
+  return field === null ? null : { ...seaWindOf(options), field };
 }
 
 /**
- * Winds and gusts at one site at some of the times of a passage, under a chosen wind field.
+ * The chosen ground of a storm.
  *
- * @param storm    The storm.
- * @param chosen   Its relations.
- * @param place    The site.
+ * @param storm The storm.
+ * @returns The ground; null under the default relations, which have a kernel of their own.
+ * @source Arrangement only.
+ */
+export function chosenGroundOf({ states, outer, options }: Storm): ChosenGround | null {
+  if (usesDefaultGround(options)) return null;
+  const turning: [number, number] = [Infinity, 0];
+  for (const k of outer) {
+    const f = 2 * states[k * STATE_SIZE + STATE.halfF]!;
+    turning[0] = Math.min(turning[0], f);
+    turning[1] = Math.max(turning[1], f);
+  }
+  return { ...groundOf(options), turning };
+}
+
+/**
+ * Bound of gust over open-sea wind at a site under chosen ground, while that wind is in 2..21 m/s.
+ *
+ * @param ground   The ground.
  * @param exposure Ground around the site.
- * @param passage  Holds the states and which of them are wanted; receives the series there.
+ * @returns Factor [1].
+ * @source Greatest of the bounds at both ends of the Coriolis parameter, in which it is monotonous.
+ */
+export function chosenGreatestFactor({ greatestFactor, turning }: ChosenGround, exposure: Exposure): number {
+  return Math.max(greatestFactor(exposure, turning[0]), greatestFactor(exposure, turning[1]));
+}
+
+/**
+ * Wind over open sea at some of the times of a passage, by chosen relations.
+ *
+ * @param chosen  The relations.
+ * @param passage Holds the states, which of them are wanted, and where the site lies; receives the wind there.
+ * @param from    First of the wanted times to compute.
+ * @param to      One beyond the last of them.
+ * @source winds/sea-wind.ts.
+ */
+export function chosenSeaWinds({ field, write }: ChosenSeaWind, passage: Passage, from: number, to: number): void {
+  const { state, wanted, distance, sinBearing, cosBearing, seaU, seaV } = passage;
+  const out = makeSeaWindSteps();
+  for (let n = from; n < to; n++) {
+    const i = wanted[n]!;
+    write(field[state[i]!]!, distance[i]!, sinBearing[i]!, cosBearing[i]!, out);
+    seaU[i] = out.eastward;
+    seaV[i] = out.northward;
+  }
+}
+
+/**
+ * Gust and its factors at some of the times of a passage, by chosen relations.
+ *
+ * @param chosen   The relations.
+ * @param states   States of the storm.
+ * @param exposure Ground around the site.
+ * @param passage  Holds the wind over open sea; receives the gust.
  * @param from     First of the wanted times to compute.
  * @param to       One beyond the last of them.
- * @source The formulas of footprint/wind-at.ts, directions and distances from differences of unit vectors.
+ * @source footprint/ground.ts.
  */
-export function evaluateChosen(
-  { states, wavenumber }: Storm,
-  { field, seaWind, ground, sea, land }: ChosenField,
-  place: UnitPlace,
+export function chosenGusts(
+  { write }: ChosenGround,
+  states: Float64Array,
   exposure: Exposure,
   passage: Passage,
   from: number,
   to: number,
 ): void {
+  const { state, wanted, seaU, seaV, gust, factor, meanFactor } = passage;
+  const out = makeGroundSteps();
   for (let n = from; n < to; n++) {
-    const i = passage.wanted[n]!;
-    const k = passage.state[i]!;
-    const at = k * STATE_SIZE;
-    const state = field[k]!;
-    const dx = place.x - states[at + STATE.x]!;
-    const dy = place.y - states[at + STATE.y]!;
-    const dz = place.z - states[at + STATE.z]!;
-    const east = dx * states[at + STATE.eastX]! + dy * states[at + STATE.eastY]!;
-    const north = dx * states[at + STATE.northX]! + dy * states[at + STATE.northY]! + dz * states[at + STATE.northZ]!;
-    const chord = Math.sqrt(dx * dx + dy * dy + dz * dz);
-    const r = Math.max(2 * EARTH_RADIUS * Math.asin(Math.min(chord / 2, 1)), 1);
-    const tangent = Math.sqrt(east * east + north * north);
-    // At the very centre, and at its antipode, the bearing is taken as north.
-    const sinBearing = tangent > 0 ? east / tangent : 0;
-    const cosBearing = tangent > 0 ? north / tangent : 1;
-    seaWind.write(state, r, sinBearing, cosBearing, sea);
-    ground.write(exposure, sea.eastward, sea.northward, state.f, land);
-    const { eastward, northward } = sea;
-    const factor = land.terrainFactor * land.gustFactor * exposure.topographicFactor;
-    passage.gust[i] = Math.sqrt(eastward * eastward + northward * northward) * factor;
-    passage.seaU[i] = eastward;
-    passage.seaV[i] = northward;
-    passage.factor[i] = factor;
-    passage.meanFactor[i] = land.terrainFactor;
-    const vortexWind = states[at + STATE.vortexWind]!;
-    const x = r / state.rMax;
-    if (wavenumber === null || !(vortexWind > 0) || !(x < VORTEX_REACH)) {
-      passage.crest[i] = 0;
-      continue;
-    }
-    passage.crest[i] = factor * vortexWind * radialShape(x);
-    // Azimuth positive in the cyclonic sense: phi = sign (90 degrees - bearing); the pattern has turned by the same sense.
-    const phase = wavenumber * (Math.atan2(state.sign * cosBearing, sinBearing) - states[at + STATE.patternAngle]!);
-    passage.phaseCos[i] = Math.cos(phase);
-    passage.phaseSin[i] = Math.sin(phase);
+    const i = wanted[n]!;
+    const u = seaU[i]!;
+    const v = seaV[i]!;
+    write(exposure, u, v, 2 * states[state[i]! * STATE_SIZE + STATE.halfF]!, out);
+    const toGust = out.terrainFactor * out.gustFactor * exposure.topographicFactor;
+    gust[i] = Math.sqrt(u * u + v * v) * toGust;
+    factor[i] = toGust;
+    meanFactor[i] = out.terrainFactor;
   }
 }

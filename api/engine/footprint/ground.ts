@@ -1,9 +1,10 @@
+import { VON_KARMAN } from '../constants.ts';
 import { normalisedBearing } from '../geo/geodesy.ts';
-import { esduTurbulence, turbulenceIntensity } from '../gust/turbulence.ts';
+import { esduTurbulence } from '../gust/turbulence.ts';
 import { wmoGustFactor } from '../gust/wmo-gust-factor.ts';
 import { roughnessOfDrag, seaDrag } from '../terrain/drag.ts';
 import { sectorWeight } from '../terrain/fetch.ts';
-import { logLawRatio, roughnessFactor } from '../terrain/roughness.ts';
+import { logLawRatio, terrainFactor } from '../terrain/roughness.ts';
 import type { WindOptions } from '../track/options.ts';
 import { degrees } from '../units.ts';
 import { PEAK_FACTOR, type Exposure } from './exposure.ts';
@@ -31,7 +32,7 @@ export type Ground = {
   readonly greatestFactor: (exposure: Exposure, f: number) => number;
 };
 
-const SAMPLED_WINDS = [2, 5, 8, 11, 13, 15, 17, 19, 21];
+const SAMPLED_WINDS = [2, 11, 21];
 const SAMPLED_WEIGHTS = [0, 0.25, 0.5, 0.75, 1];
 const MARGIN = 1.02;
 /** Least wind [m s⁻¹] and least Coriolis parameter, that of half a degree [s⁻¹], with which turbulence is found. */
@@ -105,8 +106,10 @@ function actOf(options: WindOptions): Act {
     if (drag !== surface.drag) {
       surface.drag = drag;
       surface.roughness = roughnessOfDrag(drag);
-      surface.factor = roughnessFactor(surface.roughness);
-      surface.turbulence = turbulenceIntensity(surface.roughness);
+      // ln(10 / z0) of the sea, by which EN 1991-1-4 has both its mean wind and its turbulence.
+      const depth = VON_KARMAN / Math.sqrt(drag);
+      surface.factor = terrainFactor(surface.roughness) * depth;
+      surface.turbulence = 1 / depth;
     }
     const settled = isAtSea ? 1 : byLogLaws ? logLawRatio(roughnessM, surface.roughness) : landFactor / surface.factor;
     let overSea = surface.turbulence;

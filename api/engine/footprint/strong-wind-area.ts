@@ -1,5 +1,6 @@
 import { EARTH_RADIUS, GUST_FLOOR } from '../constants.ts';
 import { distanceToLandM, type LandIndex } from '../geo/land.ts';
+import { usesDefaultGround } from '../track/options.ts';
 import { fieldAt, STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
 import { degrees, radians } from '../units.ts';
 import { seaWindOf } from '../winds/sea-wind.ts';
@@ -118,7 +119,7 @@ export function floorCircles(storm: Storm): FloorCircle[] {
   const circles: FloorCircle[] = [];
   const times = timesLookedAt(storm);
   const { bound } = seaWindOf(storm.options);
-  const overMean = storm.field === null ? GUST_OVER_MEAN : greatestOverMean(storm);
+  const overMean = usesDefaultGround(storm.options) ? GUST_OVER_MEAN : greatestOverMean(storm);
   let lastLongitude: number | null = null;
   times.forEach((position, k) => {
     const at = storm.outer[position]! * STATE_SIZE;
@@ -156,7 +157,7 @@ export function floorCircles(storm: Storm): FloorCircle[] {
 /** The same factor for a chosen ground, at sea or over open country. */
 function greatestOverMean(storm: Storm): number {
   const { greatestFactor } = groundOf(storm.options);
-  const { f } = storm.field![0]!;
+  const f = 2 * storm.states[STATE.halfF]!;
   const nowhere = new Array<number>(8).fill(0);
   const over = (roughness: number) =>
     greatestFactor(exposureOf('the grid', roughness, nowhere, 0, 1, new Float64Array(8)), f);

@@ -79,7 +79,7 @@ export function windAt(storm: Storm, k: number, site: Site): WindSteps {
   const field = fieldAt(storm, k);
   const sea = makeSeaWindSteps();
   const bearing = radians(bearingDeg);
-  seaWindOf(storm.options).write(field, distanceM, Math.sin(bearing), Math.cos(bearing), sea);
+  seaWindOf(storm.options).explain(field, distanceM, Math.sin(bearing), Math.cos(bearing), sea);
   const seaWindMs = Math.hypot(sea.eastward, sea.northward);
   const ground = makeGroundSteps();
   groundOf(storm.options).write(exposure, sea.eastward, sea.northward, field.f, ground);

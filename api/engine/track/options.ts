@@ -1,5 +1,6 @@
 import { ONE_MINUTE_OVER_TEN } from '../constants.ts';
 import { DomainError } from '../errors.ts';
+import { AMPLITUDE_REGIMES, type AmplitudeRegime } from '../ring/regimes.ts';
 
 /** Published relations of the plain wind field, one choice each; the first value named is the default. */
 export type WindOptions = {
@@ -112,25 +113,44 @@ export function oneMinuteOverTen(averaging: WindOptions['averaging']): number {
   return averaging === 'at-sea-1.05' ? ONE_MINUTE_OVER_TEN : 1 / 0.93;
 }
 
-/** Choices that act while the track is resolved and leave the relations of the field itself as they are. */
-const OF_THE_TRACK: readonly (keyof WindOptions)[] = [
-  'radiusSource',
-  'radiusRelation',
-  'shapeRelation',
-  'windPressure',
-  'averaging',
-  'decay',
-];
+const OF_THE_SEA_WIND = [
+  'profile',
+  'asymmetry',
+  'inflow',
+  'surfaceFactor',
+  'shapeSource',
+  'outerWind',
+  'quadrants',
+] as const satisfies readonly (keyof WindOptions)[];
+const OF_THE_GROUND = [
+  'seaDrag',
+  'landReduction',
+  'fetch',
+  'turbulence',
+  'gustFactor',
+] as const satisfies readonly (keyof WindOptions)[];
 
 /**
- * Whether the wind field itself is the default one, for which there is a fast kernel.
+ * Whether the wind over open sea follows the default relations, for which there is a fast kernel. The choices that act
+ * while the track is resolved are not among them.
  *
  * @param options The choices.
- * @returns True when every choice that acts in the field is the default.
+ * @returns True when every choice that acts in the open-sea wind is the default.
  * @source Arrangement only.
  */
-export function usesDefaultField(options: WindOptions): boolean {
-  return WIND_CHOICE_NAMES.every((name) => OF_THE_TRACK.includes(name) || options[name] === DEFAULT_WIND_OPTIONS[name]);
+export function usesDefaultSeaWind(options: WindOptions): boolean {
+  return OF_THE_SEA_WIND.every((name) => options[name] === DEFAULT_WIND_OPTIONS[name]);
+}
+
+/**
+ * Whether the ground acts by the default relations.
+ *
+ * @param options The choices.
+ * @returns True when every choice that acts on the way from the open-sea wind to the gust is the default.
+ * @source Arrangement only.
+ */
+export function usesDefaultGround(options: WindOptions): boolean {
+  return OF_THE_GROUND.every((name) => options[name] === DEFAULT_WIND_OPTIONS[name]);
 }
 
 /** Choices of the chain that the person running it may make. */
@@ -140,6 +160,8 @@ export type ChainOptions = WindOptions & {
   /** Whether the maximum wind already holds vortex peaks: at wind fixes (auto), never (mean), always (peak). */
   readonly anchor: 'auto' | 'mean' | 'peak';
   readonly mesovortices: boolean;
+  /** Which strengths of the vortices are drawn from. */
+  readonly regime: AmplitudeRegime;
   /** Step of the outer time grid [s]. */
   readonly timeStepS: number;
   /** Step near the centre [s]; not smaller than the outer step = no refinement. */
@@ -152,6 +174,7 @@ export const DEFAULT_OPTIONS: ChainOptions = {
   intensity: 'pressure',
   anchor: 'auto',
   mesovortices: true,
+  regime: 'mixed',
   timeStepS: 300,
   innerTimeStepS: 60,
 };
@@ -160,13 +183,16 @@ export const DEFAULT_OPTIONS: ChainOptions = {
  * Refuses steps that make no sense and values of a choice that there are not.
  *
  * @param options The options; steps [s].
- * @throws {DomainError} when a step is not in 5..3600 s, or a wind choice is none of its values.
+ * @throws {DomainError} when a step is not in 5..3600 s, or a choice is none of its values.
  * @source Rule of this product.
  */
 export function requireOptions(options: ChainOptions): void {
   for (const name of WIND_CHOICE_NAMES) {
     const values: readonly string[] = WIND_CHOICES[name];
     if (!values.includes(options[name])) throw new DomainError(name, options[name], `one of ${values.join(', ')}`);
+  }
+  if (!AMPLITUDE_REGIMES.includes(options.regime)) {
+    throw new DomainError('regime', options.regime, `one of ${AMPLITUDE_REGIMES.join(', ')}`);
   }
   for (const name of ['timeStepS', 'innerTimeStepS'] as const) {
     const step = options[name];

@@ -75,10 +75,14 @@ export type SeaWindSteps = {
   northward: number;
 };
 
+type SeaWindWriter = (state: FieldState, r: number, sinBearing: number, cosBearing: number, out: SeaWindSteps) => void;
+
 /** Wind over open sea of a storm, composed from the chosen relations. */
 export type SeaWind = {
-  /** Writes the wind at a distance [m, ≥ 1] and bearing from the centre, given by its sine and cosine. */
-  readonly write: (state: FieldState, r: number, sinBearing: number, cosBearing: number, out: SeaWindSteps) => void;
+  /** Writes the wind at a distance [m, ≥ 1] and bearing from the centre, given by its sine and cosine: two components. */
+  readonly write: SeaWindWriter;
+  /** The same with every step. */
+  readonly explain: SeaWindWriter;
   /** A wind that is nowhere exceeded on the circle [m s⁻¹]. */
   readonly bound: (state: FieldState, r: number) => number;
 };

@@ -7,6 +7,8 @@ const GRADIENT_RANGE = [5, 150] as const;
 /** Azimuths searched for the greatest wind of a circle; product rule. */
 const AZIMUTHS = 72;
 const BISECTIONS = 60;
+const COSINES = Float64Array.from({ length: AZIMUTHS }, (_, i) => Math.cos((2 * Math.PI * i) / AZIMUTHS));
+const SINES = Float64Array.from({ length: AZIMUTHS }, (_, i) => Math.sin((2 * Math.PI * i) / AZIMUTHS));
 /** Least absolute vorticity, as a share of the angular velocity, with which the layer is solved [1]; product rule. */
 const LEAST_TURNING = 0.2;
 
@@ -146,12 +148,17 @@ export function matchKepertGradient(maxWind10min: number, layerOf: (gradient: nu
  * @source Kepert (2001), J. Atmos. Sci. 58, 2469–2484; azimuths 5 degrees apart: product rule.
  */
 export function strongestKepertWind(coefficients: KepertCoefficients): number {
+  const { a0Re, a0Im, aWithRe, aWithIm, aAgainstRe, aAgainstIm, ratio, speed, motion } = coefficients;
   let strongest = 0;
   for (let i = 0; i < AZIMUTHS; i++) {
-    const { radial, tangential } = kepertWind(coefficients, (2 * Math.PI * i) / AZIMUTHS);
-    strongest = Math.max(strongest, Math.hypot(radial, tangential));
+    const cos = COSINES[i]!;
+    const sin = SINES[i]!;
+    const radial = a0Re + (aWithRe + aAgainstRe + motion) * cos - (aWithIm - aAgainstIm) * sin;
+    const departure = a0Im + (aWithIm + aAgainstIm) * cos + (aWithRe - aAgainstRe) * sin;
+    const tangential = speed + departure / ratio - motion * sin;
+    strongest = Math.max(strongest, radial * radial + tangential * tangential);
   }
-  return strongest;
+  return Math.sqrt(strongest);
 }
 
 function requireLayer(layer: BoundaryLayer): BoundaryLayer {

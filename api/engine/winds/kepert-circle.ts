@@ -54,8 +54,10 @@ export function writeKepertCircle(
   const floor = f > 0.2 * turning ? f : 0.2 * turning;
   const eta = absolute > floor ? absolute : floor;
   const half = 1 / (2 * KEPERT_DIFFUSIVITY);
-  const q = Math.sqrt(xi * eta) * half;
-  const ratio = Math.sqrt(xi / eta);
+  const root = Math.sqrt(xi * eta);
+  const perRoot = 1 / root;
+  const q = root * half;
+  const ratio = xi * perRoot;
   const ga = turning * half;
   const k = (drag * v) / KEPERT_DIFFUSIVITY;
   const chi = k / Math.sqrt(q);
@@ -79,7 +81,7 @@ export function writeKepertCircle(
   const withIm = (aIm * detRe - aRe * detIm) * perDet;
   const againstRe = (bRe * detRe + bIm * detIm) * perDet;
   const againstIm = (bIm * detRe - bRe * detIm) * perDet;
-  const perRatio = 1 / ratio;
+  const perRatio = eta * perRoot;
   out.radial = ratio * still;
   out.radialCos = withRe + againstRe + speed;
   out.radialSin = -withIm - againstIm;

@@ -17,23 +17,27 @@ import { profileSlope, type RadialProfile } from './radial-profile.ts';
 export function kepertSeaWind(options: WindOptions, profile: RadialProfile): SeaWind {
   const slope = profileSlope(options, profile);
   const circle = makeKepertCircle();
+  const write: SeaWind['write'] = (state, r, sinBearing, cosBearing, out) => {
+    const { f, speed, sign, headingSin, headingCos } = state;
+    const gradient = profile(r, state);
+    const drag = seaDrag(DRAG_WIND_SHARE * gradient, options.seaDrag);
+    writeKepertCircle(gradient, slope(r, state, gradient), r, f, speed, drag, circle);
+    // Angle from the heading, positive in the cyclonic sense.
+    const cosine = cosBearing * headingCos + sinBearing * headingSin;
+    const sine = sign * (cosBearing * headingSin - sinBearing * headingCos);
+    const radial = circle.radial + circle.radialCos * cosine + circle.radialSin * sine;
+    const cyclonic = circle.tangential + circle.tangentialCos * cosine + circle.tangentialSin * sine;
+    out.gradient = gradient;
+    out.eastward = radial * sinBearing - sign * cyclonic * cosBearing;
+    out.northward = radial * cosBearing + sign * cyclonic * sinBearing;
+  };
   return {
-    write(state, r, sinBearing, cosBearing, out) {
-      const { f, speed, sign, headingSin, headingCos } = state;
-      const gradient = profile(r, state);
-      const drag = seaDrag(DRAG_WIND_SHARE * gradient, options.seaDrag);
-      writeKepertCircle(gradient, slope(r, state, gradient), r, f, speed, drag, circle);
-      // Angle from the heading, positive in the cyclonic sense.
-      const cosine = cosBearing * headingCos + sinBearing * headingSin;
-      const sine = sign * (cosBearing * headingSin - sinBearing * headingCos);
-      const radial = circle.radial + circle.radialCos * cosine + circle.radialSin * sine;
-      const cyclonic = circle.tangential + circle.tangentialCos * cosine + circle.tangentialSin * sine;
-      out.gradient = gradient;
-      out.surface = Math.sqrt(circle.radial * circle.radial + circle.tangential * circle.tangential);
-      out.surfaceFactor = gradient > 0 ? out.surface / gradient : 0;
+    write,
+    explain(state, r, sinBearing, cosBearing, out) {
+      write(state, r, sinBearing, cosBearing, out);
+      out.surface = Math.hypot(circle.radial, circle.tangential);
+      out.surfaceFactor = out.gradient > 0 ? out.surface / out.gradient : 0;
       out.inflowDeg = degrees(Math.atan2(-circle.radial, circle.tangential));
-      out.eastward = radial * sinBearing - sign * cyclonic * cosBearing;
-      out.northward = radial * cosBearing + sign * cyclonic * sinBearing;
     },
     bound(state, r) {
       const gradient = profile(r, state);

@@ -11,9 +11,10 @@ import { quadrantLogFactor } from './wind-radii.ts';
  */
 export function quadrantSeaWind(field: SeaWind): SeaWind {
   const peak = makeSeaWindSteps();
-  return {
-    write(state, r, sinBearing, cosBearing, out) {
-      field.write(state, r, sinBearing, cosBearing, out);
+  const fitted =
+    (unfitted: SeaWind['write']): SeaWind['write'] =>
+    (state, r, sinBearing, cosBearing, out) => {
+      unfitted(state, r, sinBearing, cosBearing, out);
       const { quadrants, rMax } = state;
       if (quadrants === null || r <= rMax) return;
       const wind = Math.hypot(out.eastward, out.northward);
@@ -24,7 +25,10 @@ export function quadrantSeaWind(field: SeaWind): SeaWind {
       const factor = Math.exp(quadrantLogFactor(quadrants, r / rMax, bearing, gap));
       out.eastward *= factor;
       out.northward *= factor;
-    },
+    };
+  return {
+    write: fitted(field.write),
+    explain: fitted(field.explain),
     bound: (state, r) => Math.exp(Math.max(0, ...(state.quadrants ?? []))) * field.bound(state, r),
   };
 }

@@ -1,5 +1,5 @@
+import { AIR_DENSITY } from '../constants.ts';
 import type { WindOptions } from '../track/options.ts';
-import { hollandGradientWind } from './holland-1980.ts';
 import { hollandSurfaceWind, type SurfaceProfile } from './holland-2010.ts';
 import { SURFACE_FACTORS } from './surface-factor.ts';
 import type { FittedVortex } from './vortex-fit.ts';
@@ -71,13 +71,21 @@ export function profileState(
 export function radialProfile(options: WindOptions): RadialProfile {
   switch (options.profile) {
     case 'holland-1980':
-      return hollandGradientWind;
+      return leanHollandWind;
     case 'holland-2010':
       return (r, state) => hollandSurfaceWind(r, state.revised!) / surfaceRatio(r, state.surfaceShare, options);
     case 'willoughby-2006':
     case 'willoughby-2006-exact-peak':
       return (r, { dual }) => dualExponentialWind(r, dual!);
   }
+}
+
+/** Holland (1980) for the inner loop: the parameters are those of a matched vortex, and a logarithm costs less than a power. */
+function leanHollandWind(r: number, { rMax, b, deficit, f }: ProfileState): number {
+  const distance = r < 1 ? 1 : r;
+  const x = Math.exp(b * Math.log(rMax / distance));
+  const half = 0.5 * distance * f;
+  return Math.sqrt(((b * deficit) / AIR_DENSITY) * x * Math.exp(-x) + half * half) - half;
 }
 
 /** Surface over gradient wind of the revised profile; the boundary layer of Kepert makes the surface wind itself. */
@@ -100,7 +108,7 @@ export function profileSlope(
   if (options.profile === 'holland-1980') {
     return (r, { rMax, b, f }, wind) => {
       // The force P = V (V + r f) has the slope P B (x - 1) / r.
-      const x = (rMax / r) ** b;
+      const x = Math.exp(b * Math.log(rMax / r));
       const force = wind * (wind + r * f);
       return ((force * b * (x - 1)) / r - f * wind) / Math.max(2 * wind + r * f, LEAST_TURNING);
     };

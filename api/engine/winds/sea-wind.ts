@@ -53,19 +53,21 @@ function inflowOf({ inflow }: WindOptions): Inflow {
 function vectorSeaWind(options: WindOptions, profile: RadialProfile, withMotion: boolean): SeaWind {
   const factor = SURFACE_FACTORS[options.surfaceFactor];
   const inflow = inflowOf(options);
+  const write: SeaWind['write'] = (state, r, sinBearing, cosBearing, out) => {
+    const { sign } = state;
+    out.gradient = profile(r, state);
+    out.surfaceFactor = factor(r) * state.surfaceShare;
+    out.surface = out.surfaceFactor * out.gradient;
+    out.inflowDeg = inflow(state, r, sinBearing, cosBearing);
+    const turn = radians(out.inflowDeg);
+    const cyclonic = out.surface * Math.cos(turn);
+    const inwards = out.surface * Math.sin(turn);
+    out.eastward = -sign * cosBearing * cyclonic - sinBearing * inwards + (withMotion ? state.motionU : 0);
+    out.northward = sign * sinBearing * cyclonic - cosBearing * inwards + (withMotion ? state.motionV : 0);
+  };
   return {
-    write(state, r, sinBearing, cosBearing, out) {
-      const { sign } = state;
-      out.gradient = profile(r, state);
-      out.surfaceFactor = factor(r) * state.surfaceShare;
-      out.surface = out.surfaceFactor * out.gradient;
-      out.inflowDeg = inflow(state, r, sinBearing, cosBearing);
-      const turn = radians(out.inflowDeg);
-      const cyclonic = out.surface * Math.cos(turn);
-      const inwards = out.surface * Math.sin(turn);
-      out.eastward = -sign * cosBearing * cyclonic - sinBearing * inwards + (withMotion ? state.motionU : 0);
-      out.northward = sign * sinBearing * cyclonic - cosBearing * inwards + (withMotion ? state.motionV : 0);
-    },
+    write,
+    explain: write,
     bound(state, r) {
       const motion = withMotion ? Math.hypot(state.motionU, state.motionV) : 0;
       return factor(r) * state.surfaceShare * profile(r, state) + motion;
@@ -76,19 +78,18 @@ function vectorSeaWind(options: WindOptions, profile: RadialProfile, withMotion:
 /** Speed added along the wind by the cosine of the angle between heading and wind. */
 function schwerdtSeaWind(options: WindOptions, profile: RadialProfile): SeaWind {
   const vortex = vectorSeaWind(options, profile, false);
-  const overTen = oneMinuteOverTen(options.averaging);
-  return {
-    write(state, r, sinBearing, cosBearing, out) {
-      vortex.write(state, r, sinBearing, cosBearing, out);
-      if (!(out.surface > 0)) return;
-      const { eastward, northward } = out;
-      const angle = Math.acos(unit((eastward * state.headingSin + northward * state.headingCos) / out.surface));
-      const wind = Math.max(out.surface + schwerdtAddition(state.speed, degrees(angle)) / overTen, 0);
-      out.eastward = (eastward / out.surface) * wind;
-      out.northward = (northward / out.surface) * wind;
-    },
-    bound: (state, r) => vortex.bound(state, r) + schwerdtAddition(state.speed, 0) / overTen,
+  const greatest = (state: FieldState): number =>
+    schwerdtAddition(state.speed, 0) / oneMinuteOverTen(options.averaging);
+  const write: SeaWind['write'] = (state, r, sinBearing, cosBearing, out) => {
+    vortex.write(state, r, sinBearing, cosBearing, out);
+    if (!(out.surface > 0)) return;
+    const { eastward, northward } = out;
+    const cosine = (eastward * state.headingSin + northward * state.headingCos) / out.surface;
+    const share = Math.max(out.surface + greatest(state) * cosine, 0) / out.surface;
+    out.eastward *= share;
+    out.northward *= share;
   };
+  return { write, explain: write, bound: (state, r) => vortex.bound(state, r) + greatest(state) };
 }
 
 /** Gradient wind along the path of a moving parcel, then the surface factor and the inflow. */
@@ -101,19 +102,17 @@ function georgiouSeaWind(options: WindOptions, profile: RadialProfile): SeaWind 
     const half = 0.5 * (state.speed * sideSine - state.f * r);
     return half + Math.sqrt(half * half + gradient * (gradient + state.f * r));
   };
+  const write: SeaWind['write'] = (state, r, sinBearing, cosBearing, out) => {
+    vortex.write(state, r, sinBearing, cosBearing, out);
+    if (!(out.surface > 0)) return;
+    const side = state.sign * (sinBearing * state.headingCos - cosBearing * state.headingSin);
+    const share = (out.surfaceFactor * moving(state, r, out.gradient, side)) / out.surface;
+    out.eastward *= share;
+    out.northward *= share;
+  };
   return {
-    write(state, r, sinBearing, cosBearing, out) {
-      vortex.write(state, r, sinBearing, cosBearing, out);
-      if (!(out.surface > 0)) return;
-      const side = state.sign * (sinBearing * state.headingCos - cosBearing * state.headingSin);
-      const share = (out.surfaceFactor * moving(state, r, out.gradient, side)) / out.surface;
-      out.eastward *= share;
-      out.northward *= share;
-    },
+    write,
+    explain: write,
     bound: (state, r) => factor(r) * state.surfaceShare * moving(state, r, profile(r, state), 1),
   };
-}
-
-function unit(x: number): number {
-  return Math.min(Math.max(x, -1), 1);
 }
