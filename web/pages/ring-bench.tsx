@@ -137,22 +137,26 @@ export function Component() {
           <div className="max-md:order-2">
             <RingControls study={study} onChange={change} />
           </div>
-          <div className="flex min-w-0 flex-col gap-3.5 max-md:order-1">
-            <VorticityCard
-              study={study}
-              onChange={change}
-              frames={film.frames}
-              phase={film.phase}
-              fault={film.fault}
-              onStart={film.start}
-              onCancel={film.cancel}
-              index={shown}
-              onIndex={setIndex}
-              canvasId={canvasId}
-            />
-            <BreakdownWind frames={film.frames} index={shown} hours={settled.hours} />
+          <div className="flex min-w-0 flex-col gap-3.5 max-md:contents">
+            <div className="min-w-0 max-md:order-1">
+              <VorticityCard
+                study={study}
+                onChange={change}
+                frames={film.frames}
+                phase={film.phase}
+                fault={film.fault}
+                onStart={film.start}
+                onCancel={film.cancel}
+                index={shown}
+                onIndex={setIndex}
+                canvasId={canvasId}
+              />
+            </div>
+            <div className="min-w-0 max-md:order-3">
+              <BreakdownWind frames={film.frames} index={shown} hours={settled.hours} />
+            </div>
           </div>
-          <div className="flex min-w-0 flex-col gap-3.5 max-xl:col-span-full max-md:order-3">
+          <div className="flex min-w-0 flex-col gap-3.5 max-xl:col-span-full max-md:order-4">
             {ring.data && <GrowthBars ring={ring.data} />}
             {map.data && <StabilityPicture map={map.data} width={study.width} eye={study.eye} onPick={change} />}
             {map.isError && (

@@ -88,13 +88,19 @@ export function Slider({ label, stops, marks = [], value, valueText, onChange, t
           style={{ left: share(value) }}
         />
       </div>
-      <div aria-hidden className="relative h-4.5 text-12 text-ink-2">
-        {ticks.map((tick) => (
-          <span key={tick.at} className="absolute -translate-x-1/2 whitespace-nowrap" style={{ left: share(tick.at) }}>
-            {tick.label}
-          </span>
-        ))}
-      </div>
+      {ticks.length > 0 && (
+        <div aria-hidden className="relative h-4.5 text-12 text-ink-2">
+          {ticks.map((tick) => (
+            <span
+              key={tick.at}
+              className="absolute -translate-x-1/2 whitespace-nowrap"
+              style={{ left: share(tick.at) }}
+            >
+              {tick.label}
+            </span>
+          ))}
+        </div>
+      )}
     </div>
   );
 }

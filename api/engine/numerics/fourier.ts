@@ -34,6 +34,8 @@ export function complexArray(size: number): ComplexArray {
  * @source Stockham's self-sorting algorithm, see Van Loan (1992), Computational Frameworks for the FFT, section 1.7.
  */
 export function fourierPlan(length: number, columns: number): FourierPlan {
+  const refused = new DomainError('transform length', length, 'a product of twos and threes');
+  if (!(length >= 1)) throw refused;
   const radices: number[] = [];
   let rest = length;
   for (const radix of [4, 3, 2]) {
@@ -42,7 +44,7 @@ export function fourierPlan(length: number, columns: number): FourierPlan {
       rest /= radix;
     }
   }
-  if (!(length >= 1) || rest !== 1) throw new DomainError('transform length', length, 'a product of twos and threes');
+  if (rest !== 1) throw refused;
   const turns = new Float64Array(2 * length);
   for (let k = 0; k < length; k++) {
     turns[2 * k] = Math.cos((-2 * Math.PI * k) / length);

@@ -7,7 +7,7 @@ export const DRAWN_STRENGTHS = [
   { share: 0.9, name: '90 % of the draws', strength: 0.64 },
   { share: 0.99, name: '99 % of the draws', strength: 0.935 },
 ] as const;
-const MEAN_STRENGTH = 0.384;
+export const MEAN_STRENGTH = 0.38415;
 /** 3-s gust over the 1-min wind, open sea. Source: WMO/TD-1555, Harper et al. (2010), from memory. */
 const GUST_FACTOR = 1.11;
 

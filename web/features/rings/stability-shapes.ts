@@ -34,9 +34,10 @@ export const stabilityShapes = ({ widthFraction, eyeRatio, growth, wavenumber }:
     const cells = fastest.flatMap((other, index) => (other === m ? [index] : []));
     const mean = (of: (index: number) => number) => cells.reduce((sum, index) => sum + of(index), 0) / cells.length;
     const centre = { x: mean((index) => index % columns), y: mean((index) => Math.floor(index / columns)) };
-    // A bent region is named at its own cell nearest to the middle.
+    const lift = m === null ? 0 : rows * (m % 2 === 0 ? -0.14 : 0.1);
+    // A bent region is named at its own cell nearest to the middle; neighbours take turns above and below it.
     const away = (index: number) =>
-      Math.hypot((index % columns) - centre.x, 1.5 * (Math.floor(index / columns) - centre.y));
+      Math.hypot((index % columns) - centre.x, 1.5 * (Math.floor(index / columns) - centre.y - lift));
     const named = cells.reduce((best, index) => (away(index) < away(best) ? index : best), cells[0]!);
     const [shape] = draw.thresholds([0.5])(fastest.map((other) => (other === m ? 1 : 0)));
     return {

@@ -13,6 +13,14 @@ interface BreakdownChartsProps {
 
 const PANEL = 'rounded-3 border border-rule bg-sheet px-4 pt-3 pb-3 shadow-1';
 const hoursOf = ({ timeS }: FilmFrame) => timeS / 3600;
+const SUPERSCRIPTS = '⁰¹²³⁴⁵⁶⁷⁸⁹';
+/** "−3.3 × 10⁻¹⁵". */
+const inPowers = (value: number): string => {
+  if (value === 0) return '0';
+  const [digits = '', power = ''] = value.toExponential(1).split('e');
+  const raised = [...power.replace('+', '')].map((sign) => (sign === '-' ? '⁻' : SUPERSCRIPTS[Number(sign)])).join('');
+  return `${digits.replace('-', '−')} × 10${raised}`;
+};
 const hPa = ({ minPressurePa }: FilmFrame) => minPressurePa / 100;
 
 /** Strongest wind anywhere against the mean round the ring, as shares of the wind the ring starts with. */
@@ -161,7 +169,7 @@ export function BreakdownMeasures({ frames, index, hours }: BreakdownChartsProps
               <th scope="row" className="py-1">
                 Circulation, change
               </th>
-              <td>{shown ? shown.circulationResidual.toExponential(1).replace('-', '−') : '–'}</td>
+              <td>{shown ? inPowers(shown.circulationResidual) : '–'}</td>
             </tr>
             <tr>
               <th scope="row" className="py-1">

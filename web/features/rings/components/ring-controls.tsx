@@ -169,7 +169,7 @@ function NumberControl({ label, unit, limits, ends, value, decimals, scale, onCh
         }}
         ticks={[]}
       />
-      <div aria-hidden className="-mt-1 flex justify-between text-12 text-ink-2">
+      <div aria-hidden className="flex justify-between text-12 text-ink-2">
         <span>{low}</span>
         <span>{high}</span>
       </div>

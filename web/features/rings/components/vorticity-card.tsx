@@ -27,7 +27,7 @@ interface VorticityCardProps {
   canvasId: string;
 }
 
-const REACH = 1.7;
+const REACH = 1.55;
 const ASPECT = 4 / 3;
 const GRAIN = 420;
 const THUMB = 60;
@@ -243,7 +243,7 @@ export function VorticityCard(props: VorticityCardProps) {
         </Message>
       )}
 
-      <div className="mt-2.5 grid grid-cols-4 items-end gap-x-3 gap-y-2.5 border-t border-rule pt-2.5 max-lg:grid-cols-2">
+      <div className="mt-2.5 grid grid-cols-[1.3fr_1fr_.8fr_1fr] items-end gap-x-3 gap-y-2.5 border-t border-rule pt-2.5 max-lg:grid-cols-2">
         <div>
           <span className="mb-1.25 block text-13 font-bold">Hemisphere</span>
           <Segmented
@@ -258,14 +258,13 @@ export function VorticityCard(props: VorticityCardProps) {
           />
         </div>
         <SelectField
-          label="Grid"
+          label="Grid points"
           value={study.points}
           onChange={({ target }) => onChange({ points: POINTS.find((points) => String(points) === target.value)! })}
         >
           {POINTS.map((points) => (
             <option key={points} value={points}>
-              {points} × {points}
-              {points === 256 ? ', slow' : points === 64 ? ', rough' : ''}
+              {points}²{points === 256 ? ', slow' : points === 64 ? ', rough' : ''}
             </option>
           ))}
         </SelectField>
@@ -285,12 +284,12 @@ export function VorticityCard(props: VorticityCardProps) {
           value={study.heatingMin ?? ''}
           onChange={({ target }) => onChange({ heatingMin: target.value === '' ? null : Number(target.value) })}
         >
-          <option value="">no, left alone</option>
+          <option value="">no</option>
           {[...new Set([60, 120, 240, 480, ...(study.heatingMin ? [study.heatingMin] : [])])]
             .sort((a, b) => a - b)
             .map((minutes) => (
               <option key={minutes} value={minutes}>
-                within {decimal(minutes / 60, minutes % 60 === 0 ? 0 : 1)} h
+                over {decimal(minutes / 60, minutes % 60 === 0 ? 0 : 1)} h
               </option>
             ))}
         </SelectField>
