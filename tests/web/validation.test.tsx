@@ -2,6 +2,7 @@ import { readFileSync } from 'node:fs';
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
 import { render, screen, waitFor, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
+import axe from 'axe-core';
 import { MemoryRouter } from 'react-router-dom';
 import { describe, expect, it } from 'vitest';
 import { Validation } from '#contract/validation.ts';
@@ -79,6 +80,15 @@ describe('the validation page', () => {
     // 1 kt = 1852 m / 3600 s.
     const knots = ((scored[0]!.modelled.default.p50Ms * 3600) / 1852).toFixed(1);
     expect(within(within(table).getAllByRole('row')[1]!).getByText(knots)).toBeVisible();
+  });
+
+  it('has no finding of axe-core, every station shown', async () => {
+    answerRequests(() => ok(published));
+    const { container } = show();
+    await userEvent.click(await screen.findByRole('radio', { name: `All ${published.observations.length}` }));
+    // jsdom paints nothing, so contrast can’t be judged here.
+    const { violations } = await axe.run(container, { rules: { 'color-contrast': { enabled: false } } });
+    expect(violations.map(({ id, nodes }) => [id, nodes[0]!.html])).toEqual([]);
   });
 
   it('weighs storms alike when asked', async () => {
