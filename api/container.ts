@@ -84,7 +84,7 @@ import { signInCheck } from './http/auth.ts';
 import { SessionCookies } from './http/cookies.ts';
 import { csrfCheck } from './http/csrf.ts';
 import { createOnce } from './http/idempotency.ts';
-import { DEFAULT_LIMITS, limitCompute, limitSignIn, type Limits } from './http/limits.ts';
+import { DEFAULT_LIMITS, limitCompute, limitDraws, limitSignIn, type Limits } from './http/limits.ts';
 import { mailPage } from './http/pages.ts';
 import { Outbox } from './jobs/outbox.ts';
 import { Queue } from './jobs/queue.ts';
@@ -267,7 +267,7 @@ export const createContainer = (
     calibrationRoutes(calibrations),
     billingRoutes(billing),
     runRoutes(runServices),
-    resultRoutes(resultService, drawService, limitCompute(limits)),
+    resultRoutes(resultService, drawService, limitDraws(limits)),
     studyRoutes(studies, limitCompute(limits)),
     ringRoutes(rings, limitCompute(limits)),
     evaluationRoutes(new EvaluationService(landIndex, engineVersion), limitCompute(limits)),

@@ -13,12 +13,15 @@ export interface Limits {
   signIn: Limit;
   /** Work done at once for the caller and stored nowhere. */
   compute: Limit;
+  /** Pictures and gusts of single draws: a person steps through them, two calls a step. */
+  draws: Limit;
 }
 
 export const DEFAULT_LIMITS: Limits = {
   all: { windowMs: 60_000, requests: 1200 },
   signIn: { windowMs: 15 * 60_000, requests: 30 },
   compute: { windowMs: 60_000, requests: 60 },
+  draws: { windowMs: 60_000, requests: 240 },
 };
 
 const WRONG_SIGN_IN = 401;
@@ -49,3 +52,5 @@ export const limitSignIn = (limits: Limits): RequestHandler =>
   );
 export const limitCompute = (limits: Limits): RequestHandler =>
   limiter(limits.compute, 'Too many calculations at once. Wait a minute, then go on.', false);
+export const limitDraws = (limits: Limits): RequestHandler =>
+  limiter(limits.draws, 'Too many draws in one minute. Wait a moment, then go on.', false);

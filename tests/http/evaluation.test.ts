@@ -111,7 +111,7 @@ describe('whom it isn’t for', () => {
 describe('the limit of calculations', () => {
   const wide = { windowMs: 60_000, requests: 1000 };
   it('answers 429 with the seconds to wait, and holds up nothing else', async () => {
-    const limits = { all: wide, signIn: wide, compute: { windowMs: 60_000, requests: 2 } };
+    const limits = { all: wide, signIn: wide, compute: { windowMs: 60_000, requests: 2 }, draws: wide };
     const limited = await createTestApp({ limits });
     const person = await limited.signIn('underwriter');
     for (let count = 0; count < 2; count += 1) await person.post(PATH, workedRequest()).expect(200);
@@ -124,7 +124,7 @@ describe('the limit of calculations', () => {
     await person.get('/portfolios').expect(200);
   });
   it('is over once that time has passed', async () => {
-    const limits = { all: wide, signIn: wide, compute: { windowMs: 1_000, requests: 1 } };
+    const limits = { all: wide, signIn: wide, compute: { windowMs: 1_000, requests: 1 }, draws: wide };
     const limited = await createTestApp({ limits });
     const person = await limited.signIn('underwriter');
     let refused = 200;

@@ -154,7 +154,7 @@ describe('event streams', () => {
 describe('limits', () => {
   const tight = { windowMs: 60_000, requests: 3 };
   it('refuse with Retry-After, and only whoever exceeds them', async () => {
-    const limited = await createTestApp({ limits: { all: tight, signIn: tight, compute: tight } });
+    const limited = await createTestApp({ limits: { all: tight, signIn: tight, compute: tight, draws: tight } });
     for (let count = 0; count < 3; count += 1) await request(limited.app).get('/api/v1/session').expect(401);
     const reply = await request(limited.app).get('/api/v1/session').expect(429);
     expect(reply.body.code).toBe('too_many_requests');
@@ -167,7 +167,7 @@ describe('the sign-in limit', () => {
   it('counts wrong guesses, not what goes well', async () => {
     const wide = { windowMs: 60_000, requests: 1000 };
     const limited = await createTestApp({
-      limits: { all: wide, signIn: { windowMs: 60_000, requests: 2 }, compute: wide },
+      limits: { all: wide, signIn: { windowMs: 60_000, requests: 2 }, compute: wide, draws: wide },
     });
     const enter = (password: string) =>
       request(limited.app).post('/api/v1/session').send({ email: DUNE.people.admin.email, password });

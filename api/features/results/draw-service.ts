@@ -2,16 +2,8 @@ import type { Draw, Draws, DrawSites } from '#contract/draws.ts';
 import type { Footprint, FootprintQuery } from '#contract/runs.ts';
 import type { DrawView } from '#engine/footprint/draw-fields.ts';
 import type { SiteBatch } from '#engine/footprint/site-peaks.ts';
-import {
-  AMPLITUDE_NODES,
-  DRAW_COUNT,
-  DRAW_WEIGHT_TOTAL,
-  DRAW_WEIGHT_UNITS,
-  PHASE_COUNT,
-  startingPhase,
-} from '#engine/ring/draws.ts';
+import { AMPLITUDE_NODES, DRAW_COUNT, DRAW_WEIGHT_TOTAL, DRAW_WEIGHT_UNITS, PHASE_COUNT } from '#engine/ring/draws.ts';
 import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
-import { degrees } from '#engine/units.ts';
 import type { Actor } from '../../actor.ts';
 import { layerArea } from '../../compute/draws.ts';
 import { toCents } from '../../compute/minor-units.ts';
@@ -160,7 +152,7 @@ const ranked = ({ gross, strongest, sitesAbove }: EventDraws, gusts: number): Dr
       strongestMs: strongest?.[d] ?? null,
       sitesAbove: sitesAbove && Array.from({ length: gusts }, (_, k) => sitesAbove[k * DRAW_COUNT + d]!),
       strength: AMPLITUDE_NODES[Math.floor(d / PHASE_COUNT)]!,
-      phaseDeg: degrees(startingPhase(d % PHASE_COUNT)),
+      phaseDeg: (360 / PHASE_COUNT) * ((d % PHASE_COUNT) + 0.5),
     }));
 
 /** First draw in their order at which the weights reach a share: counted in whole units, as the event’s percentiles are. */
