@@ -1,14 +1,13 @@
-import { AMPLITUDE_NODES, DRAW_COUNT, PHASE_COUNT, startingPhase } from '../ring/draws.ts';
+import { DRAW_COUNT, PHASE_COUNT, startingPhase } from '../ring/draws.ts';
 import type { Passage } from './passage.ts';
 
-const NODE_COUNT = AMPLITUDE_NODES.length;
-const NODES = Float64Array.from(AMPLITUDE_NODES);
-const WEAKEST = AMPLITUDE_NODES[0];
-const STRONGEST = AMPLITUDE_NODES[NODE_COUNT - 1]!;
 const HALF = PHASE_COUNT / 2;
 const SEED_STRIDE = 5;
 const START_COS = Float64Array.from({ length: HALF }, (_, j) => Math.cos(startingPhase(j)));
 const START_SIN = Float64Array.from({ length: HALF }, (_, j) => Math.sin(startingPhase(j)));
+
+/** What the draws need of a passage. */
+export type DrawnPassage = Pick<Passage, 'gust' | 'crest' | 'phaseCos' | 'phaseSin' | 'ownPhases' | 'strengths'>;
 
 /** Working arrays for the peaks of all draws; made once, used for many sites. */
 export type DrawWork = {
@@ -53,7 +52,13 @@ export function makeDrawWork(stateCount: number): DrawWork {
  * @returns False when the layer never touches the site: every draw then equals the plain peak, bit for bit.
  * @source Largest of max(0, F (U + a A v E C / 1.05)) over time, term by term.
  */
-export function drawPeaks(passage: Passage, count: number, peak: number, work: DrawWork, gusts: Float64Array): boolean {
+export function drawPeaks(
+  passage: DrawnPassage,
+  count: number,
+  peak: number,
+  work: DrawWork,
+  gusts: Float64Array,
+): boolean {
   const { gust, crest } = passage;
   const { inside, low, high } = work;
   let insideCount = 0;
@@ -83,7 +88,7 @@ export function drawPeaks(passage: Passage, count: number, peak: number, work: D
 
 /** Takes every so many of the times inside the layer, outward from the highest plain gust. */
 function takeOutward(
-  { gust, crest, phaseCos, phaseSin, ownPhases }: Passage,
+  { gust, crest, phaseCos, phaseSin, ownPhases, strengths }: DrawnPassage,
   firstAfterPeak: number,
   insideCount: number,
   stride: number,
@@ -91,6 +96,8 @@ function takeOutward(
   gusts: Float64Array,
 ): void {
   const { inside, low, high } = work;
+  const weakest = strengths[0]!;
+  const strongest = strengths[strengths.length - 1]!;
   let { leastLow, leastHigh } = work;
   let before = firstAfterPeak - stride;
   let after = firstAfterPeak;
@@ -106,7 +113,7 @@ function takeOutward(
     const g = gust[i]!;
     const p = crest[i]!;
     // No phase can gain more than the crest itself.
-    if (g + WEAKEST * p <= leastLow && g + STRONGEST * p <= leastHigh) continue;
+    if (g + weakest * p <= leastLow && g + strongest * p <= leastHigh) continue;
     const scale = p / 1.5;
     const cosNow = phaseCos[i]!;
     const sinNow = phaseSin[i]!;
@@ -115,8 +122,8 @@ function takeOutward(
       for (let j = 0; j < PHASE_COUNT; j++) {
         const c = cosNow * ownPhases[2 * j]! + sinNow * ownPhases[2 * j + 1]!;
         const slope = scale * (c * c - 0.5 + c);
-        if (g + WEAKEST * slope > low[j]! || g + STRONGEST * slope > high[j]!) {
-          raise(gusts, j, g, slope, low, high);
+        if (g + weakest * slope > low[j]! || g + strongest * slope > high[j]!) {
+          raise(gusts, strengths, j, g, slope, low, high);
           changed = true;
         }
       }
@@ -127,13 +134,13 @@ function takeOutward(
       const even = scale * (c * c - 0.5);
       const odd = scale * c;
       const slope = even + odd;
-      if (g + WEAKEST * slope > low[j]! || g + STRONGEST * slope > high[j]!) {
-        raise(gusts, j, g, slope, low, high);
+      if (g + weakest * slope > low[j]! || g + strongest * slope > high[j]!) {
+        raise(gusts, strengths, j, g, slope, low, high);
         changed = true;
       }
       const opposite = even - odd;
-      if (g + WEAKEST * opposite > low[j + HALF]! || g + STRONGEST * opposite > high[j + HALF]!) {
-        raise(gusts, j + HALF, g, opposite, low, high);
+      if (g + weakest * opposite > low[j + HALF]! || g + strongest * opposite > high[j + HALF]!) {
+        raise(gusts, strengths, j + HALF, g, opposite, low, high);
         changed = true;
       }
     }
@@ -152,6 +159,7 @@ function takeOutward(
 /** Lets one line compete at every node of its phase, and makes it the reference when it is higher on the whole. */
 function raise(
   gusts: Float64Array,
+  strengths: Float64Array,
   phase: number,
   g: number,
   slope: number,
@@ -159,11 +167,11 @@ function raise(
   high: Float64Array,
 ): void {
   for (let n = 0, d = phase; d < DRAW_COUNT; n++, d += PHASE_COUNT) {
-    const value = g + NODES[n]! * slope;
+    const value = g + strengths[n]! * slope;
     if (value > gusts[d]!) gusts[d] = value;
   }
-  const atWeakest = g + WEAKEST * slope;
-  const atStrongest = g + STRONGEST * slope;
+  const atWeakest = g + strengths[0]! * slope;
+  const atStrongest = g + strengths[strengths.length - 1]! * slope;
   if (atWeakest + atStrongest > low[phase]! + high[phase]!) {
     low[phase] = atWeakest;
     high[phase] = atStrongest;

@@ -56,6 +56,8 @@ export type Passage = {
   readonly chosenGround: ChosenGround | null;
   /** Cosine and sine of the 24 starting phases, one after the other, shape (24, 2); null where they are evenly spread. */
   readonly ownPhases: Float64Array | null;
+  /** Strength factors of the draws, ascending [1], shape (11,). */
+  readonly strengths: Float64Array;
 };
 
 /** A place as a unit vector. */
@@ -102,6 +104,7 @@ export function makePassage(storm: Storm): Passage {
     chosenSea: chosenSeaWindOf(storm),
     chosenGround: chosenGroundOf(storm),
     ownPhases: ownPhasesOf(storm.phases),
+    strengths: Float64Array.from(storm.strengths),
   };
 }
 

@@ -1,5 +1,5 @@
 import { greatCircleDistance, normalisedBearing, type Place } from '../geo/geodesy.ts';
-import { AMPLITUDE_NODES, azimuthalShape, DRAW_COUNT, drawQuantiles, PHASE_COUNT } from '../ring/draws.ts';
+import { azimuthalShape, DRAW_COUNT, drawQuantiles, PHASE_COUNT } from '../ring/draws.ts';
 import { SECTOR_COUNT } from '../terrain/fetch.ts';
 import { STATE, STATE_SIZE, type Storm } from '../track/storm.ts';
 import { degrees } from '../units.ts';
@@ -48,7 +48,7 @@ export function siteSeries(storm: Storm, site: Site): SiteSeries {
     const phase = Math.atan2(passage.phaseSin[i]!, passage.phaseCos[i]!);
     for (let d = 0; d < DRAW_COUNT; d++) {
       const shape = azimuthalShape(phase - storm.phases[d % PHASE_COUNT]!);
-      gusts[d] = Math.max(passage.gust[i]! + AMPLITUDE_NODES[Math.floor(d / PHASE_COUNT)]! * crest * shape, 0);
+      gusts[d] = Math.max(passage.gust[i]! + storm.strengths[Math.floor(d / PHASE_COUNT)]! * crest * shape, 0);
     }
     const [p5, p50, p95] = drawQuantiles(gusts, [0.05, 0.5, 0.95]);
     series.p5[i] = p5!;

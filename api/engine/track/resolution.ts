@@ -1,6 +1,7 @@
 import { LEAST_PRESSURE_DEFICIT } from '../constants.ts';
 import type { LandIndex } from '../geo/land.ts';
 import { observedCount, requireObservations, type ObservedVortices } from '../ring/observed-vortices.ts';
+import { meanAmplitude } from '../ring/regimes.ts';
 import { DEFAULT_EYE_RATIO, DEFAULT_RING_WIDTH } from '../ring/stability.ts';
 import { coriolis } from '../winds/coriolis.ts';
 import { surfaceShare } from '../winds/implied-wind.ts';
@@ -71,7 +72,13 @@ export function resolveFixes(
     hoursInland: hoursInland(fixes[i]!.timeS),
     anchor: anchorOf(entry, options),
   }));
-  const layer = layVortices(inputs, options.mesovortices, options.averaging, observed && observed.wavenumber);
+  const layer = layVortices(
+    inputs,
+    options.mesovortices,
+    options.averaging,
+    observed && observed.wavenumber,
+    meanAmplitude(options.regime),
+  );
   const unconditioned = settled.map((entry, i): ResolvedFix => {
     const given = fixes[i]!;
     const input = inputs[i]!;

@@ -3,6 +3,7 @@ import { unitVector } from '../geo/geodesy.ts';
 import type { LandIndex } from '../geo/land.ts';
 import { inlandFade } from '../ring/amplitude.ts';
 import { VORTEX_REACH } from '../ring/draws.ts';
+import { amplitudeNodes } from '../ring/regimes.ts';
 import type { ObservedVortices } from '../ring/observed-vortices.ts';
 import { radians } from '../units.ts';
 import { motionWind } from '../winds/asymmetry.ts';
@@ -80,6 +81,8 @@ export type Storm = {
   readonly wavenumber: number | null;
   /** Starting phase of each of the draws' 24 patterns [rad]: evenly spread unless the storm is conditioned. */
   readonly phases: readonly number[];
+  /** Strength factors of the draws [1], shape (11,). */
+  readonly strengths: readonly number[];
   /** What was observed of the vortices; null where nothing was, or it has no effect. */
   readonly conditioned: Conditioned | null;
   readonly stateCount: number;
@@ -131,7 +134,8 @@ export function prepareStorm(
     const timeS = grid.timeS[k]!;
     field.push(writeState(states, k * STATE_SIZE, resolution, timeS, angles, tendencies, options));
   }
-  const storm = { fixes: resolved, options, notices, wavenumber, phases, conditioned, stateCount, states };
+  const strengths = amplitudeNodes(options.regime);
+  const storm = { fixes: resolved, options, notices, wavenumber, phases, strengths, conditioned, stateCount, states };
   if (usesDefaultSeaWind(options)) {
     for (const k of grid.outer) writeQuiet(states, k * STATE_SIZE);
     return { ...storm, outer: grid.outer, field: null };

@@ -32,6 +32,7 @@ export type LayerFix = {
  * @param on    False leaves every amplitude 0 and the wavenumber null.
  * @param averaging Which factor leads from the 1-min to the 10-min wind.
  * @param observed Number of vortices seen; null = the ring's own.
+ * @param meanStrength Mean strength factor of the draws, divided out where the maximum holds vortex peaks [1].
  * @returns One entry per fix; the wavenumber is null when no ring grows, and then every pattern is null.
  * @source Smooth-ring growth (Schubert et al. 1999 with smooth shoulders) and the amplitude law of ring/amplitude.ts.
  */
@@ -40,6 +41,7 @@ export function layVortices(
   on: boolean,
   averaging: WindOptions['averaging'] = DEFAULT_WIND_OPTIONS.averaging,
   observed: number | null = null,
+  meanStrength: number = MEAN_AMPLITUDE,
 ): { fixes: LayerFix[]; wavenumber: number | null } {
   const solved = new Map<string, RingMode[]>();
   const modesOf = ({ ringWidth, eyeRatio }: LayerInput): RingMode[] => {
@@ -58,7 +60,7 @@ export function layVortices(
       const amplitude = on
         ? amplitudeLaw(modes[i]!) * intensitySwitch(axisymmetricWind(fix.maxWind, fix.speed, averaging), fix.rMax)
         : 0;
-      const held = fix.anchor === 'peak' ? 1 + MEAN_AMPLITUDE * amplitude * inlandFade(fix.hoursInland) : 1;
+      const held = fix.anchor === 'peak' ? 1 + meanStrength * amplitude * inlandFade(fix.hoursInland) : 1;
       const maxWind = fix.maxWind / held;
       const axisymmetricMax = axisymmetricWind(maxWind, fix.speed, averaging);
       const averageVorticity = (2 * axisymmetricMax) / fix.rMax;
