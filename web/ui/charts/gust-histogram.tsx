@@ -11,6 +11,8 @@ interface GustHistogramProps {
   thresholdsMs?: readonly number[];
   /** Is the enhanced count there at all? */
   vortices: boolean;
+  /** What the bars are, where they aren’t the enhanced median. */
+  bars?: string;
   fileName: string;
 }
 
@@ -29,7 +31,14 @@ export const binLabels = (gust: (speedMs: number) => string): string[] =>
 export const stepOutline = (counts: readonly number[], top: number): string =>
   counts.map((sites, bin) => `${bin === 0 ? 'M' : 'L'}${bin} ${100 - (100 * sites) / top}H${bin + 1}`).join('');
 
-export function GustHistogram({ enhanced, plain, thresholdsMs = [], vortices, fileName }: GustHistogramProps) {
+export function GustHistogram({
+  enhanced,
+  plain,
+  thresholdsMs = [],
+  vortices,
+  bars: barsAre = 'enhanced median',
+  fileName,
+}: GustHistogramProps) {
   const { gust, label, toUnit } = useUnits();
   const bars = vortices ? enhanced : plain;
   const axis = countAxis(Math.max(...enhanced, ...plain), 3);
@@ -43,11 +52,11 @@ export function GustHistogram({ enhanced, plain, thresholdsMs = [], vortices, fi
   return (
     <ChartFrame
       title="Sites by peak gust"
-      aside={vortices ? `${label}; bars enhanced median, outline plain` : `${label}; plain, no vortex range: layer off`}
+      aside={vortices ? `${label}; bars ${barsAre}, outline plain` : `${label}; plain, no vortex range: layer off`}
       summary={summary}
       fileName={fileName}
       table={{
-        columns: [`Gust, ${label}`, ...(vortices ? ['Enhanced, median'] : []), 'Plain'],
+        columns: [`Gust, ${label}`, ...(vortices ? [barsAre.charAt(0).toUpperCase() + barsAre.slice(1)] : []), 'Plain'],
         rows: labels.map((bin, index) => [bin, ...(vortices ? [count(enhanced[index]!)] : []), count(plain[index]!)]),
       }}
     >

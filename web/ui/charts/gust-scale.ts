@@ -9,6 +9,14 @@ export const DIFFERENCE_TOKENS = Array.from({ length: 11 }, (_, index) => `--dif
 /** Position of the pale zero step among the eleven. */
 const ZERO_STEP = 5;
 
+/** Lower edges of the bands of a chance, in per cent. */
+export const CHANCE_EDGES = [5, 10, 25, 50, 75, 90, 95] as const;
+export const CHANCE_TOKENS = CHANCE_EDGES.map((edge) => `--chance-${edge}`);
+
+/** Token of a chance’s colour by the lower edge of its band, in parts of one; null below the first. */
+export const chanceToken = (chance: number): string | null =>
+  CHANCE_TOKENS[CHANCE_EDGES.findLastIndex((edge) => edge <= Math.round(100 * chance))] ?? null;
+
 /** Index of the step a gust falls in, -1 below the scale. */
 const gustStep = (speedMs: number): number =>
   Math.min(GUST_EDGES_MS.length - 1, Math.floor((speedMs - GUST_EDGES_MS[0]) / GUST_STEP_MS));

@@ -18,6 +18,7 @@ import {
   cellFeatures,
   chosenFeatures,
   contourFeatures,
+  edgeFeatures,
   fixFeatures,
   graticule,
   landFeatures,
@@ -42,6 +43,10 @@ export interface MapCanvasProps {
   /** Paths of changed copies of the track, thin and dashed. */
   variants?: readonly (readonly LonLat[])[];
   bands?: MapBands | null;
+  /** The bands are of what was shown before; others are on their way. */
+  dimmed?: boolean;
+  /** Room kept free of the framed area on each side, where other things float over the map [px]. */
+  padding?: MapPadding;
   sites?: MapSites | null;
   /** Index into the sites. */
   chosenSite?: number | null;
@@ -59,6 +64,16 @@ export interface MapCanvasProps {
   onFail: (reason: string) => void;
 }
 
+export interface MapPadding {
+  top: number;
+  right: number;
+  bottom: number;
+  left: number;
+}
+
+const EVEN: MapPadding = { top: 12, right: 12, bottom: 12, left: 12 };
+/** Bands of what was shown before. */
+const DIM = 0.4;
 const PICK_PX = 14;
 /** Wider than this, the coarse land is as good as the fine one. */
 const FINE_BELOW_DEG = 40;
@@ -99,6 +114,8 @@ export function MapCanvas(props: MapCanvasProps) {
     track,
     variants,
     bands,
+    dimmed = false,
+    padding = EVEN,
     sites = null,
     chosenSite = null,
     fixes,
@@ -111,7 +128,7 @@ export function MapCanvas(props: MapCanvasProps) {
   const [pointed, setPointed] = useState<{ x: number; y: number; text: string } | null>(null);
 
   const onFail = useEffectEvent((reason: string) => props.onFail(reason));
-  const firstBounds = useEffectEvent(() => bounds);
+  const firstBounds = useEffectEvent(() => ({ bounds, fitBoundsOptions: { padding } }));
   const moved = useEffectEvent((map: MapEngine) => {
     const now = boundsIn(map);
     setView(now);
@@ -159,8 +176,7 @@ export function MapCanvas(props: MapCanvasProps) {
       map = new MapEngine({
         container: frame.current!,
         style: mapStyle(token),
-        bounds: firstBounds(),
-        fitBoundsOptions: { padding: 12 },
+        ...firstBounds(),
         attributionControl: false,
         dragRotate: false,
         pitchWithRotate: false,
@@ -231,8 +247,13 @@ export function MapCanvas(props: MapCanvasProps) {
     if (!started) return;
     setData(started, 'bands', bands ? bandFeatures(bands, started.token) : emptyCollection());
     setData(started, 'contours', bands ? contourFeatures(bands) : emptyCollection());
+    setData(started, 'edge', bands ? edgeFeatures(bands) : emptyCollection());
     started.map.setLayoutProperty('coast-over-bands', 'visibility', bands ? 'visible' : 'none');
   }, [started, bands]);
+
+  useEffect(() => {
+    started?.map.setPaintProperty('bands', 'fill-opacity', dimmed ? DIM : 1);
+  }, [started, dimmed]);
 
   useEffect(() => {
     if (!started || !view) return;
@@ -267,9 +288,10 @@ export function MapCanvas(props: MapCanvasProps) {
   }, [started, fixes, chosenFix, ringM]);
 
   const [west, south, east, north] = bounds;
+  const { top, right, bottom, left } = padding;
   useEffect(() => {
-    started?.map.fitBounds([west, south, east, north], { padding: 12, animate: false });
-  }, [started, west, south, east, north]);
+    started?.map.fitBounds([west, south, east, north], { padding: { top, right, bottom, left }, animate: false });
+  }, [started, west, south, east, north, top, right, bottom, left]);
 
   const walk = (event: KeyboardEvent) => {
     if (!sites || !view || (event.key !== 'n' && event.key !== 'p') || event.ctrlKey || event.metaKey) return;

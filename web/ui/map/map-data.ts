@@ -22,6 +22,9 @@ export interface MapBands {
   /** Lower edges, ascending. */
   levels: readonly number[];
   features: readonly { properties: { level: number }; geometry: MultiPolygon }[];
+  /** Bounds of the bands, and of the rectangle that was worked out. */
+  bbox?: Bounds;
+  computed?: Bounds | null;
 }
 
 export interface TrackTime {

@@ -10,8 +10,8 @@ import type {
 } from 'geojson';
 import { clock, shortDay } from '../../lib/dates.ts';
 import { count } from '../../lib/numbers.ts';
-import { differenceToken, gustToken } from '../charts/gust-scale.ts';
-import { circleAround, longitudeNear, type LonLat } from './geography.ts';
+import { chanceToken, differenceToken, gustToken } from '../charts/gust-scale.ts';
+import { circleAround, longitudeNear, type Bounds, type LonLat } from './geography.ts';
 import type { LandPolygons } from './land.ts';
 import {
   leadingGust,
@@ -61,7 +61,12 @@ export const graticule = (stepDeg: number) => {
 export const bandFeatures = ({ view, levels, features }: MapBands, token: MapTokens) =>
   collection<MultiPolygon>(
     features.map(({ properties: { level }, geometry }) => {
-      const name = view === 'difference' ? differenceToken(level, levels) : gustToken(level);
+      const name =
+        view === 'difference'
+          ? differenceToken(level, levels)
+          : view === 'chance'
+            ? chanceToken(level)
+            : gustToken(level);
       return { type: 'Feature', geometry, properties: { level, colour: name ? token(name) : 'rgba(0,0,0,0)' } };
     }),
   );
@@ -69,6 +74,7 @@ export const bandFeatures = ({ view, levels, features }: MapBands, token: MapTok
 const CONTOUR_STEP_MS = 10;
 /** From here up a hairline must be light to be seen. */
 const DARK_FROM_MS = 50;
+const DARK_FROM_CHANCE = 0.5;
 
 /** Neighbouring bands share whole rings, in either direction: the same points, so the same smallest one. */
 const ringKey = (ring: readonly Position[]) => {
@@ -76,11 +82,11 @@ const ringKey = (ring: readonly Position[]) => {
   return `${ring.length} ${points.reduce((least, point) => (point < least ? point : least), points[0] ?? '')}`;
 };
 
-/** Hairlines on each full ten: a band's rings without those it shares with the band above it. */
+/** Hairlines on each full ten, or on each step of a chance: a band's rings without those it shares with the next. */
 export const contourFeatures = ({ view, levels, features }: MapBands) =>
   collection<MultiLineString>(
     (view === 'difference' ? [] : features)
-      .filter(({ properties: { level } }) => level % CONTOUR_STEP_MS === 0)
+      .filter(({ properties: { level } }) => view === 'chance' || level % CONTOUR_STEP_MS === 0)
       .map(({ properties: { level }, geometry }) => {
         const above = levels[levels.indexOf(level) + 1];
         const shared = new Set(
@@ -90,7 +96,7 @@ export const contourFeatures = ({ view, levels, features }: MapBands) =>
         );
         return {
           type: 'Feature',
-          properties: { dark: level >= DARK_FROM_MS },
+          properties: { dark: level >= (view === 'chance' ? DARK_FROM_CHANCE : DARK_FROM_MS) },
           geometry: {
             type: 'MultiLineString',
             coordinates: geometry.coordinates.flat().filter((ring) => !shared.has(ringKey(ring))),
@@ -98,6 +104,35 @@ export const contourFeatures = ({ view, levels, features }: MapBands) =>
         };
       }),
   );
+
+const EDGE_DEG = 0.01;
+
+/** Sides of the worked-out rectangle at which bands break off, though the wind goes on. */
+export const edgeFeatures = ({ bbox, computed, features }: MapBands) => {
+  if (!bbox || !computed || features.length === 0) return collection<LineString>([]);
+  const [west, south, east, north] = computed;
+  const sides: Bounds[] = [
+    [west, north, west, south],
+    [west, south, east, south],
+    [east, south, east, north],
+    [west, north, east, north],
+  ];
+  return collection<LineString>(
+    sides
+      .filter((_side, index) => Math.abs(bbox[index]! - computed[index]!) < EDGE_DEG)
+      .map(([x0, y0, x1, y1]) => ({
+        type: 'Feature',
+        properties: {},
+        geometry: {
+          type: 'LineString',
+          coordinates: [
+            [x0, y0],
+            [x1, y1],
+          ],
+        },
+      })),
+  );
+};
 
 export const trackFeatures = ({ path }: MapTrack) =>
   collection<LineString>(

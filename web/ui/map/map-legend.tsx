@@ -1,10 +1,18 @@
 import { useState } from 'react';
 import { ChevronDown, ChevronUp } from 'lucide-react';
+import { classNames } from '../../lib/class-names.ts';
 import { decimal } from '../../lib/numbers.ts';
 import { useNarrow } from '../../lib/use-narrow.ts';
 import { useUnits } from '../../lib/units.tsx';
 import { percentOf } from '../charts/axis.ts';
-import { differenceToken, GUST_EDGES_MS, GUST_TICKS_MS, GUST_TOKENS } from '../charts/gust-scale.ts';
+import {
+  CHANCE_EDGES,
+  CHANCE_TOKENS,
+  differenceToken,
+  GUST_EDGES_MS,
+  GUST_TICKS_MS,
+  GUST_TOKENS,
+} from '../charts/gust-scale.ts';
 import type { MapView } from './map-data.ts';
 
 const TITLES: Record<MapView, string> = {
@@ -14,7 +22,7 @@ const TITLES: Record<MapView, string> = {
   p99: 'Peak 3-second gust, enhanced 99 %',
   difference: 'Enhanced median less plain',
   draw: 'Peak 3-second gust, one draw',
-  chance: 'Chance over the draws',
+  chance: 'Chance',
 };
 
 interface MapLegendProps {
@@ -24,11 +32,17 @@ interface MapLegendProps {
   /** Whether the picture rests on vortex draws. */
   uncertain: boolean;
   run?: string | undefined;
+  /** The gust whose chance is shown [m/s]. */
+  chanceMs?: number | undefined;
 }
 
 /** Steps in the map's very colours, ticks in the person's unit; folds to its bar on a phone. */
-export function MapLegend({ view, levels, uncertain, run }: MapLegendProps) {
-  const { label } = useUnits();
+export function MapLegend({ view, levels, uncertain, run, chanceMs }: MapLegendProps) {
+  const { gust, label } = useUnits();
+  const title =
+    view === 'chance' && chanceMs !== undefined
+      ? `Chance of ${gust(chanceMs)} ${label} or more, %`
+      : `${TITLES[view]}, ${label}`;
   const narrow = useNarrow();
   const [open, setOpen] = useState(!narrow);
   const Fold = open ? ChevronDown : ChevronUp;
@@ -38,9 +52,7 @@ export function MapLegend({ view, levels, uncertain, run }: MapLegendProps) {
       className="w-72 max-w-full rounded-2 border border-rule bg-sheet px-3 pt-2 pb-1.5 text-12 shadow-2"
     >
       <h3 className="flex items-baseline gap-2 text-12 font-bold tracking-normal">
-        <span>
-          {TITLES[view]}, {label}
-        </span>
+        <span>{title}</span>
         <button
           type="button"
           aria-expanded={open}
@@ -51,11 +63,21 @@ export function MapLegend({ view, levels, uncertain, run }: MapLegendProps) {
           <Fold size={14} aria-hidden />
         </button>
       </h3>
-      {view === 'difference' ? <DifferenceSteps levels={levels} /> : <GustSteps />}
+      {view === 'difference' ? (
+        <DifferenceSteps levels={levels} />
+      ) : view === 'chance' ? (
+        <ChanceSteps />
+      ) : (
+        <GustSteps />
+      )}
       {open && (
         <p className="mt-1 leading-snug text-ink-2">
           10 m height, terrain as found.
-          {uncertain && ' One effect’s spread over 264 draws; real storms differ.'}
+          {view === 'draw'
+            ? ' One draw of 264; others differ.'
+            : view === 'chance'
+              ? ' Share of 264 draws of this one track, by weight; not the chance of the storm.'
+              : uncertain && ' One effect’s spread over 264 draws; real storms differ.'}
           {run && <span className="hidden print:inline"> Run {run}.</span>}
         </p>
       )}
@@ -84,6 +106,25 @@ export function GustSteps() {
           </span>
         ))}
         <span className="absolute top-0.5 right-0">{decimal(toUnit(85), 0)}+</span>
+      </div>
+    </>
+  );
+}
+
+function ChanceSteps() {
+  return (
+    <>
+      <div className="mt-1.5 flex h-3 border border-edge">
+        {CHANCE_TOKENS.map((token) => (
+          <span key={token} className="flex-1" style={{ background: `var(${token})` }} />
+        ))}
+      </div>
+      <div className="flex h-4.5">
+        {CHANCE_EDGES.map((edge) => (
+          <span key={edge} className="flex-1 pt-0.5">
+            {edge}
+          </span>
+        ))}
       </div>
     </>
   );
@@ -118,10 +159,15 @@ function DifferenceSteps({ levels }: { levels: readonly number[] }) {
 }
 
 /** What the shapes mean; drawn by the same geometry as the map's marks. */
-export function SiteShapes({ held }: { held: boolean }) {
+export function SiteShapes({ held, className }: { held: boolean; className?: string }) {
   const mark = 'inline-block size-2.5 border-[1.5px] border-(--p-ink) dark:border-(--ink)';
   return (
-    <ul className="flex flex-wrap gap-x-3.5 rounded-2 border border-rule bg-sheet px-3 py-1.5 text-12 shadow-2">
+    <ul
+      className={classNames(
+        'flex flex-wrap gap-x-3.5 rounded-2 border border-rule bg-sheet px-3 py-1.5 text-12 shadow-2',
+        className,
+      )}
+    >
       <li className="flex items-center gap-1.5">
         <span className={`${mark} rounded-pill bg-(--p-porcelain)`} /> Ready
       </li>

@@ -1,4 +1,4 @@
-import { DIFFERENCE_TOKENS, GUST_TOKENS } from '../charts/gust-scale.ts';
+import { CHANCE_TOKENS, DIFFERENCE_TOKENS, GUST_TOKENS } from '../charts/gust-scale.ts';
 
 const NAMES = [
   '--map-sea',
@@ -15,6 +15,7 @@ const NAMES = [
   '--ink',
   ...GUST_TOKENS,
   ...DIFFERENCE_TOKENS,
+  ...CHANCE_TOKENS,
 ];
 
 /** The colours of the present theme as the map engine wants them: the very values the legend uses. */

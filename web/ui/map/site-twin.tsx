@@ -13,6 +13,13 @@ interface SiteTwinProps {
   view: Bounds | null;
   chosenSite: number | null;
   onChooseSite?: ((index: number) => void) | undefined;
+  /** What the picture shows that is no column otherwise. */
+  shown?: TwinColumn | undefined;
+}
+
+export interface TwinColumn {
+  title: string;
+  text: (index: number) => string;
 }
 
 const MOST_ROWS = 200;
@@ -31,7 +38,7 @@ const nearestTime = (track: MapTrack, [longitude, latitude]: LonLat): string | n
 };
 
 /** The map as a table: what is in view, strongest gust first. */
-export function SiteTwin({ sites, track, view, chosenSite, onChooseSite }: SiteTwinProps) {
+export function SiteTwin({ sites, track, view, chosenSite, onChooseSite, shown: column }: SiteTwinProps) {
   const { gust, gustRange, label } = useUnits();
   const order = useMemo(
     () => byGust(sites, view ? sitesInView(sites, view) : sites.siteNo.map((_, index) => index)),
@@ -48,6 +55,7 @@ export function SiteTwin({ sites, track, view, chosenSite, onChooseSite }: SiteT
         <thead className="sticky top-0 z-1 bg-sheet">
           <tr>
             <Th>Site</Th>
+            {column && <Th numeric>{column.title}</Th>}
             <Th numeric priority={2}>
               Plain, {label}
             </Th>
@@ -60,7 +68,9 @@ export function SiteTwin({ sites, track, view, chosenSite, onChooseSite }: SiteT
         </thead>
         <tbody>
           {shown.length === 0 && (
-            <EmptyRow columns={5}>No site in view. Zoom out on the map, or pan with the arrow keys.</EmptyRow>
+            <EmptyRow columns={column ? 6 : 5}>
+              No site in view. Zoom out on the map, or pan with the arrow keys.
+            </EmptyRow>
           )}
           {shown.map((index) => {
             const point: LonLat = [sites.longitude[index]!, sites.latitude[index]!];
@@ -84,6 +94,7 @@ export function SiteTwin({ sites, track, view, chosenSite, onChooseSite }: SiteT
                     sites.ref[index]
                   )}
                 </Td>
+                {column && <Td numeric>{column.text(index)}</Td>}
                 <Td numeric priority={2}>
                   {plain === null || plain === undefined ? 'not scored' : gust(plain)}
                 </Td>

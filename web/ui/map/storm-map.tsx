@@ -6,10 +6,10 @@ import { useTheme } from '../../lib/theme.ts';
 import { useUnits } from '../../lib/units.tsx';
 import { Segmented } from '../segmented.tsx';
 import type { Bounds } from './geography.ts';
-import type { MapCanvasProps } from './map-canvas.tsx';
+import type { MapCanvasProps, MapPadding } from './map-canvas.tsx';
 import type { MapBands, MapSites, MapTrack, MapView } from './map-data.ts';
 import { MapLegend, SiteShapes } from './map-legend.tsx';
-import { SiteTwin } from './site-twin.tsx';
+import { SiteTwin, type TwinColumn } from './site-twin.tsx';
 import { hasWebGl } from './webgl.ts';
 
 // The engine is as large as the rest of the client together; nobody waits for it before there is a map to draw.
@@ -39,8 +39,18 @@ interface StormMapProps {
   chosenSite: number | null;
   onChooseSite?: (index: number) => void;
   view: MapView;
-  views: readonly MapView[];
-  onView: (view: MapView) => void;
+  /** A switch of a few views; whoever needs more than that brings controls. */
+  views?: readonly MapView[];
+  onView?: (view: MapView) => void;
+  controls?: ReactNode;
+  /** Said on the frame of the picture itself. */
+  frameNote?: ReactNode;
+  /** The bands are of the view shown before. */
+  dimmed?: boolean;
+  /** Room the framed area leaves to what floats over the map [px]. */
+  padding?: MapPadding;
+  chanceMs?: number | undefined;
+  twinColumn?: TwinColumn | undefined;
   /** Where the same map fills the page, or leads back. */
   fullSize?: { to: string; isFull: boolean };
   run?: string;
@@ -56,6 +66,7 @@ export function StormMap(props: StormMapProps) {
   const [asTable, setAsTable] = useState(false);
   const [inView, setInView] = useState<Bounds | null>(null);
   const showTable = asTable || failure !== null;
+  const shown = bands?.view ?? view;
 
   const describeSite = (index: number): string => {
     const low = sites?.p5Ms[index];
@@ -73,6 +84,8 @@ export function StormMap(props: StormMapProps) {
     bounds,
     track,
     bands,
+    dimmed: props.dimmed ?? false,
+    ...(props.padding && { padding: props.padding }),
     sites,
     chosenSite,
     onChooseSite,
@@ -101,17 +114,24 @@ export function StormMap(props: StormMapProps) {
         </CanvasBoundary>
       )}
       {showTable && sites && (
-        <SiteTwin {...{ sites, track, chosenSite, onChooseSite }} view={failure === null ? inView : null} />
+        <SiteTwin
+          {...{ sites, track, chosenSite, onChooseSite }}
+          view={failure === null ? inView : null}
+          shown={props.twinColumn}
+        />
       )}
       <p className="sr-only">{summary}</p>
       <div className="pointer-events-none absolute inset-x-3 top-3 z-2 flex items-start gap-2 [&>*]:pointer-events-auto">
-        <Segmented
-          label="Map shows"
-          value={view}
-          options={views.map((value) => ({ value, label: VIEW_LABELS[value] }))}
-          onChange={props.onView}
-          className="shadow-2"
-        />
+        {views && props.onView && (
+          <Segmented
+            label="Map shows"
+            value={view}
+            options={views.map((value) => ({ value, label: VIEW_LABELS[value] }))}
+            onChange={props.onView}
+            className="shadow-2"
+          />
+        )}
+        {props.controls}
         <div className="ml-auto flex gap-2">
           {failure === null && (
             <Tool
@@ -139,15 +159,23 @@ export function StormMap(props: StormMapProps) {
       )}
       {!showTable && (
         <div className="pointer-events-none absolute inset-x-3 bottom-3 z-2 flex items-end justify-between gap-2 max-rail:flex-col max-rail:items-end [&>*]:pointer-events-auto">
-          <div className="flex flex-col items-start gap-2 max-rail:hidden">
+          <div className="flex min-w-0 flex-col items-start gap-2 max-rail:self-stretch">
             {bandsNote && (
               <p role="status" className="rounded-2 border border-rule bg-sheet px-3 py-1.5 text-12 shadow-2">
                 {bandsNote}
               </p>
             )}
-            {sites && <SiteShapes held={sites.state.includes('held')} />}
+            {props.frameNote}
+            {sites && <SiteShapes held={sites.state.includes('held')} className="max-rail:hidden" />}
           </div>
-          <MapLegend view={view} levels={bands?.levels ?? []} uncertain={view !== 'plain'} run={props.run} />
+          <MapLegend
+            // The legend is that of the picture, also while another is on its way.
+            view={shown}
+            levels={bands?.levels ?? []}
+            uncertain={shown !== 'plain'}
+            run={props.run}
+            chanceMs={props.chanceMs}
+          />
         </div>
       )}
     </section>
