@@ -83,6 +83,13 @@ describe('the configuration', () => {
   it.each(['6', '0.5', 'all'])('trusts no proxies by “%s”', (TRUSTED_PROXIES) => {
     expect(faultsOf({ ...usable(), TRUSTED_PROXIES })).toEqual(['TRUSTED_PROXIES']);
   });
+  it.each(['0', '-6', '8761', 'never'])('takes no age of stale tracks from “%s”', (STALE_AFTER_HOURS) => {
+    expect(faultsOf({ ...usable(), STALE_AFTER_HOURS })).toEqual(['STALE_AFTER_HOURS']);
+  });
+  it('calls a track stale after six hours unless told otherwise', () => {
+    expect(readConfig({ ...usable(), STALE_AFTER_HOURS: '' }).staleAfterHours).toBe(6);
+    expect(readConfig({ ...usable(), STALE_AFTER_HOURS: '3.5' }).staleAfterHours).toBe(3.5);
+  });
   it('trusts no proxy unless told to', () => expect(readConfig(usable()).trustedProxies).toBe(0));
 });
 

@@ -34,6 +34,8 @@ const BODIES: Record<string, (ids: Record<string, string>) => object> = {
   }),
   spread: ({ editionId }) => ({ editionId }),
   windField: () => ({ time: TRACK_FIX.time }),
+  previewVariants: () => ({ changes: [{ offsetKm: 40 }] }),
+  saveVariants: () => ({ changes: [{ offsetKm: 40 }] }),
 };
 /** Operations that take ids in their body only. */
 const IDS_IN_BODY = ['createQuote', 'draftCalibration'];

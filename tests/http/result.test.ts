@@ -2,14 +2,14 @@ import { parse } from 'csv-parse/sync';
 import { describe, expect, it } from 'vitest';
 import { ALL_ENDPOINTS } from '#contract/all.ts';
 import { NOTICE_VERSION } from '#contract/notices.ts';
-import { Footprint, ResultPoints, Run, SiteDetail, SitesPage, type SiteResult } from '#contract/runs.ts';
+import { Footprint, ResultPoints, Run, RunSlip, SiteDetail, SitesPage, type SiteResult } from '#contract/runs.ts';
 import { createTestApp } from '../helpers/app.ts';
 import { inlinePool } from '../helpers/inline-pool.ts';
 import { DUNE, REEF } from '../helpers/people.ts';
 import { addRunFixture, gulfTrack } from '../helpers/run-fixture.ts';
 
 const HOSTILE = ['=1+2', '+1', '-1', '@x', '\t=1', '\r=1', 'plain, "quoted"', '100%_a'];
-const { container, database, signIn } = await createTestApp({ pool: inlinePool({ draws: true }) });
+const { clock, container, database, signIn } = await createTestApp({ pool: inlinePool({ draws: true }) });
 const book = await addRunFixture(database, {
   sites: 40,
   near: 30,
@@ -34,6 +34,35 @@ const page = async (query = ''): Promise<SitesPage> =>
 it('quotes and charges only what is within reach', () => {
   expect(quote).toMatchObject({ siteScenarios: 40, outOfReach: 10, units: 30 });
   expect(run.scenarios[0]!.result).toMatchObject({ sitesScored: 30, outOfReach: 10 });
+});
+
+it('says how old the advisory was when the run was accepted, whenever it is read', async () => {
+  const age = (Date.parse(run.acceptedAt) - Date.parse('2026-09-02T21:00:00Z')) / 3_600_000;
+  const stated = { asOf: '2026-09-02T21:00:00.000Z', ageHoursWhenRun: age, staleWhenRun: true };
+  const slipOf = async () => RunSlip.parse((await underwriter.get(`/runs/${run.id}/slip`).expect(200)).body);
+  const before = await slipOf();
+  expect(run.scenarios[0]).toMatchObject({ ...stated, stale: { ageHours: age } });
+  expect(before.scenarios[0]).toMatchObject(stated);
+  const days = `${Math.floor(age / 24)} days old when run, stale`;
+  for (const { notices } of [run, before, await page()]) {
+    expect(notices.find(({ code }) => code === 'provisional')!.text).toContain(days);
+  }
+  clock.pass(5 * 3_600_000);
+  try {
+    const later = Run.parse((await underwriter.get(`/runs/${run.id}`).expect(200)).body);
+    expect(later.scenarios[0]).toMatchObject(stated);
+    expect(later.scenarios[0]!.stale!.ageHours).toBeCloseTo(age + 5, 6);
+    expect(later.notices).toEqual(run.notices);
+    expect(await slipOf()).toEqual(before);
+  } finally {
+    clock.pass(-5 * 3_600_000);
+  }
+  const rows: Record<string, string>[] = parse((await underwriter.get(`${base}/sites.csv`).expect(200)).text, {
+    columns: true,
+  });
+  expect(new Set(rows.map((row) => `${row.track_age_when_run_h} ${row.track_stale_when_run}`))).toEqual(
+    new Set([`${age.toFixed(1)} stale`]),
+  );
 });
 
 it('says when a track isn’t finished', () => {
@@ -141,6 +170,8 @@ describe('the CSV export', () => {
         'notice_version',
         'hours_above_33_m_s',
         'track_as_of_utc',
+        'track_age_when_run_h',
+        'track_stale_when_run',
       ]),
     );
     expect(rows.every((row) => row.notice_version === NOTICE_VERSION)).toBe(true);

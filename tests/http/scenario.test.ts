@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { Problem } from '#contract/errors.ts';
@@ -54,6 +55,36 @@ describe('a saved scenario', () => {
   it('says that it is provisional when it is taken from an advisory', async () => {
     const advisory = { ...track, declarations: { ...track.declarations, asOf: '2030-09-01T00:00:00.000Z' } };
     expect((await create({ track: advisory })).notices.map(({ code }) => code)).toContain('provisional');
+  });
+
+  it('is stale once its advisory is older than six hours, at the time of reading', async () => {
+    const at = (hoursAgo: number) => new Date(clock.now().getTime() - hoursAgo * 3_600_000).toISOString();
+    const from = (asOf: string) => ({ ...track, declarations: { ...track.declarations, asOf } });
+    expect((await create()).stale).toBeNull();
+    expect((await create({ track: from(at(7)) })).stale).toEqual({ asOf: at(7), ageHours: 7 });
+    const { scenarioId, stale } = await create({ track: from(at(5)) });
+    expect(stale).toBeNull();
+    clock.pass(2 * 3_600_000);
+    const again = ScenarioVersion.parse((await modeler.get(`/scenarios/${scenarioId}`).expect(200)).body);
+    expect(again.stale!.ageHours).toBeCloseTo(7, 9);
+    const { items } = listScenarios.response.parse((await modeler.get('/scenarios?limit=500').expect(200)).body);
+    expect(items.find(({ id }) => id === scenarioId)!.stale).toEqual(again.stale);
+  });
+
+  it('keeps the digest it had before 34- and 50-kt radii were read', async () => {
+    const old = moved([fixAt(0), fixAt(6)].map(({ radius34KtM: _34, radius50KtM: _50, ...fix }) => fix as Fix));
+    const bare = await create({ track: old });
+    // Of the fields in their fixed order, as they were written down before there were others.
+    const canonical = [
+      ...['track-1', 600, 'Made up for a test', null],
+      [fixAt(0), fixAt(6)].map((fix) => [
+        ...[fix.time, fix.latitude, fix.longitude, 960, null, 45, null, null, null, null, null],
+      ]),
+    ];
+    expect(bare.digest).toBe(createHash('sha256').update(JSON.stringify(canonical)).digest('hex'));
+    expect(bare.track.fixes[0]).toMatchObject({ radius34KtM: null, radius50KtM: null });
+    const wider = await create({ track: moved([fixAt(0, { radius34KtM: [1e5, 1e5, 1e5, 1e5] }), fixAt(6)]) });
+    expect(wider.digest).not.toBe(bare.digest);
   });
 
   it('gets a next version, and refuses one based on an old one', async () => {

@@ -27,11 +27,12 @@ const asCsv = (text: string): string => {
         ((Number(c[6]) * 1852) / 3600).toFixed(4),
         60,
         km(c[20]!),
-        ...[16, 17, 18, 19].map((at) => km(c[at]!)),
+        ...[8, 9, 10, 11, 12, 13, 14, 15, 16, 17, 18, 19].map((at) => km(c[at]!)),
       ].join(',');
     });
   return [
-    'time_utc,latitude,longitude,central_pressure_hpa,max_wind_ms,wind_averaging_s,radius_of_max_wind_km,radius_64kt_ne_km,radius_64kt_se_km,radius_64kt_sw_km,radius_64kt_nw_km',
+    'time_utc,latitude,longitude,central_pressure_hpa,max_wind_ms,wind_averaging_s,radius_of_max_wind_km,' +
+      [34, 50, 64].flatMap((knots) => ['ne', 'se', 'sw', 'nw'].map((q) => `radius_${knots}kt_${q}_km`)).join(','),
     ...rows,
   ].join('\n');
 };
@@ -52,6 +53,13 @@ describe('NOAA best-track text', () => {
     expect(landfall!.maxWindMs! / (1852 / 3600)).toBeCloseTo(130, 9);
     expect(landfall!.radiusOfMaxWindM! / 1852).toBeCloseTo(20, 9);
     expect(landfall!.radius64KtM!.map((radius) => radius / 1852)).toEqual([30, 40, 30, 45]);
+    const line = stored('AL092022_IAN.txt')
+      .split('\n')
+      .find((text) => text.startsWith('20220928, 1905'))!
+      .split(',')
+      .map((cell) => Number(cell.trim()));
+    expect(landfall!.radius34KtM!.map((radius) => radius / 1852)).toEqual(line.slice(8, 12));
+    expect(landfall!.radius50KtM!.map((radius) => radius / 1852)).toEqual(line.slice(12, 16));
   });
 
   it('never reads a missing code as a number', () => {
@@ -66,6 +74,8 @@ describe('NOAA best-track text', () => {
       maxWindMs: null,
       centralPressureHpa: null,
       radiusOfMaxWindM: null,
+      radius34KtM: [0, 0, 0, 0],
+      radius50KtM: [0, 0, 0, 0],
       radius64KtM: [0, 0, 0, 0],
     });
   });
@@ -133,8 +143,10 @@ describe('our track CSV', () => {
       ]);
       expect(near(fix.maxWindMs, other.maxWindMs, 5e-5)).toBe(true);
       expect(near(fix.radiusOfMaxWindM, other.radiusOfMaxWindM, 0.5)).toBe(true);
-      expect(fix.radius64KtM === null).toBe(other.radius64KtM === null);
-      fix.radius64KtM?.forEach((radius, q) => expect(near(radius, other.radius64KtM![q]!, 0.5)).toBe(true));
+      for (const field of ['radius34KtM', 'radius50KtM', 'radius64KtM'] as const) {
+        expect(fix[field] === null).toBe(other[field] === null);
+        fix[field]?.forEach((radius, q) => expect(near(radius, other[field]![q]!, 0.5)).toBe(true));
+      }
     });
   });
 

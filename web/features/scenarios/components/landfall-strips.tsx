@@ -11,6 +11,9 @@ import { placeWords, shiftKm } from '../landfalls.ts';
 const extent = (values: readonly number[]): [number, number] => [Math.min(...values), Math.max(...values)];
 const moment = (instant: string | Date) => `${shortDay(instant)} ${clock(instant)}`;
 
+const everyVariant = (count: number) =>
+  count === 1 ? 'The variant' : count === 2 ? 'Both variants' : `All ${count} variants`;
+
 interface LandfallStripsProps {
   reply: VariantsReply;
   fileName: string;
@@ -50,7 +53,7 @@ export function LandfallStrips({ reply, fileName }: LandfallStripsProps) {
   const words =
     ashore.length === 0
       ? `None of ${counted(variants.length, 'variant')} comes ashore.`
-      : `${ashore.length === variants.length ? (variants.length === 1 ? 'The variant' : `All ${variants.length} variants`) : `${ashore.length} of ${variants.length} variants`} ${ashore.length === 1 ? 'comes' : 'come'} ashore, with ${gustRange(...extent(landfallWinds))} ${label}, ${moment(new Date(Math.min(...times)))} to ${moment(new Date(Math.max(...times)))} UTC.`;
+      : `${ashore.length === variants.length ? everyVariant(variants.length) : `${ashore.length} of ${variants.length} variants`} ${ashore.length === 1 ? 'comes' : 'come'} ashore, with ${gustRange(...extent(landfallWinds))} ${label}, ${moment(new Date(Math.min(...times)))} to ${moment(new Date(Math.max(...times)))} UTC.`;
 
   return (
     <ChartFrame
