@@ -61,6 +61,7 @@ export function FactsStrip({ ring, isOld }: { ring: RingReply; isOld: boolean })
           'grid grid-cols-7 max-xl:grid-cols-4 max-md:grid-cols-2',
           '[&>div]:border-rule [&>div]:px-3.5 [&>div]:py-2.75 [&>div+div]:border-l',
           'max-xl:[&>div:nth-child(4n+1)]:border-l-0 max-xl:[&>div:nth-child(n+5)]:border-t',
+          'max-xl:[&>div:last-child]:col-span-2',
           'max-md:[&>div:nth-child(odd)]:border-l-0 max-md:[&>div:nth-child(n+3)]:border-t',
           isOld && 'opacity-70',
         )}

@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import { TriangleAlert } from 'lucide-react';
+import { classNames } from '../../../lib/class-names.ts';
 import { decimal } from '../../../lib/numbers.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { Card } from '../../../ui/card.tsx';
@@ -132,11 +133,17 @@ function NumberControl({ label, unit, limits, ends, value, decimals, scale, onCh
   // The ends are typed as they are written, rounded.
   const slack = scale ? 0.06 : 1e-9;
   const isGood = meant >= limits.least - slack && meant <= limits.most + slack;
-  const low = `${text(limits.least)}${ends ? ` ${ends[0]}` : ''}`;
-  const high = `${text(limits.most)}${ends ? ` ${ends[1]}` : ''}`;
+  const end = (at: number) => scale?.text(at) ?? String(at);
+  const low = `${end(limits.least)}${ends ? ` ${ends[0]}` : ''}`;
+  const high = `${end(limits.most)}${ends ? ` ${ends[1]}` : ''}`;
   return (
     <div>
-      <div className="grid grid-cols-[minmax(0,1fr)_7.75rem] items-start gap-x-3">
+      <div
+        className={classNames(
+          'grid items-start gap-x-2',
+          unit.length > 4 ? 'grid-cols-[minmax(0,1fr)_7.5rem]' : 'grid-cols-[minmax(0,1fr)_6rem]',
+        )}
+      >
         <span className="pt-1.75 text-13 font-bold" aria-hidden>
           {label}
         </span>

@@ -113,7 +113,7 @@ export function StabilityPicture({ map, width, eye, onPick }: StabilityPicturePr
             onPointerMove={(event) => {
               if (event.currentTarget.hasPointerCapture(event.pointerId)) follow(event);
             }}
-            className="relative h-58 cursor-crosshair touch-pan-y overflow-hidden bg-[#F7F5F0] text-[#14262E]"
+            className="relative h-58 cursor-crosshair touch-pan-y bg-[#F7F5F0] text-[#14262E]"
           >
             <svg
               aria-hidden
