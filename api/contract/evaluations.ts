@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { Instant } from './common.ts';
 import { endpoint } from './endpoint.ts';
-import { Anchor, Averaging, Intensity } from './scenarios.ts';
+import { Anchor, Averaging, Intensity, Regime } from './scenarios.ts';
 import { WindChoices } from './wind-choices.ts';
 
 /** Greatest number of sites in one evaluation. */
@@ -91,6 +91,7 @@ export const EvaluationOptions = z.strictObject({
   intensity: Intensity.default('pressure'),
   anchor: Anchor.default('auto'),
   mesovortices: z.boolean().default(true),
+  regime: Regime.default('mixed'),
   timeStepS: between(5, 3600, ' s').default(300),
   innerTimeStepS: between(5, 3600, ' s').default(60),
   ...WindChoices.shape,

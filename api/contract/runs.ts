@@ -3,7 +3,7 @@ import { Currency, Digest, Id, Instant, LossRange, Minor, Notice, PageQuery, pag
 import { endpoint } from './endpoint.ts';
 import { LocationQuality, Reconciliation, RowState, Terrain } from './portfolios.ts';
 import { EVERY_ROLE, READERS, UNDERWRITERS } from './roles.ts';
-import { Anchor, Intensity } from './scenarios.ts';
+import { Anchor, Intensity, Regime } from './scenarios.ts';
 import { Stale } from './track-age.ts';
 import { WindChoices } from './wind-choices.ts';
 
@@ -14,6 +14,8 @@ export const RunOptions = z.object({
   mesovortices: z.boolean().default(true),
   intensity: Intensity.default('pressure'),
   anchor: Anchor.default('auto'),
+  /** Strengths the vortices are drawn from; mixed where there is none. */
+  regime: Regime.optional(),
   /** Published relations of the wind field other than the defaults; runs stored before there was a choice have none. */
   wind: WindChoices.optional(),
   /** Gusts whose chance of being exceeded is counted per site [m/s]. */

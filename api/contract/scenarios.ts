@@ -10,6 +10,7 @@ export const Averaging = z.union([z.literal(60), z.literal(120), z.literal(180),
 });
 export const Intensity = z.enum(['pressure', 'wind']);
 export const Anchor = z.enum(['auto', 'mean', 'peak']);
+export const Regime = z.enum(['mixed', 'quasi-steady', 'breakdown'], 'Available: mixed, quasi-steady, breakdown.');
 
 const metres = z.number().min(0);
 /** Reach of a wind in the quadrants NE, SE, SW, NW [m]; 0 is none, null not given. */
@@ -98,7 +99,10 @@ export const TrackDeclarations = z.object({
   asOf: Instant.nullable().default(null),
 });
 
-export const Track = z.object({ fixes: z.array(Fix).min(1).max(400), declarations: TrackDeclarations });
+export const Track = z.object({
+  fixes: z.array(Fix).min(1).max(400),
+  declarations: TrackDeclarations,
+});
 export type Track = z.infer<typeof Track>;
 
 /** Consent to put fixes in time order; without it a track out of order isn't saved. */

@@ -3,7 +3,7 @@ import { Currency, Id, Instant, Minor, Notice } from './common.ts';
 import { endpoint } from './endpoint.ts';
 import { EvaluationSite, MOST_EVALUATED_SITES } from './evaluations.ts';
 import { UNDERWRITERS } from './roles.ts';
-import { Anchor, Intensity } from './scenarios.ts';
+import { Anchor, Intensity, Regime } from './scenarios.ts';
 import { WindChoices } from './wind-choices.ts';
 
 /** Everything about the chain that a person may set, around which one switch at a time is tried. */
@@ -11,6 +11,7 @@ export const ChainSettings = z.strictObject({
   intensity: Intensity.default('pressure'),
   anchor: Anchor.default('auto'),
   mesovortices: z.boolean().default(true),
+  regime: Regime.default('mixed'),
   wind: WindChoices.prefault({}),
 });
 export type ChainSettings = z.infer<typeof ChainSettings>;
@@ -31,6 +32,8 @@ export const SpreadRequest = z
     sites: z.array(EvaluationSite).min(1).max(MOST_EVALUATED_SITES).optional(),
     curveSetId: Id.optional(),
     settings: ChainSettings.prefault({}),
+    /** Every switch, or those of the eyewall ring alone, which take a few seconds. */
+    switches: z.enum(['all', 'ring']).default('all'),
   })
   .refine(({ editionId, sites }) => (editionId === undefined) !== (sites === undefined), {
     path: ['editionId'],

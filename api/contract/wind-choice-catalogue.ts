@@ -419,7 +419,7 @@ export const WIND_CHOICES: readonly WindChoice[] = [
 ];
 
 /** What the chain lets a person set beside the relations, in the same shape. */
-export const CHAIN_CHOICES: readonly Choice<'intensity' | 'anchor' | 'mesovortices'>[] = [
+export const CHAIN_CHOICES: readonly Choice<'intensity' | 'anchor' | 'mesovortices' | 'regime'>[] = [
   {
     key: 'intensity',
     title: 'Intensity from',
@@ -462,6 +462,30 @@ export const CHAIN_CHOICES: readonly Choice<'intensity' | 'anchor' | 'mesovortic
       { value: 'off', title: 'Off', source: 'Plain wind only' },
     ],
   },
+  {
+    key: 'regime',
+    title: 'Amplitude regime',
+    meaning: 'How strong the vortices are: kept up by heating, or at their strongest while a ring breaks down.',
+    reason:
+      'A ring is mostly kept up and breaks down now and then: 75 % kept up, 15 % between, 10 % breaking down. The shares are judged, not measured.',
+    values: [
+      {
+        value: 'mixed',
+        title: 'Mixed',
+        source: 'Amplitudes 0.4, 0.75 and 1.1 with shares 75, 15 and 10 %, times individual strengths; judged',
+      },
+      {
+        value: 'quasi-steady',
+        title: 'Always kept up',
+        source: '0.4 times individual strengths of 0.5 to 1: own barotropic runs of rings relaxed to their first state',
+      },
+      {
+        value: 'breakdown',
+        title: 'Always breaking down',
+        source: '1.1 times individual strengths of 0.5 to 1: own barotropic runs of rings left alone',
+      },
+    ],
+  },
 ];
 
 /** What has to be said beside any choice of intensity that has two readings far apart. */
@@ -484,3 +508,11 @@ export const chosenInWords = (wind: WindChoices | undefined): string[] =>
     const name = title.charAt(0).toLowerCase() + title.slice(1);
     return `${name}: “${to.title}” instead of “${values[0]!.title}”`;
   });
+
+/** An amplitude regime other than the default, in the same words; null when it is the default. */
+export const regimeInWords = (value: string | undefined): string | null => {
+  const { title, values } = CHAIN_CHOICES.find(({ key }) => key === 'regime')!;
+  const to = values.find((one) => one.value === value);
+  if (!to || to === values[0]) return null;
+  return `${title.charAt(0).toLowerCase()}${title.slice(1)}: “${to.title}” instead of “${values[0]!.title}”`;
+};

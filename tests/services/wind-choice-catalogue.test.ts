@@ -1,6 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { Anchor, Intensity } from '#contract/scenarios.ts';
+import { Anchor, Intensity, Regime } from '#contract/scenarios.ts';
 import { CHAIN_CHOICES, WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
 import { WindChoices } from '#contract/wind-choices.ts';
 import { DEFAULT_OPTIONS, DEFAULT_WIND_OPTIONS } from '#engine/track/options.ts';
@@ -28,19 +28,24 @@ describe('the catalogue of wind choices', () => {
       intensity: Intensity.options,
       anchor: Anchor.options,
       mesovortices: ['on', 'off'],
+      regime: Regime.options,
     });
-    const [intensity, anchor, mesovortices] = CHAIN_CHOICES.map(({ values }) => values[0]!.value);
-    expect({ intensity, anchor, mesovortices: mesovortices === 'on' }).toEqual({
+    const [intensity, anchor, mesovortices, regime] = CHAIN_CHOICES.map(({ values }) => values[0]!.value);
+    expect({ intensity, anchor, regime, mesovortices: mesovortices === 'on' }).toEqual({
       intensity: DEFAULT_OPTIONS.intensity,
       anchor: DEFAULT_OPTIONS.anchor,
       mesovortices: DEFAULT_OPTIONS.mesovortices,
+      regime: DEFAULT_OPTIONS.regime,
     });
   });
 
   it('is what the README lists', () => {
     const readme = readFileSync(new URL('../../README.md', import.meta.url), 'utf8');
     const lines = readme.split('\n').map((line) => line.replace(/\s+/g, ' ').trim());
-    for (const { key, title, values } of [...WIND_CHOICES, ...CHAIN_CHOICES.slice(0, 2)]) {
+    for (const { key, title, values } of [
+      ...WIND_CHOICES,
+      ...CHAIN_CHOICES.filter(({ key: of }) => of !== 'mesovortices'),
+    ]) {
       expect(lines).toContain(`| \`${key}\` | ${title} | ${values.map(({ value }) => `\`${value}\``).join(', ')} |`);
     }
   });

@@ -2,7 +2,8 @@ import type { Draw, Draws, DrawSites } from '#contract/draws.ts';
 import type { Footprint, FootprintQuery } from '#contract/runs.ts';
 import type { DrawView } from '#engine/footprint/draw-fields.ts';
 import type { SiteBatch } from '#engine/footprint/site-peaks.ts';
-import { AMPLITUDE_NODES, DRAW_COUNT, DRAW_WEIGHT_TOTAL, DRAW_WEIGHT_UNITS, PHASE_COUNT } from '#engine/ring/draws.ts';
+import { DRAW_COUNT, DRAW_WEIGHT_TOTAL, DRAW_WEIGHT_UNITS, PHASE_COUNT } from '#engine/ring/draws.ts';
+import { amplitudeNodes } from '#engine/ring/regimes.ts';
 import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
 import type { Actor } from '../../actor.ts';
 import { layerArea } from '../../compute/draws.ts';
@@ -49,7 +50,12 @@ export class DrawService {
       const common = { currency, gustThresholdsMs: [...gustThresholdsMs], notices };
       const reason = noDrawsReason(track);
       if (reason !== null) return { ...common, draws: [], named: null, reason };
-      const draws = ranked(await this.parts.draws.event(tx, actor.orgId, track.runScenarioId), gustThresholdsMs.length);
+      const strengths = amplitudeNodes(track.options.regime);
+      const draws = ranked(
+        await this.parts.draws.event(tx, actor.orgId, track.runScenarioId),
+        gustThresholdsMs.length,
+        strengths,
+      );
       return {
         ...common,
         draws,
@@ -140,7 +146,7 @@ const viewOf = ({ view, draw, gustMs }: FootprintQuery): DrawView => {
   return view === 'chance' ? { kind: 'chance', gust: gustMs! } : { kind: 'p99' };
 };
 
-const ranked = ({ gross, strongest, sitesAbove }: EventDraws, gusts: number): Draw[] =>
+const ranked = ({ gross, strongest, sitesAbove }: EventDraws, gusts: number, strengths: readonly number[]): Draw[] =>
   gross
     .map((amount, d) => ({ amount, d }))
     .sort((a, b) => a.amount - b.amount || a.d - b.d)
@@ -151,7 +157,7 @@ const ranked = ({ gross, strongest, sitesAbove }: EventDraws, gusts: number): Dr
       weight: DRAW_WEIGHT_UNITS[d]! / DRAW_WEIGHT_TOTAL,
       strongestMs: strongest?.[d] ?? null,
       sitesAbove: sitesAbove && Array.from({ length: gusts }, (_, k) => sitesAbove[k * DRAW_COUNT + d]!),
-      strength: AMPLITUDE_NODES[Math.floor(d / PHASE_COUNT)]!,
+      strength: strengths[Math.floor(d / PHASE_COUNT)]!,
       phaseDeg: (360 / PHASE_COUNT) * ((d % PHASE_COUNT) + 0.5),
     }));
 

@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import type { Calibration, CurveSet } from '#contract/models.ts';
 import type { RunOptions } from '#contract/runs.ts';
-import { chosenInWords, chosenOf } from '#contract/wind-choice-catalogue.ts';
+import { chosenInWords, chosenOf, regimeInWords } from '#contract/wind-choice-catalogue.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import { DEFAULT_OPTIONS, type ChainOptions } from '#engine/track/options.ts';
 import type { EditionHeader, RunTrack } from './run-ports.ts';
@@ -21,6 +21,7 @@ export interface RunInputs {
  */
 export const inputsDigest = ({ edition, tracks, calibration, curveSet, options }: RunInputs): string => {
   const chosen = chosenOf(options.wind);
+  const regime = regimeInWords(options.regime) === null ? [] : [['regime', options.regime]];
   return createHash('sha256')
     .update(
       JSON.stringify([
@@ -30,19 +31,20 @@ export const inputsDigest = ({ edition, tracks, calibration, curveSet, options }
         calibration.digest,
         curveSet.digest,
         [options.mesovortices, options.intensity, options.anchor, options.gustThresholdsMs],
-        // Absent when every wind choice is the default, so that runs from before there was a choice keep their name.
-        ...(chosen.length > 0 ? [chosen] : []),
+        // Absent when every choice is the default, so that runs from before there was a choice keep their name.
+        ...(chosen.length + regime.length > 0 ? [[...chosen, ...regime]] : []),
       ]),
     )
     .digest('hex');
 };
 
-export const chainOptions = ({ mesovortices, intensity, anchor, wind }: RunOptions): ChainOptions => ({
+export const chainOptions = ({ mesovortices, intensity, anchor, regime, wind }: RunOptions): ChainOptions => ({
   ...DEFAULT_OPTIONS,
   ...wind,
   mesovortices,
   intensity,
   anchor,
+  regime: regime ?? DEFAULT_OPTIONS.regime,
 });
 
 /** Where the options of a run leave what the calibration was signed for, in words; empty when they don't. */
@@ -58,7 +60,8 @@ export const departures = (
   if (options.anchor !== settings.anchor) words.push(`anchor “${options.anchor}” instead of “${settings.anchor}”`);
   if (curveSetId !== curveSet.id)
     words.push(`curve set ${curveSet.name} version ${curveSet.version}, not the one it is paired with`);
-  return [...words, ...chosenInWords(options.wind)];
+  const regime = regimeInWords(options.regime);
+  return [...words, ...(regime === null ? [] : [regime]), ...chosenInWords(options.wind)];
 };
 
 /** The remarks every track of a run carries because of its set-up. */

@@ -1,7 +1,7 @@
 import type { LossRange } from '#contract/common.ts';
 import type { Calibration, CurveSet } from '#contract/models.ts';
 import { noticesFor, RESULT_NOTICES } from '#contract/notices.ts';
-import { chosenInWords } from '#contract/wind-choice-catalogue.ts';
+import { chosenInWords, regimeInWords } from '#contract/wind-choice-catalogue.ts';
 import type { Run, RunEvent, RunScenario, RunSlip, RunSummary } from '#contract/runs.ts';
 import type { Notice } from '#contract/common.ts';
 import { NOTICE_VERSION } from '#contract/notices.ts';
@@ -203,7 +203,7 @@ export const toSlip = (
   },
   curveSet: { name: curveSet.name, version: curveSet.version, digest: curveSet.digest },
   options: run.options,
-  choices: chosenInWords(run.options.wind),
+  choices: [regimeInWords(run.options.regime), ...chosenInWords(run.options.wind)].filter((words) => words !== null),
   draws: DRAWS,
   engineVersion: run.engineVersion,
   inputsDigest: run.inputsDigest,

@@ -57,6 +57,7 @@ const noVortices = ({ settings, base }: SpreadFacts) =>
     : base.storm.wavenumber === null && 'No ring of this storm grows vortices.';
 const kepert = ({ settings }: SpreadFacts, what: string) =>
   settings.wind.asymmetry === 'kepert' && `The Kepert boundary layer brings its own ${what}.`;
+const NOT_NEAR = 'No site comes near the ring of vortices.';
 const onlyAtSea = ({ hasSitesOnLand }: SpreadFacts) => !hasSitesOnLand && 'No site is on land.';
 
 const REASONS: Readonly<Record<string, Reason>> = {
@@ -78,8 +79,10 @@ const REASONS: Readonly<Record<string, Reason>> = {
         : null,
     ),
   mesovortices: (facts) =>
-    first(facts.base.storm.wavenumber === null && 'No ring of this storm grows vortices.') ??
-    'No site comes near the ring of vortices.',
+    first(facts.base.storm.wavenumber === null && 'No ring of this storm grows vortices.') ?? NOT_NEAR,
+  regime: (facts) => first(noVortices(facts)) ?? NOT_NEAR,
+  ringWidth: (facts) => first(noVortices(facts)) ?? NOT_NEAR,
+  eyeRatio: (facts) => first(noVortices(facts)) ?? NOT_NEAR,
   reportedAveraging: (facts) =>
     first(
       noReportedWind(facts),

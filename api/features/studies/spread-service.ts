@@ -1,18 +1,18 @@
 import type { CurveSet } from '#contract/models.ts';
 import { INTENSITY_NOTICE } from '#contract/wind-choice-catalogue.ts';
 import { NOTICE_VERSION } from '#contract/notices.ts';
-import type { SpreadReply, SpreadRequest, SpreadRow } from '#contract/studies.ts';
+import type { SpreadReply, SpreadRequest } from '#contract/studies.ts';
 import type { LandIndex } from '#engine/geo/land.ts';
 import { REFERENCE_CURVE } from '#engine/loss/damage-curve.ts';
 import { PA_PER_HPA } from '#engine/units.ts';
 import type { Actor } from '../../actor.ts';
 import { EngineRefusal, type EnginePool } from '../../compute/pool.ts';
 import type { SpreadReply as Computed } from '../../compute/protocol.ts';
-import type { Outcome, TrialResult } from '../../compute/spread.ts';
 import { AppError, notFound } from '../../errors.ts';
 import type { Transact, Tx } from '../../transact.ts';
-import { factsOf, noEffectReason, type SpreadFacts } from './spread-reasons.ts';
-import { baseTrial, switchesOf, type Switch, type SwitchInputs } from './spread-switches.ts';
+import { factsOf } from './spread-reasons.ts';
+import { ranked, rowOf } from './spread-rows.ts';
+import { baseTrial, ringSwitches, switchesOf, type SwitchInputs } from './spread-switches.ts';
 import { StudyGate } from './study-gate.ts';
 import type { StudyEditions, StudyModels, StudyTracks } from './study-ports.ts';
 import { studySetup, type StudySetup } from './study-setup.ts';
@@ -45,7 +45,7 @@ export class SpreadService {
       return { setup, sites, ...(await this.curves(tx, actor.orgId, request.curveSetId, setup)) };
     });
     const inputs = { settings, fixes: setup.fixes, ...curve, approved };
-    const switches = switchesOf(inputs);
+    const switches = request.switches === 'ring' ? ringSwitches(inputs) : switchesOf(inputs);
     const { roughnessM } = sites.batch;
     const onLand = { roughnessM: roughnessM.slice() };
     const task = { base: baseTrial(inputs), trials: switches.map(({ trial }) => trial), sites: sites.batch };
@@ -107,54 +107,6 @@ const refused = (error: unknown): never => {
     faults: [{ path: 'body.settings', message: error.message }],
     cause: error,
   });
-};
-
-/** A change of the strongest gust that no screen shows. */
-const LEAST_SHOWN_MS = 1e-6;
-
-const rowOf = (tried: Switch, result: TrialResult, facts: SpreadFacts): SpreadRow => {
-  const { choice, title, from, to } = tried;
-  const head = { choice, title, from, to: { value: to.value, title: to.title, source: to.source } };
-  if ('refused' in result) {
-    const reason = `Can’t be computed here: ${result.refused}.`;
-    return { ...head, peakGustMs: null, peakGustChangeMs: null, grossMinor: null, grossChangeMinor: null, reason };
-  }
-  const base = facts.base.outcome;
-  if (result.sameGusts && result.sameLosses) {
-    return {
-      ...head,
-      peakGustMs: base.peakMs,
-      peakGustChangeMs: 0,
-      grossMinor: base.grossMinor,
-      grossChangeMinor: base.grossMinor && 0,
-      reason: noEffectReason(tried, facts),
-    };
-  }
-  const { outcome } = result;
-  const peakGustChangeMs = outcome.peakMs.p50 - base.peakMs.p50;
-  const grossChangeMinor = grossChange(outcome, base);
-  return {
-    ...head,
-    peakGustMs: outcome.peakMs,
-    peakGustChangeMs,
-    grossMinor: outcome.grossMinor,
-    grossChangeMinor,
-    reason:
-      Math.abs(peakGustChangeMs) < LEAST_SHOWN_MS && (grossChangeMinor ?? 0) === 0
-        ? 'Changes something at some sites, but neither the strongest gust nor the event’s loss.'
-        : null,
-  };
-};
-
-const grossChange = (outcome: Outcome, base: Outcome): number | null =>
-  outcome.grossMinor && base.grossMinor ? outcome.grossMinor.p50 - base.grossMinor.p50 : null;
-
-/** Widest change of the loss first, then of the gust; those without effect come last, in the chain’s order. */
-const ranked = (rows: readonly SpreadRow[]): SpreadRow[] => {
-  const has = (row: SpreadRow) => (row.reason === null ? 1 : 0);
-  const gross = (row: SpreadRow) => Math.abs(row.grossChangeMinor ?? 0);
-  const gust = (row: SpreadRow) => Math.abs(row.peakGustChangeMs ?? 0);
-  return [...rows].sort((a, b) => has(b) - has(a) || gross(b) - gross(a) || gust(b) - gust(a));
 };
 
 const intensityOf = ({ base }: Computed): SpreadReply['intensity'] => {

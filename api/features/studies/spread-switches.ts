@@ -2,6 +2,7 @@ import type { CurveSet, DamageCurve } from '#contract/models.ts';
 import type { ChainSettings, SpreadRow } from '#contract/studies.ts';
 import { CHAIN_CHOICES, WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
 import type { Choice } from '#contract/wind-choices.ts';
+import { DEFAULT_EYE_RATIO, DEFAULT_RING_WIDTH } from '#engine/ring/stability.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import { msFromKnots } from '#engine/units.ts';
 import type { Trial } from '../../compute/spread.ts';
@@ -25,9 +26,16 @@ export const switchesOf = (inputs: SwitchInputs): Switch[] => [
   ...chainSwitches(inputs),
   ...averagingSwitches(inputs),
   ...radiusSwitches(inputs),
+  ...shapeOfRingSwitches(inputs),
   ...windSwitches(inputs),
   ...curveSwitches(inputs),
 ];
+
+/** Those of the eyewall ring and its vortices. */
+export const ringSwitches = (inputs: SwitchInputs): Switch[] => {
+  const ofRing = ['anchor', 'mesovortices', 'regime'];
+  return [...shapeOfRingSwitches(inputs), ...chainSwitches(inputs).filter(({ choice }) => ofRing.includes(choice))];
+};
 
 export const baseTrial = ({ settings, fixes, curve }: SwitchInputs): Trial => ({
   fixes,
@@ -110,6 +118,54 @@ const radiusSwitches = (inputs: SwitchInputs): Switch[] =>
     },
     trial: { ...baseTrial(inputs), radiusFactor },
   }));
+
+interface RingShape {
+  choice: string;
+  title: string;
+  field: 'ringWidthFraction' | 'eyeVorticityRatio';
+  usual: number;
+  tried: readonly number[];
+  source: string;
+}
+
+const RING_SHAPES: readonly RingShape[] = [
+  {
+    choice: 'ringWidth',
+    title: 'Ring width over radius of maximum wind',
+    field: 'ringWidthFraction',
+    usual: DEFAULT_RING_WIDTH,
+    tried: [0.25, DEFAULT_RING_WIDTH, 0.45],
+    source: 'A thin, the usual and a broad ring; judged, not measured',
+  },
+  {
+    choice: 'eyeRatio',
+    title: 'Eye vorticity over average vorticity',
+    field: 'eyeVorticityRatio',
+    usual: DEFAULT_EYE_RATIO,
+    tried: [0, DEFAULT_EYE_RATIO, 0.4],
+    source: 'A still, the usual and a stirred eye; judged, not measured',
+  },
+];
+
+/** The same ring at every fix, whatever the track or the calibration gives. */
+const shapeOfRingSwitches = (inputs: SwitchInputs): Switch[] =>
+  RING_SHAPES.flatMap(({ choice, title, field, usual, tried, source }) => {
+    const given = inputs.fixes.map((fix) => fix[field] ?? usual);
+    const [least, most] = [Math.min(...given), Math.max(...given)];
+    const varies = least !== most;
+    const from = varies ? { value: 'by-fix', title: `${least} to ${most}, fix by fix` } : ring(least);
+    return tried
+      .filter((value) => varies || value !== least)
+      .map((value): Switch => ({
+        choice,
+        title,
+        from,
+        to: { ...ring(value, varies ? ' at every fix' : ''), source },
+        trial: { ...baseTrial(inputs), fixes: inputs.fixes.map((fix) => ({ ...fix, [field]: value })) },
+      }));
+  });
+
+const ring = (value: number, where = '') => ({ value: String(value), title: `${value}${where}` });
 
 /** Half-damage winds of a stronger and a weaker building stock [kt, 1-min], and peak 3-s gust over peak 1-min wind. */
 const HALF_KNOTS = [110, 190];

@@ -3,7 +3,7 @@ import type { Calibration, CurveSet } from '#contract/models.ts';
 import type { Portfolio } from '#contract/portfolios.ts';
 import type { Purpose, QuoteRequest, RunOptions } from '#contract/runs.ts';
 import type { ScenarioSummary } from '#contract/scenarios.ts';
-import { chosenOf } from '#contract/wind-choice-catalogue.ts';
+import { chosenOf, regimeInWords } from '#contract/wind-choice-catalogue.ts';
 
 type Options = z.output<typeof RunOptions>;
 
@@ -68,6 +68,7 @@ export const isSameRequest = (a: QuoteRequest, b: QuoteRequest): boolean => {
       request.options.mesovortices,
       request.options.intensity,
       request.options.anchor,
+      request.options.regime ?? 'mixed',
       request.options.gustThresholdsMs,
       chosenOf(request.options.wind),
       request.purpose,
@@ -124,6 +125,7 @@ export const departures = (options: Options, calibration: Calibration | null): s
   return [
     ...(settings.intensity === options.intensity ? [] : ['intensity']),
     ...(settings.anchor === options.anchor ? [] : ['track wind']),
+    ...(regimeInWords(options.regime) === null ? [] : ['amplitude regime']),
   ];
 };
 

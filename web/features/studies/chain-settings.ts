@@ -1,9 +1,9 @@
 import { ChainSettings } from '#contract/studies.ts';
-import { Anchor, Intensity } from '#contract/scenarios.ts';
+import { Anchor, Intensity, Regime } from '#contract/scenarios.ts';
 import { CHAIN_CHOICES, WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
 import { WindChoices, type Choice } from '#contract/wind-choices.ts';
 
-export type SettingKey = keyof WindChoices | 'intensity' | 'anchor' | 'mesovortices';
+export type SettingKey = keyof WindChoices | 'intensity' | 'anchor' | 'mesovortices' | 'regime';
 export interface Setting {
   key: SettingKey;
   value: string;
@@ -17,7 +17,7 @@ export const isSettingKey = (text: string): text is SettingKey => CHOICES.some((
 
 /** Values of a setting as words; the layer of vortices is on or off. */
 export const valueOf = (settings: ChainSettings, key: SettingKey): string => {
-  if (key === 'intensity' || key === 'anchor') return settings[key];
+  if (key === 'intensity' || key === 'anchor' || key === 'regime') return settings[key];
   if (key === 'mesovortices') return settings.mesovortices ? 'on' : 'off';
   return settings.wind[key];
 };
@@ -34,6 +34,10 @@ export const withValue = (settings: ChainSettings, key: string, value: string): 
   if (key === 'anchor') {
     const anchor = Anchor.safeParse(value);
     return anchor.success ? { ...settings, anchor: anchor.data } : null;
+  }
+  if (key === 'regime') {
+    const regime = Regime.safeParse(value);
+    return regime.success ? { ...settings, regime: regime.data } : null;
   }
   const wind = WindChoices.safeParse({ ...settings.wind, [key]: value });
   return wind.success ? { ...settings, wind: wind.data } : null;

@@ -1,7 +1,7 @@
 import { useState, type ReactNode } from 'react';
 import { Gauge } from 'lucide-react';
-import type { TrackResolution } from '#contract/scenarios.ts';
-import { chosenInWords, chosenOf } from '#contract/wind-choice-catalogue.ts';
+import { Regime, type TrackResolution } from '#contract/scenarios.ts';
+import { CHAIN_CHOICES, chosenInWords, chosenOf } from '#contract/wind-choice-catalogue.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { Chip } from '../../../ui/chip.tsx';
 import { Segmented } from '../../../ui/segmented.tsx';
@@ -19,6 +19,9 @@ interface OptionsStepProps {
   departures: readonly string[];
   calibration: string | null;
 }
+
+const REGIME = CHAIN_CHOICES.find(({ key }) => key === 'regime')!;
+const regimeTitle = (regime: string) => REGIME.values.find(({ value }) => value === regime)!.title;
 
 const LOWEST_MS = 20;
 const HIGHEST_MS = 85;
@@ -38,6 +41,19 @@ export function OptionsStep({ options, onChange, strongest, departures, calibrat
             onChange={(value) => onChange({ ...options, mesovortices: value === 'on' })}
           />
         </Option>
+        {options.mesovortices && (
+          <Option label={REGIME.title}>
+            <Segmented
+              label={REGIME.title}
+              value={options.regime ?? 'mixed'}
+              options={Regime.options.map((value) => ({ value, label: regimeTitle(value) }))}
+              onChange={(regime) => {
+                const { regime: _, ...rest } = options;
+                onChange(regime === 'mixed' ? rest : { ...rest, regime });
+              }}
+            />
+          </Option>
+        )}
         <Option label="Track wind is">
           <Segmented
             label="Track wind is"
