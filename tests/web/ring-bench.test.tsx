@@ -1,5 +1,5 @@
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
-import { act, render, screen, waitFor, within } from '@testing-library/react';
+import { act, configure, render, screen, waitFor, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { createMemoryRouter, Outlet, RouterProvider } from 'react-router-dom';
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
@@ -14,6 +14,9 @@ import { SIGNED_IN_ROUTE } from '../../web/features/session/session-queries.ts';
 import { UnitsProvider } from '../../web/lib/units.tsx';
 import { Component as RingBench } from '../../web/pages/ring-bench.tsx';
 import { answerRequests, ok, refusal, testSession } from '../helpers/web-answers.ts';
+
+// The page asks three things of the service before it is whole; a busy machine takes its time.
+configure({ asyncUtilTimeout: 10_000 });
 
 const rings = new RingService(() => 'engine');
 const frame = (timeS: number, vortices: number): FilmFrame => ({
