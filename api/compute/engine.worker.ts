@@ -46,8 +46,8 @@ const answer = <Reply>(work: () => Answer<Reply>): Answer<Reply> => {
   }
 };
 
-export const storm = ({ fixes, options }: StormTask): Answer<Tasks['storm']['reply']> =>
-  answer(() => ({ reply: prepareStorm(fixes, options, landIndex()) }));
+export const storm = ({ fixes, observations, options }: StormTask): Answer<Tasks['storm']['reply']> =>
+  answer(() => ({ reply: prepareStorm(fixes, options, landIndex(), observations) }));
 
 /** Eight overland distances for each place, one after another [m]. */
 export const overland = ({ latitude, longitude }: OverlandTask): Answer<Tasks['overland']['reply']> =>
@@ -91,10 +91,17 @@ export const footprint = ({ storm: prepared, focus, stop }: FootprintTask): Answ
     return { reply: grid && { grid, bands: footprintBands(grid) } };
   });
 
-export const drawBands = ({ fixes, options, net, view, stop }: DrawBandsTask): Answer<Tasks['drawBands']['reply']> =>
+export const drawBands = ({
+  fixes,
+  observations,
+  options,
+  net,
+  view,
+  stop,
+}: DrawBandsTask): Answer<Tasks['drawBands']['reply']> =>
   answer(() => {
     if (isStopped(stop)) return STOPPED;
-    const prepared = prepareStorm(fixes, options, landIndex());
+    const prepared = prepareStorm(fixes, options, landIndex(), observations);
     const bands = draws.drawBands(prepared, landIndex(), net, view, { shouldStop: () => isStopped(stop) });
     return isStopped(stop) ? STOPPED : { reply: bands };
   });
@@ -120,13 +127,14 @@ const fetchOf = ({
 
 export const explain = ({
   fixes,
+  observations,
   options,
   site,
   gustsMs,
   otherRoughnessM,
 }: ExplainTask): Answer<Tasks['explain']['reply']> =>
   answer(() => {
-    const prepared = prepareStorm(fixes, options, landIndex());
+    const prepared = prepareStorm(fixes, options, landIndex(), observations);
     const fetchM = [...fetchOf(site)];
     const whole = { ...site, fetchM };
     return {
@@ -152,10 +160,16 @@ export const spread = ({ base, trials, sites, stop }: SpreadTask): Answer<Tasks[
     return reply === null ? STOPPED : { reply };
   });
 
-export const windField = ({ fixes, options, question, stop }: WindFieldTask): Answer<Tasks['windField']['reply']> =>
+export const windField = ({
+  fixes,
+  observations,
+  options,
+  question,
+  stop,
+}: WindFieldTask): Answer<Tasks['windField']['reply']> =>
   answer(() => {
     if (isStopped(stop)) return STOPPED;
-    return { reply: windFieldAt(prepareStorm(fixes, options, landIndex()), question) };
+    return { reply: windFieldAt(prepareStorm(fixes, options, landIndex(), observations), question) };
   });
 
 export const breakdown = ({ setup, withVorticity, stop }: BreakdownTask): Answer<Tasks['breakdown']['reply']> =>

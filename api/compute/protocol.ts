@@ -8,6 +8,7 @@ import type { FootprintGrid, Net } from '#engine/footprint/grid.ts';
 import type { DamageCurve } from '#engine/loss/damage-curve.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import type { Storm } from '#engine/track/storm.ts';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { BreakdownFrame, BreakdownSetup } from '#engine/ring/breakdown.ts';
 import type { Bands, BandView } from './bands.ts';
 import type { SpreadBase, Trial, TrialResult } from './spread.ts';
@@ -19,7 +20,12 @@ export const CHUNK_SITES = 2_000;
 /** A flag both sides see at once: anything but 0 asks the running task to stop. */
 export type StopFlag = Int32Array;
 
-export type StormTask = { readonly fixes: readonly TrackFix[]; readonly options: ChainOptions };
+export type StormTask = {
+  readonly fixes: readonly TrackFix[];
+  /** What radar or satellite showed of the storm's vortices. */
+  readonly observations: readonly ObservedVortices[];
+  readonly options: ChainOptions;
+};
 
 export type ScoreTask = {
   readonly storm: Storm;

@@ -9,6 +9,7 @@ import {
 } from '#engine/footprint/site-peaks.ts';
 import type { LandIndex } from '#engine/geo/land.ts';
 import type { DamageCurve } from '#engine/loss/damage-curve.ts';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import { resolveFixes } from '#engine/track/resolution.ts';
@@ -20,6 +21,7 @@ import { toCents } from './minor-units.ts';
 /** What one computation of a spread is given. */
 export type Trial = {
   readonly fixes: readonly TrackFix[];
+  readonly observations: readonly ObservedVortices[];
   readonly options: ChainOptions;
   readonly curve: DamageCurve;
   /** Times every radius of maximum wind in use, those filled in included. */
@@ -112,20 +114,20 @@ const outcomeOf = (scores: SiteScores): Outcome => {
 /** Storms by what they were prepared from: trials that differ in their curve alone share one. */
 const stormMaker = (land: LandIndex): ((trial: Trial) => Storm) => {
   const made = new Map<string, Storm>();
-  const prepare = (fixes: readonly TrackFix[], options: ChainOptions): Storm => {
-    const key = JSON.stringify([fixes, options]);
-    const known = made.get(key) ?? prepareStorm(fixes, options, land);
+  const prepare = ({ fixes, options, observations }: Omit<Trial, 'curve' | 'radiusFactor'>): Storm => {
+    const key = JSON.stringify([fixes, options, observations]);
+    const known = made.get(key) ?? prepareStorm(fixes, options, land, observations);
     made.set(key, known);
     return known;
   };
-  return ({ fixes, options, radiusFactor }) => {
-    if (radiusFactor === 1) return prepare(fixes, options);
-    const { fixes: resolved } = prepare(fixes, options);
-    const widened = fixes.map((fix, i) => ({
+  return ({ radiusFactor, ...trial }) => {
+    if (radiusFactor === 1) return prepare(trial);
+    const { fixes: resolved } = prepare(trial);
+    const widened = trial.fixes.map((fix, i) => ({
       ...fix,
       radiusOfMaxWindM: radiusFactor * resolved[i]!.radiusOfMaxWindM,
     }));
-    return prepare(widened, options);
+    return prepare({ ...trial, fixes: widened });
   };
 };
 

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { Instant } from './common.ts';
 import { endpoint } from './endpoint.ts';
+import { VortexObservations } from './observed-vortices.ts';
 import { Anchor, Averaging, Intensity, Regime } from './scenarios.ts';
 import { WindChoices } from './wind-choices.ts';
 
@@ -114,6 +115,8 @@ export const EvaluationRequest = z
       .min(1, 'Give at least one site.')
       .max(MOST_EVALUATED_SITES, `At most ${MOST_EVALUATED_SITES} sites at once; use a portfolio for more.`),
     options: EvaluationOptions.prefault({}),
+    /** What radar or satellite showed of the vortices around the eye, at times within the track. */
+    vortexObservations: VortexObservations,
   })
   .superRefine(
     (request, context) => {
@@ -127,6 +130,12 @@ export const EvaluationRequest = z
           fault(['track', i, 'centralPressureHpa'], 'Give a central pressure or a maximum wind.');
           fault(['track', i, 'maxWindMs'], 'Give a central pressure or a maximum wind.');
         }
+      });
+      const times = partsOf(request.track).map(({ time }) => Date.parse(String(time)));
+      partsOf(request.vortexObservations).forEach(({ time }, i) => {
+        const at = Date.parse(String(time));
+        if (at >= times[0]! && at <= times.at(-1)!) return;
+        fault(['vortexObservations', i, 'time'], 'Give a time within the track.');
       });
       const seen = new Set<unknown>();
       partsOf(request.sites).forEach(({ siteRef }, i) => {

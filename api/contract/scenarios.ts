@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { Digest, Id, Instant, Notice, PageQuery, pageOf } from './common.ts';
 import { Derivation } from './derivations.ts';
 import { endpoint } from './endpoint.ts';
+import { VortexObservations } from './observed-vortices.ts';
 import { READERS, TRACK_WRITERS } from './roles.ts';
 import { Stale } from './track-age.ts';
 
@@ -102,6 +103,8 @@ export const TrackDeclarations = z.object({
 export const Track = z.object({
   fixes: z.array(Fix).min(1).max(400),
   declarations: TrackDeclarations,
+  /** What radar or satellite showed of the vortices around the eye, at times within the track. */
+  vortices: VortexObservations,
 });
 export type Track = z.infer<typeof Track>;
 

@@ -30,7 +30,8 @@ const sites = (count: number, from = 1): RunSite[] =>
     };
   });
 
-const stormFrom = (engine: EnginePool) => engine.run('storm', { fixes: workedFixes, options: DEFAULT_OPTIONS });
+const stormFrom = (engine: EnginePool) =>
+  engine.run('storm', { fixes: workedFixes, observations: [], options: DEFAULT_OPTIONS });
 
 /** Scores an edition in chunks that are started together, and so finish in whatever order. */
 const scored = async (engine: EnginePool, count: number, chunk: number): Promise<ScoredSites> => {
@@ -88,7 +89,7 @@ describe('the engine on threads', () => {
   });
 
   it('says in words what the engine refuses', async () => {
-    const task = { fixes: workedFixes.slice(0, 1), options: DEFAULT_OPTIONS };
+    const task = { fixes: workedFixes.slice(0, 1), observations: [], options: DEFAULT_OPTIONS };
     await expect(pool.run('storm', task)).rejects.toMatchObject({
       name: 'EngineRefusal',
       message: 'number of fixes is 1; it must be at least 2',

@@ -17,6 +17,7 @@ import { prepareStorm, type Storm } from '#engine/track/storm.ts';
 import { PA_PER_HPA } from '#engine/units.ts';
 import { engineFix } from '../../compute/asked-fixes.ts';
 import { batchOfSites, groundOf, type Ground } from '../../compute/asked-sites.ts';
+import { engineObservations } from '../../compute/asked-vortices.ts';
 import { AppError } from '../../errors.ts';
 
 const WIDE_RANGE = 1.3;
@@ -57,6 +58,7 @@ export class EvaluationService {
         request.track.map((fix) => engineFix(fix, fix.windAveragingSeconds ?? 60)),
         request.options,
         asksForLand ? this.land() : null,
+        engineObservations(request.vortexObservations),
       );
       return { storm, scores: scoreSites(storm, batchOfSites(request.sites, ground), REFERENCE_CURVE) };
     } catch (error) {
@@ -70,6 +72,7 @@ export class EvaluationService {
 const refusal = (error: DomainError, sites: readonly Site[]): AppError => {
   const site = /site (\d+)$/.exec(error.quantity)?.[1];
   const fix = /fix (\d+)$/.exec(error.quantity)?.[1];
+  const seen = /observation (\d+)$/.exec(error.quantity)?.[1];
   const told = `${error.value as string | number}; it must be ${error.requirement}.`;
   const [path, message] =
     site !== undefined
@@ -77,8 +80,13 @@ const refusal = (error: DomainError, sites: readonly Site[]): AppError => {
           `body.sites.${site}`,
           `${error.quantity.replace(/site \d+$/, `site ${sites[Number(site)]!.siteRef}`)} is ${told}`,
         ]
-      : [fix === undefined ? 'body' : `body.track.${Number(fix) - 1}`, `${error.quantity} is ${told}`];
+      : [pathOf(fix, seen), `${error.quantity} is ${told}`];
   return new AppError('invalid_request', `No result: ${message}`, { faults: [{ path, message }], cause: error });
+};
+
+const pathOf = (fix: string | undefined, seen: string | undefined): string => {
+  if (fix !== undefined) return `body.track.${Number(fix) - 1}`;
+  return seen === undefined ? 'body' : `body.vortexObservations.${Number(seen) - 1}`;
 };
 
 const isoOf = (timeS: number) => new Date(Math.round(timeS * 1000)).toISOString();

@@ -75,13 +75,13 @@ export class DrawService {
     if (net === null) return footprintReply(track, query, null, null);
     const view = viewOf(query);
     const key = `${track.runScenarioId} ${JSON.stringify(view)}`;
-    const { fixes, options } = track;
+    const { fixes, observations, options } = track;
     const bands =
       this.pictures.get(key) ??
       (await gate.pass(signal, async () => {
         // Somebody else may have asked for it while this one waited.
         const kept = this.pictures.get(key);
-        return kept ?? pool.run('drawBands', { fixes, options, net, view }, signal);
+        return kept ?? pool.run('drawBands', { fixes, observations, options, net, view }, signal);
       }));
     this.pictures.set(key, bands);
     return footprintReply(track, query, bands, net);
@@ -99,8 +99,8 @@ export class DrawService {
 
   private async score(actor: Actor, track: FinishedTrack, draw: number, signal: AbortSignal) {
     const { transact, draws, fetches, pool } = this.parts;
-    const { fixes, options, editionId } = track;
-    const storm = await pool.run('storm', { fixes, options }, signal);
+    const { fixes, observations, options, editionId } = track;
+    const storm = await pool.run('storm', { fixes, observations, options }, signal);
     const area = layerArea(storm);
     const none = { siteNo: [], gustMs: [], reason: null };
     if (area === null) return none;

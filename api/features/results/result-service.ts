@@ -2,6 +2,7 @@ import type { Footprint, ResultPoints, SiteDetail, SitesPage, SitesQuery, Stored
 import type { Notice } from '#contract/common.ts';
 import { Terrain, TERRAIN_ROUGHNESS_M } from '#contract/portfolios.ts';
 import type { z } from 'zod';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import type { Actor } from '../../actor.ts';
@@ -23,6 +24,7 @@ export interface FinishedTrack extends Place {
   engineVersion: string;
   currency: string;
   fixes: readonly TrackFix[];
+  observations: readonly ObservedVortices[];
   options: ChainOptions;
   gustThresholdsMs: readonly number[];
   curve: string;
@@ -116,6 +118,7 @@ export class ResultService {
     const { latitude, longitude, roughnessM } = site;
     const explained = await pool.run('explain', {
       fixes: track.fixes,
+      observations: track.observations,
       options: track.options,
       site: { latitude, longitude, roughnessM, fetchM, topographicFactor: 1 },
       gustsMs: track.gustThresholdsMs,

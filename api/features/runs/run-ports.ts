@@ -1,6 +1,7 @@
 import type { Calibration, CurveSet } from '#contract/models.ts';
 import type { Reconciliation } from '#contract/portfolios.ts';
 import type { Track } from '#contract/scenarios.ts';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { BandView, Bands } from '../../compute/bands.ts';
 import type { FootprintGrid } from '#engine/footprint/grid.ts';
@@ -55,6 +56,7 @@ export interface RunTrack {
   digest: string;
   track: Track;
   fixes: TrackFix[];
+  observations: ObservedVortices[];
   provenance: string;
   conversion: string;
   asOf: string | null;

@@ -1,5 +1,6 @@
 import type { Notice } from '#contract/common.ts';
 import { staleness, trackAgeHours } from '#contract/track-age.ts';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
 import { fixesWithRing } from '../../compute/ring-defaults.ts';
@@ -20,6 +21,7 @@ export interface FinishedTrack {
   engineVersion: string;
   currency: string;
   fixes: readonly TrackFix[];
+  observations: readonly ObservedVortices[];
   options: ChainOptions;
   gustThresholdsMs: readonly number[];
   curve: string;
@@ -61,6 +63,7 @@ export class RunReader {
       engineVersion: run.engineVersion,
       currency: run.lossCurrency,
       fixes: fixesWithRing(track!.fixes, calibration.settings),
+      observations: track!.observations,
       options: chainOptions(run.options),
       gustThresholdsMs: run.options.gustThresholdsMs,
       curve: `${curveSet.curve.name} (${curveSet.name}, version ${curveSet.version})`,

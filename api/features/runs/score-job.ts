@@ -141,7 +141,11 @@ export class ScoreJob {
     if (run.engineVersion !== engineVersion()) throw new OutOfDate();
     const { options } = run;
     const fixes = fixesWithRing(track.fixes, calibration.settings);
-    const storm = await pool.run('storm', { fixes, options: chainOptions(options) }, signal);
+    const storm = await pool.run(
+      'storm',
+      { fixes, observations: track.observations, options: chainOptions(options) },
+      signal,
+    );
     const remarks = setUpRemarks(options, calibration, curveSet, track.fixes);
     return { run, track, storm, curve: curveSet.curve, remarks };
   }

@@ -56,5 +56,6 @@ export const changedFixes = (track: Track, resolution: TrackResolution, change: 
       hoursInland: fix.hoursInland,
     };
   });
-  return { ...track, fixes };
+  // What was seen of the vortices belongs to the track as it was.
+  return { fixes, declarations: track.declarations };
 };

@@ -8,6 +8,7 @@ import { positionAt } from '#engine/track/position.ts';
 import { resolveFixes } from '#engine/track/resolution.ts';
 import { PA_PER_HPA } from '#engine/units.ts';
 import { engineFix } from '../../compute/asked-fixes.ts';
+import { engineObservations } from '../../compute/asked-vortices.ts';
 import { fixList, plain } from './reading/track-wording.ts';
 import { checkEntry, checkResolved } from './track-rules.ts';
 
@@ -76,6 +77,21 @@ const disagreement = (fixes: readonly ResolvedFix[], notices: readonly EngineNot
   ];
 };
 
+/** Notices about what radar or satellite showed, in the engine's order. */
+const OF_OBSERVATIONS = [
+  'conditioned-on-observation',
+  'ring-bounded-by-observation',
+  'pattern-rate-observed',
+  'observations-set-aside',
+  'observation-without-effect',
+];
+
+/** TRACK-20: what observed vortices set, as notes. */
+const observed = (notices: readonly EngineNotice[]): TrackFinding[] =>
+  notices
+    .filter(({ code }) => OF_OBSERVATIONS.includes(code))
+    .map(({ text }) => ({ code: 'TRACK-20', severity: 'note', fix: null, text }));
+
 const strongest = (fixes: readonly ResolvedFix[], intensity: ChainOptions['intensity']): TrackResolution['maxima'] => {
   if (fixes.length === 0) return { fix: 0, reportedMs: null, pressureImpliedMs: null, used: intensity };
   const at = fixes.reduce((best, fix, i) => (fix.maxWindMs > fixes[best]!.maxWindMs ? i : best), 0);
@@ -99,7 +115,7 @@ export const resolveTrack = (
   sortByTime: boolean,
   land: LandIndex,
 ): Resolved => {
-  const { fixes, findings } = checkEntry(entered.fixes, sortByTime);
+  const { fixes, findings } = checkEntry(entered.fixes, sortByTime, entered.vortices);
   const track = { ...entered, fixes };
   const unresolved = (said: TrackFinding[]): Resolved => ({
     track,
@@ -115,13 +131,15 @@ export const resolveTrack = (
   if (findings.some(({ severity }) => severity !== 'note')) return unresolved(findings);
   const given = engineFixes(track);
   try {
-    const { fixes: engine, wavenumber, notices } = resolveFixes(given, { ...DEFAULT_OPTIONS, intensity }, land);
+    const options = { ...DEFAULT_OPTIONS, intensity };
+    const observations = engineObservations(track.vortices);
+    const { fixes: engine, wavenumber, notices } = resolveFixes(given, options, land, observations);
     const resolved = engine.map((fix) => toContract(fix, land));
     return {
       track,
       resolution: {
         fixes: resolved,
-        findings: [...findings, ...checkResolved(resolved), ...disagreement(resolved, notices)],
+        findings: [...findings, ...checkResolved(resolved), ...disagreement(resolved, notices), ...observed(notices)],
         path: pathOf(given),
         wavenumber,
         hemisphere: hemisphereOf(fixes),

@@ -1,7 +1,9 @@
 import type { Derivation } from '#contract/derivations.ts';
 import type { Track } from '#contract/scenarios.ts';
 import { derivationWords } from '#contract/variant-words.ts';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
+import { engineObservations } from '../../compute/asked-vortices.ts';
 import { toInstantOrNull } from '../../db/mapping.ts';
 import type { Tx } from '../../transact.ts';
 import { engineFixes } from './resolve-track.ts';
@@ -17,6 +19,7 @@ export type RunTrack = {
   digest: string;
   /** As the engine takes them. */
   fixes: TrackFix[];
+  observations: ObservedVortices[];
   /** Where the track comes from: as declared, and what a variant was made from. */
   provenance: string;
   /** What happens to the winds on their way to 1 min, in words. */
@@ -74,6 +77,7 @@ export class ScenarioReader {
           track: row.track,
           digest: row.digest,
           fixes: engineFixes(row.track),
+          observations: engineObservations(row.track.vortices),
           provenance: provenanceOf(row),
           conversion: averagingConversion(row.track),
           asOf: toInstantOrNull(row.as_of),

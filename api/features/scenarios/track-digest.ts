@@ -1,16 +1,26 @@
 import { createHash } from 'node:crypto';
+import type { VortexObservation } from '#contract/observed-vortices.ts';
 import type { Fix, Track } from '#contract/scenarios.ts';
 
 /** Only where given, so that tracks saved before these radii were read keep their digest. */
 const outerRadii = ({ radius34KtM, radius50KtM }: Fix) =>
   (radius34KtM ?? radius50KtM ?? null) === null ? [] : [radius34KtM ?? null, radius50KtM ?? null];
 
+const sightingOf = (seen: VortexObservation) => [
+  seen.kind,
+  new Date(seen.time).toISOString(),
+  seen.uncertaintyDeg,
+  ...(seen.kind === 'maxima'
+    ? [seen.azimuthsDeg]
+    : [seen.longAxisBearingDeg, seen.majorM, seen.minorM, seen.rotationPeriodMinutes]),
+];
+
 /**
- * Digest of what a track says: its fixes and declarations in a fixed order of fields.
+ * Digest of what a track says: its fixes, declarations and observed vortices in a fixed order of fields.
  *
  * The name of the scenario isn't part of it, so the same track under another name is recognised.
  */
-export const trackDigest = ({ fixes, declarations }: Track): string => {
+export const trackDigest = ({ fixes, declarations, vortices }: Track): string => {
   const canonical = [
     'track-1',
     declarations.windAveragingS,
@@ -30,6 +40,7 @@ export const trackDigest = ({ fixes, declarations }: Track): string => {
       fix.hoursInland,
       ...outerRadii(fix),
     ]),
+    ...(vortices?.length ? [vortices.map(sightingOf)] : []),
   ];
   return createHash('sha256').update(JSON.stringify(canonical)).digest('hex');
 };

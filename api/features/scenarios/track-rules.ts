@@ -1,3 +1,4 @@
+import { observedAt, type VortexObservation } from '#contract/observed-vortices.ts';
 import type { Fix, ResolvedFix, Track, TrackFinding } from '#contract/scenarios.ts';
 import { greatCircleDistance } from '#engine/geo/geodesy.ts';
 import { METRES_PER_NAUTICAL_MILE, PA_PER_HPA, PA_PER_INCH_OF_MERCURY } from '#engine/units.ts';
@@ -259,13 +260,31 @@ const RESOLVED_RULES: readonly ResolvedRule[] = CHECKS_AFTER_RESOLVING;
 /** Puts the fixes in time order; the same array when they already are. */
 const sortedByTime = (fixes: readonly Fix[]): Fix[] => [...fixes].sort((a, b) => seconds(a) - seconds(b));
 
+/** TRACK-19: the pattern of vortices can't be followed to a time at which there is no storm. */
+const observationsOutside = (fixes: readonly Fix[], vortices: readonly VortexObservation[]): TrackFinding[] => {
+  const times = fixes.map(seconds);
+  const [first, last] = [Math.min(...times), Math.max(...times)];
+  const within = `${observedAt(new Date(first * 1000).toISOString())} to ${observedAt(new Date(last * 1000).toISOString())}`;
+  return vortices.flatMap(({ time }, index): TrackFinding[] => {
+    const at = Date.parse(time) / 1000;
+    if (at >= first && at <= last) return [];
+    const text = `Observation ${index + 1} of vortices is at ${observedAt(time)}, outside the track. Its pattern can’t be followed to the storm. Give a time from ${within}, or remove it.`;
+    return [{ code: 'TRACK-19', severity: 'refuse', fix: null, text }];
+  });
+};
+
 /** Findings of the track as entered. With consent, a disorder has been mended and is only noted. */
-export const checkEntry = (fixes: readonly Fix[], sortByTime: boolean): { fixes: Fix[]; findings: TrackFinding[] } => {
+export const checkEntry = (
+  fixes: readonly Fix[],
+  sortByTime: boolean,
+  vortices: readonly VortexObservation[] = [],
+): { fixes: Fix[]; findings: TrackFinding[] } => {
   const ordered = sortByTime ? sortedByTime(fixes) : [...fixes];
   const moved = ordered.filter((fix, index) => fix !== fixes[index]).length;
   const findings = ENTRY_RULES.flatMap(({ code, severity, check }) =>
     check(ordered).map((finding) => ({ code, severity, ...finding })),
   );
+  findings.push(...observationsOutside(ordered, vortices));
   if (moved > 0) {
     findings.push({
       code: 'TRACK-16',

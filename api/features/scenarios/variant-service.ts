@@ -186,6 +186,14 @@ const noticesOf = ({ track }: StoredVersion, made: readonly Made[]): Notice[] =>
           ),
         ]
       : []),
+    ...(track.vortices?.length
+      ? [
+          notice(
+            'observations-left-out',
+            'Variants don’t keep the observed vortices: those belong to the track as it was. Their phases are drawn at random.',
+          ),
+        ]
+      : []),
     ...(track.declarations.asOf === null ? [] : noticesFor('provisional')),
     ...noticesFor('life-safety', 'uncertainty', 'scope'),
   ];

@@ -44,7 +44,7 @@ export class SpreadService {
       const sites = await studiedSites(tx, actor.orgId, request, setup.fixes, this.parts);
       return { setup, sites, ...(await this.curves(tx, actor.orgId, request.curveSetId, setup)) };
     });
-    const inputs = { settings, fixes: setup.fixes, ...curve, approved };
+    const inputs = { settings, fixes: setup.fixes, observations: setup.track.observations, ...curve, approved };
     const switches = request.switches === 'ring' ? ringSwitches(inputs) : switchesOf(inputs);
     const { roughnessM } = sites.batch;
     const onLand = { roughnessM: roughnessM.slice() };

@@ -3,6 +3,7 @@ import type { ChainSettings, SpreadRow } from '#contract/studies.ts';
 import { CHAIN_CHOICES, WIND_CHOICES } from '#contract/wind-choice-catalogue.ts';
 import type { Choice } from '#contract/wind-choices.ts';
 import { DEFAULT_EYE_RATIO, DEFAULT_RING_WIDTH } from '#engine/ring/stability.ts';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import { msFromKnots } from '#engine/units.ts';
 import type { Trial } from '../../compute/spread.ts';
@@ -16,6 +17,7 @@ export interface Switch extends Pick<SpreadRow, 'choice' | 'title' | 'from' | 't
 export interface SwitchInputs {
   settings: ChainSettings;
   fixes: readonly TrackFix[];
+  observations: readonly ObservedVortices[];
   curve: DamageCurve;
   curveSetId: string | null;
   approved: readonly CurveSet[];
@@ -37,8 +39,9 @@ export const ringSwitches = (inputs: SwitchInputs): Switch[] => {
   return [...shapeOfRingSwitches(inputs), ...chainSwitches(inputs).filter(({ choice }) => ofRing.includes(choice))];
 };
 
-export const baseTrial = ({ settings, fixes, curve }: SwitchInputs): Trial => ({
+export const baseTrial = ({ settings, fixes, observations, curve }: SwitchInputs): Trial => ({
   fixes,
+  observations,
   options: chainOptionsOf(settings),
   curve,
   radiusFactor: 1,

@@ -1,4 +1,5 @@
 import type { Calibration, CurveSet } from '#contract/models.ts';
+import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
 import type { Tx } from '../../transact.ts';
 
@@ -8,6 +9,7 @@ export interface StudyTrack {
   name: string;
   number: number;
   fixes: TrackFix[];
+  observations: ObservedVortices[];
   /** When the track is an advisory: its issue time. */
   asOf: string | null;
 }

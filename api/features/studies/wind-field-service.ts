@@ -39,7 +39,12 @@ export class WindFieldService {
       .pass(signal, () =>
         pool.run(
           'windField',
-          { fixes, options: chainOptionsOf(settings), question: { timeS, halfWidthM, points } },
+          {
+            fixes,
+            observations: track.observations,
+            options: chainOptionsOf(settings),
+            question: { timeS, halfWidthM, points },
+          },
           signal,
         ),
       )
