@@ -2,13 +2,11 @@ import { keepPreviousData, queryOptions, useMutation, useQueryClient } from '@ta
 import type { z } from 'zod';
 import {
   cancelRun,
-  getFootprint,
   getResultPoints,
   getRun,
   getRunSlip,
   getSiteDetail,
   listSites,
-  type FootprintView,
   type SiteSort,
 } from '#contract/runs.ts';
 import { call } from '../../api/call.ts';
@@ -23,15 +21,10 @@ export interface ResultAddress {
   runScenarioId: string;
 }
 
-/** Results of a finished track never change. */
-const FOREVER = { staleTime: Infinity } as const;
+export const resultKey = (at: ResultAddress) => [...runKey(at.runId), at.runScenarioId] as const;
 
-export const footprintQuery = (at: ResultAddress, view: FootprintView) =>
-  queryOptions({
-    queryKey: [...runKey(at.runId), at.runScenarioId, 'footprint', view],
-    queryFn: ({ signal }) => call(getFootprint, { params: at, query: { view }, signal }),
-    ...FOREVER,
-  });
+/** Results of a finished track never change. */
+export const FOREVER = { staleTime: Infinity } as const;
 
 export const pointsQuery = (at: ResultAddress) =>
   queryOptions({

@@ -288,10 +288,11 @@ export function MapCanvas(props: MapCanvasProps) {
   }, [started, fixes, chosenFix, ringM]);
 
   const [west, south, east, north] = bounds;
-  const { top, right, bottom, left } = padding;
+  // Room that comes or goes later doesn't move the map.
+  const fit = useEffectEvent((map: MapEngine) => map.fitBounds(bounds, { padding, animate: false }));
   useEffect(() => {
-    started?.map.fitBounds([west, south, east, north], { padding: { top, right, bottom, left }, animate: false });
-  }, [started, west, south, east, north, top, right, bottom, left]);
+    if (started) fit(started.map);
+  }, [started, west, south, east, north]);
 
   const walk = (event: KeyboardEvent) => {
     if (!sites || !view || (event.key !== 'n' && event.key !== 'p') || event.ctrlKey || event.metaKey) return;

@@ -2,10 +2,11 @@ import { useMemo, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import type { Run, RunScenario } from '#contract/runs.ts';
 import { useUnits } from '../../../lib/units.tsx';
-import { boundsOf, longitudeNear, padBounds, type Bounds, type LonLat } from '../../../ui/map/geography.ts';
-import type { MapBands, MapSites, MapView } from '../../../ui/map/map-data.ts';
+import type { MapBands, MapView } from '../../../ui/map/map-data.ts';
 import { StormMap } from '../../../ui/map/storm-map.tsx';
-import { footprintQuery, pointsQuery } from '../result-queries.ts';
+import { pictureQuery } from '../draw-queries.ts';
+import { framing } from '../result-framing.ts';
+import { pointsQuery } from '../result-queries.ts';
 import { mapSummary } from '../result-words.ts';
 
 interface ResultMapProps {
@@ -17,19 +18,6 @@ interface ResultMapProps {
   className?: string;
 }
 
-const WORLD: Bounds = [-100, 0, -40, 45];
-
-/** Where the sites are, else where the wind is, else the track. */
-const framing = (scenario: RunScenario, sites: MapSites | null, bbox: Bounds | null): Bounds => {
-  const reference = scenario.path[Math.floor(scenario.path.length / 2)]?.[0] ?? 0;
-  const points: LonLat[] = sites
-    ? sites.longitude.map((longitude, index) => [longitudeNear(longitude, reference), sites.latitude[index]!])
-    : [];
-  const around = boundsOf(points);
-  if (around) return padBounds(around, 0.12, 0.35);
-  return bbox ?? boundsOf(scenario.path) ?? WORLD;
-};
-
 export function ResultMap({ run, scenario, chosenSiteNo, onChooseSite, fullSize, className }: ResultMapProps) {
   const { gust, label } = useUnits();
   const result = scenario.result!;
@@ -38,14 +26,20 @@ export function ResultMap({ run, scenario, chosenSiteNo, onChooseSite, fullSize,
   const [wished, setWished] = useState<MapView>('p50');
   const view = views.includes(wished) ? wished : 'plain';
   const at = { runId: run.id, runScenarioId: scenario.id };
-  const footprint = useQuery(footprintQuery(at, view));
+  const footprint = useQuery(pictureQuery(at, { view }));
   const points = useQuery(pointsQuery(at));
   const sites = points.data ?? null;
 
   const bands = useMemo<MapBands | null>(
     () =>
       footprint.data
-        ? { view: footprint.data.view, levels: footprint.data.levels, features: footprint.data.bands.features }
+        ? {
+            view: footprint.data.view,
+            levels: footprint.data.levels,
+            features: footprint.data.bands.features,
+            bbox: footprint.data.bbox,
+            computed: footprint.data.computed?.bounds ?? null,
+          }
         : null,
     [footprint.data],
   );
@@ -66,8 +60,9 @@ export function ResultMap({ run, scenario, chosenSiteNo, onChooseSite, fullSize,
       bounds={bounds}
       track={track}
       bands={bands}
+      dimmed={footprint.isPlaceholderData}
       bandsNote={
-        footprint.isPending
+        footprint.isPending || footprint.isPlaceholderData
           ? 'Drawing the footprint …'
           : footprint.isError
             ? `The footprint wasn’t read: ${footprint.error.message}`
