@@ -1,9 +1,8 @@
-import { EARTH_RADIUS } from '#engine/constants.ts';
 import { windAt, type WindSteps } from '#engine/footprint/wind-at.ts';
-import { normalisedBearing, type Place } from '#engine/geo/geodesy.ts';
+import { destination, normalisedBearing, type Place } from '#engine/geo/geodesy.ts';
 import { legAt } from '#engine/track/position.ts';
 import { STATE, STATE_SIZE, type Storm } from '#engine/track/storm.ts';
-import { degrees, radians } from '#engine/units.ts';
+import { degrees } from '#engine/units.ts';
 
 /** Which picture is asked for: at what time [s], how wide to each side [m], how many points along one side. */
 export type WindFieldQuestion = { readonly timeS: number; readonly halfWidthM: number; readonly points: number };
@@ -36,16 +35,6 @@ const RADII = 120;
 const RADII_POWER = 1.5;
 const AZIMUTHS = 36;
 
-/** A place at a distance [m] in a direction [deg] along the sphere. */
-const placeAt = ({ latitude, longitude }: Place, bearingDeg: number, distanceM: number): Place => {
-  const angle = distanceM / EARTH_RADIUS;
-  const phi = radians(latitude);
-  const turn = radians(bearingDeg);
-  const sinPhi = Math.sin(phi) * Math.cos(angle) + Math.cos(phi) * Math.sin(angle) * Math.cos(turn);
-  const turned = Math.atan2(Math.sin(turn) * Math.sin(angle) * Math.cos(phi), Math.cos(angle) - Math.sin(phi) * sinPhi);
-  return { latitude: degrees(Math.asin(sinPhi)), longitude: longitude + degrees(turned) };
-};
-
 const nearestState = ({ states, stateCount }: Storm, timeS: number): number => {
   let nearest = 0;
   const gap = (k: number) => Math.abs(states[k * STATE_SIZE + STATE.timeS]! - timeS);
@@ -60,7 +49,7 @@ export const windFieldAt = (storm: Storm, { timeS, halfWidthM, points }: WindFie
   const centre = { latitude: state(STATE.latitude), longitude: state(STATE.longitude) };
   const headingDeg = state(STATE.heading);
   const at = (bearingDeg: number, distanceM: number): WindSteps => {
-    const place = placeAt(centre, bearingDeg, distanceM);
+    const place = destination(centre, bearingDeg, distanceM);
     return windAt(storm, k, { ...place, roughnessM: null, fetchM: [], topographicFactor: 1 });
   };
   const radiusM = Array.from({ length: RADII }, (_, i) => halfWidthM * ((i + 1) / RADII) ** RADII_POWER);

@@ -30,7 +30,7 @@ export const EvaluationFix = z.strictObject({
       'The averaging period must be 60, 120, 180 or 600 s.',
     ),
   ),
-  radiusOfMaxWindM: missing(between(2000, 500_000, ' m')),
+  radiusOfMaxWindM: missing(between(2000, 2_000_000, ' m')),
   /** Reach of 34, 50 and 64-kt wind in the quadrants NE, SE, SW, NW; 0 = none. */
   radius34KtM: missing(radii),
   radius50KtM: missing(radii),

@@ -425,7 +425,7 @@ export const CHAIN_CHOICES: readonly Choice<'intensity' | 'anchor' | 'mesovortic
     title: 'Intensity from',
     meaning: 'Which of the two sets the maximum wind of a fix that gives both a central pressure and a reported wind.',
     reason:
-      'A best track’s wind is the largest 1-min wind anywhere; matching the whole ring to it makes gusts too strong. Untuned hindcasts of ten storms, bias and mean error of peak gusts: from the wind +22 and 27 % on 25 open peaks, +45 and 45 % on 16 kept back; from the pressure with widths from 64-kt radii +6 and 13 %, +3 and 11 %. The price: gusts of 58 m/s and more come out about 6 % low. A fix given by wind alone is run by wind.',
+      'A best track’s wind is the largest 1-min wind anywhere; matching the whole ring to it makes gusts too strong. In the untuned hindcast of 25 open peaks (page Validation), bias and mean error: from the pressure +6 and 13 %, from the wind +18 and 23 %, or +23 and 27 % where it is taken as the ring’s mean. The price: gusts of 58 m/s and more come out about 6 % low. A fix given by wind alone is run by wind.',
     values: [
       {
         value: 'pressure',
