@@ -47,6 +47,7 @@ import { SiteStore } from './features/portfolios/site-store.ts';
 import { UploadService } from './features/portfolios/upload-service.ts';
 import { evaluationRoutes } from './features/evaluations/evaluation-routes.ts';
 import { EvaluationService } from './features/evaluations/evaluation-service.ts';
+import { DriverService } from './features/studies/driver-service.ts';
 import { SpreadService } from './features/studies/spread-service.ts';
 import { StudyGate } from './features/studies/study-gate.ts';
 import { studyRoutes } from './features/studies/study-routes.ts';
@@ -56,6 +57,7 @@ import { ringRoutes } from './features/rings/ring-routes.ts';
 import { RingService } from './features/rings/ring-service.ts';
 import { DrawService } from './features/results/draw-service.ts';
 import { DrawStore } from './features/results/draw-store.ts';
+import { LossSitesReader } from './features/results/loss-sites-reader.ts';
 import { resultRoutes } from './features/results/result-routes.ts';
 import { ResultService } from './features/results/result-service.ts';
 import { ResultStore } from './features/results/result-store.ts';
@@ -251,7 +253,14 @@ export const createContainer = (
     },
     editions: new LargestSitesReader({ ...portfolioParts, portfolios: runBase.editions }),
   };
-  const studies = { spreads: new SpreadService(studyParts), windFields: new WindFieldService(studyParts) };
+  const studies = {
+    spreads: new SpreadService(studyParts),
+    windFields: new WindFieldService(studyParts),
+    drivers: new DriverService({
+      ...{ transact, pool, engineVersion },
+      ...{ runs: resultBase.tracks, sites: new LossSitesReader(), gate: new StudyGate(1, 6, 10) },
+    }),
+  };
 
   const rings = {
     rings: new RingService(engineVersion),

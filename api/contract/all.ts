@@ -1,5 +1,6 @@
 import * as billing from './billing.ts';
 import * as draws from './draws.ts';
+import * as drivers from './drivers.ts';
 import type { Endpoint } from './endpoint.ts';
 import * as evaluations from './evaluations.ts';
 import * as models from './models.ts';
@@ -28,6 +29,7 @@ export const ALL_ENDPOINTS: readonly Endpoint[] = [
   models,
   runs,
   draws,
+  drivers,
   evaluations,
   studies,
   variants,

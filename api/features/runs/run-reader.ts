@@ -1,4 +1,5 @@
 import type { Notice } from '#contract/common.ts';
+import type { DamageCurve } from '#contract/models.ts';
 import { staleness, trackAgeHours } from '#contract/track-age.ts';
 import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
@@ -25,6 +26,7 @@ export interface FinishedTrack {
   options: ChainOptions;
   gustThresholdsMs: readonly number[];
   curve: string;
+  damageCurve: DamageCurve;
   calibration: string;
   calibrationState: string;
   /** When the track is an advisory: its issue time. */
@@ -67,6 +69,7 @@ export class RunReader {
       options: chainOptions(run.options),
       gustThresholdsMs: run.options.gustThresholdsMs,
       curve: `${curveSet.curve.name} (${curveSet.name}, version ${curveSet.version})`,
+      damageCurve: curveSet.curve,
       calibration: `${calibration.code} version ${calibration.version}`,
       calibrationState: calibration.state,
       trackAsOf: track!.asOf,

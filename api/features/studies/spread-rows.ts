@@ -1,4 +1,4 @@
-import type { SpreadRow } from '#contract/studies.ts';
+import type { SpreadReply, SpreadRow } from '#contract/studies.ts';
 import type { Outcome, TrialResult } from '../../compute/spread.ts';
 import { noEffectReason, type SpreadFacts } from './spread-reasons.ts';
 import type { Switch } from './spread-switches.ts';
@@ -51,3 +51,10 @@ export const ranked = (rows: readonly SpreadRow[]): SpreadRow[] => {
   const gust = (row: SpreadRow) => Math.abs(row.peakGustChangeMs ?? 0);
   return [...rows].sort((a, b) => has(b) - has(a) || gross(b) - gross(a) || gust(b) - gust(a));
 };
+
+/** What stands before any switch is tried. */
+export const baseOf = ({ peakMs, strongest, grossMinor }: Outcome, refs: readonly string[]): SpreadReply['base'] => ({
+  peakGustMs: peakMs,
+  strongestSite: strongest === null ? '' : refs[strongest]!,
+  grossMinor,
+});

@@ -11,7 +11,7 @@ import type { SpreadReply as Computed } from '../../compute/protocol.ts';
 import { AppError, notFound } from '../../errors.ts';
 import type { Transact, Tx } from '../../transact.ts';
 import { factsOf } from './spread-reasons.ts';
-import { ranked, rowOf } from './spread-rows.ts';
+import { baseOf, ranked, rowOf } from './spread-rows.ts';
 import { baseTrial, ringSwitches, switchesOf, type SwitchInputs } from './spread-switches.ts';
 import { StudyGate } from './study-gate.ts';
 import type { StudyEditions, StudyModels, StudyTracks } from './study-ports.ts';
@@ -50,7 +50,6 @@ export class SpreadService {
     const onLand = { roughnessM: roughnessM.slice() };
     const task = { base: baseTrial(inputs), trials: switches.map(({ trial }) => trial), sites: sites.batch };
     const computed = await this.gate.pass(signal, () => pool.run('spread', task, signal)).catch(refused);
-    const { outcome } = computed.base;
     const facts = factsOf(settings, setup.fixes, onLand, computed.base);
     const rows = switches.map((tried, i) => rowOf(tried, computed.trials[i]!, facts));
     const intensity = intensityOf(computed);
@@ -62,11 +61,7 @@ export class SpreadService {
       sites: sites.said,
       currency: sites.currency,
       curve: curve.words,
-      base: {
-        peakGustMs: outcome.peakMs,
-        strongestSite: outcome.strongest === null ? '' : sites.refs[outcome.strongest]!,
-        grossMinor: outcome.grossMinor,
-      },
+      base: baseOf(computed.base.outcome, sites.refs),
       rows: ranked(rows),
       intensity,
       notices: [

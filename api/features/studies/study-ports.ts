@@ -1,6 +1,8 @@
-import type { Calibration, CurveSet } from '#contract/models.ts';
+import type { Notice } from '#contract/common.ts';
+import type { Calibration, CurveSet, DamageCurve } from '#contract/models.ts';
 import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { TrackFix } from '#engine/track/fixes.ts';
+import type { ChainOptions } from '#engine/track/options.ts';
 import type { Tx } from '../../transact.ts';
 
 /** A version of a scenario as a study needs it. */
@@ -49,6 +51,36 @@ export interface StudyEditions {
     most: number,
     isWithinReach: (latitude: number, longitude: number) => boolean,
   ): Promise<LargestSites | null>;
+}
+
+/** A finished track of a run, with everything its results rest on. */
+export interface StudiedRun {
+  runNumber: string;
+  runScenarioId: string;
+  storedAt: Date;
+  editionId: string;
+  engineVersion: string;
+  currency: string;
+  fixes: readonly TrackFix[];
+  observations: readonly ObservedVortices[];
+  options: ChainOptions;
+  curve: string;
+  damageCurve: DamageCurve;
+  notices: Notice[];
+}
+
+export interface StudiedRuns {
+  /** Refuses what isn’t there (`not_found`) and what isn’t finished (`result_not_ready`). */
+  require(tx: Tx, orgId: string, runId: string, runScenarioId: string): Promise<StudiedRun>;
+}
+
+type StoredTrack = Pick<StudiedRun, 'runScenarioId' | 'storedAt' | 'editionId'>;
+
+export interface LossSites {
+  /** The largest gross, within reach of the track; and how many sites are. */
+  largest(tx: Tx, orgId: string, track: StoredTrack, most: number): Promise<{ sites: StudySite[]; of: number }>;
+  /** One of them; null when there is no such site, or it is out of reach. */
+  one(tx: Tx, orgId: string, track: StoredTrack, siteNo: number): Promise<StudySite | null>;
 }
 
 export interface StudyModels {

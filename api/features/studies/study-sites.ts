@@ -72,7 +72,7 @@ const askedSites = (sites: EvaluationRequest['sites'], land: () => LandIndex): S
 });
 
 /** As a run scores them; overland distances are left to the land polygons. */
-const editionBatch = (sites: readonly StudySite[]): SiteBatch => {
+export const editionBatch = (sites: readonly StudySite[]): SiteBatch => {
   const column = (pick: (site: StudySite) => number) => Float64Array.from(sites, pick);
   return {
     count: sites.length,
