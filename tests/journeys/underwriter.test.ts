@@ -304,8 +304,8 @@ describe('an underwriter, from the first sign-in to the export', () => {
     await page.getByRole('link', { name: 'Map', exact: true }).click();
     const map = region(`Footprint of ${scenario}`);
     await expect.poll(() => coloursIn(page, map.locator('canvas'))).toBeGreaterThan(9);
-    for (const view of ['Plain', '90 %', 'Difference', 'Enhanced'])
-      await map.getByRole('radio', { name: view }).click();
+    for (const view of ['Plain', 'Difference', 'Enhanced', '90 %', '99 %', 'Median'])
+      await map.getByRole('radio', { name: view, exact: true }).click();
     await page.getByText('Drawing the footprint …').waitFor({ state: 'hidden' });
     await station('23-map');
     await map.getByRole('button', { name: /^Table of what is in view/ }).click();
@@ -313,6 +313,31 @@ describe('an underwriter, from the first sign-in to the export', () => {
     await twin.waitFor();
     expect(await twin.getByRole('row').count()).toBeGreaterThan(10);
     await station('24-map-table');
+  });
+
+  it('steps through single draws and the chance of a gust', async () => {
+    const map = region(`Footprint of ${scenario}`);
+    await map.getByRole('button', { name: /^Map/ }).click();
+    const drawn = page.waitForResponse((response) => response.url().includes('view=draw'));
+    await map.getByRole('radio', { name: 'One draw' }).click();
+    await drawn;
+    await map.getByText('none is likelier for one street').waitFor();
+    await page.getByText('Working out this draw …').waitFor({ state: 'hidden' });
+    const panel = page.getByRole('complementary', { name: 'In this draw' });
+    await panel.getByRole('heading', { name: 'Sites by peak gust' }).waitFor();
+    const stepper = map.getByRole('group', { name: 'Draws in the order of event loss' });
+    await stepper.getByRole('button', { name: /^Draw at 95 %/ }).click();
+    const rank = () => stepper.getByRole('status').innerText();
+    const high = await rank();
+    await page.keyboard.press('[');
+    await expect.poll(rank).not.toBe(high);
+    expect(new URL(page.url()).searchParams.get('view')).toBe('draw');
+    await page.getByText('Working out this draw …').waitFor({ state: 'hidden' });
+    await station('25-one-draw');
+    await map.getByRole('radio', { name: 'Chance above' }).click();
+    await page.getByText('Counting the draws above this gust …').waitFor({ state: 'hidden' });
+    await map.getByText('not the chance of the storm').waitFor();
+    await station('26-chance');
   });
 
   it('reads what the run rests on', async () => {
@@ -326,10 +351,10 @@ describe('an underwriter, from the first sign-in to the export', () => {
       .waitFor();
     for (const { code } of NOTICE_THEMES.slice(0, 5))
       await region('Cautions').getByText(code.replaceAll('-', ' '), { exact: false }).first().waitFor();
-    await station('25-slip');
+    await station('27-slip');
     await page.getByRole('navigation', { name: 'Main' }).getByRole('link', { name: 'Runs' }).first().click();
     await page.getByRole('link', { name: run.number }).first().waitFor();
-    await station('26-runs');
+    await station('28-runs');
   });
 });
 

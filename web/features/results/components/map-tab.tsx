@@ -116,7 +116,7 @@ export function MapTab({ run, scenario, chosenSiteNo, onChooseSite }: MapTabProp
       ) : (
         <aside
           aria-label={isDraw ? 'In this draw' : 'Summary'}
-          className="flex min-w-0 flex-col gap-3.5 overflow-y-auto rounded-3 border border-rule bg-sheet p-4 shadow-2 wide:absolute wide:top-15 wide:right-3 wide:z-2 wide:max-h-[calc(100%-11.5rem)] wide:w-90"
+          className="flex min-w-0 flex-col gap-3.5 overflow-y-auto rounded-3 border border-rule bg-sheet p-4 shadow-2 wide:absolute wide:top-15 wide:right-3 wide:z-2 wide:max-h-[calc(100%-13rem)] wide:w-90"
         >
           {isDraw && ranked ? (
             <DrawPanel
