@@ -9,6 +9,7 @@ import {
   listSites,
   type SiteSort,
 } from '#contract/runs.ts';
+import { getDrivers, getSiteDrivers } from '#contract/drivers.ts';
 import { call } from '../../api/call.ts';
 
 const runKey = (runId: string) => ['runs', 'one', runId] as const;
@@ -59,6 +60,20 @@ export const siteQuery = (at: ResultAddress, siteNo: number) =>
   queryOptions({
     queryKey: [...runKey(at.runId), at.runScenarioId, 'site', siteNo],
     queryFn: ({ signal }) => call(getSiteDetail, { params: { ...at, siteNo }, signal }),
+    ...FOREVER,
+  });
+
+/** Of the event, or of one site; nothing is worked out before somebody asks. */
+export const driversQuery = (at: ResultAddress, siteNo: number | null, asked: boolean) =>
+  queryOptions({
+    queryKey: [...runKey(at.runId), at.runScenarioId, 'drivers', siteNo],
+    queryFn: ({ signal }) =>
+      siteNo === null
+        ? call(getDrivers, { params: at, signal })
+        : call(getSiteDrivers, { params: { ...at, siteNo }, signal }),
+    enabled: asked,
+    retry: false,
+    refetchOnWindowFocus: false,
     ...FOREVER,
   });
 

@@ -8,6 +8,7 @@ import { paths } from '../../../paths.ts';
 import { Card } from '../../../ui/card.tsx';
 import { GustHistogram } from '../../../ui/charts/gust-histogram.tsx';
 import { sitesAboveText } from '../result-words.ts';
+import { Drivers } from './drivers.tsx';
 import { HeadlineCard } from './headline-card.tsx';
 import { ResultMap } from './result-map.tsx';
 import { TracksCard } from './tracks-card.tsx';
@@ -34,6 +35,9 @@ export function Overview({ run, scenario, onChooseSite }: OverviewProps) {
             vortices={result.gross !== null}
             fileName={`${run.number}-sites-by-gust`}
           />
+        </Card>
+        <Card title="What drives it" aside="eyewall ring">
+          <Drivers key={scenario.id} at={{ runId: run.id, runScenarioId: scenario.id }} />
         </Card>
       </div>
       <div className="flex min-w-0 flex-col gap-3.5">

@@ -16,9 +16,10 @@ import { Chip } from '../../../ui/chip.tsx';
 import { Drawer } from '../../../ui/drawer.tsx';
 import { ProblemNotice } from '../../../ui/problem.tsx';
 import { Skeleton } from '../../../ui/skeleton.tsx';
-import { siteQuery } from '../result-queries.ts';
+import { siteQuery, type ResultAddress } from '../result-queries.ts';
 import { noRangeReason } from '../result-words.ts';
 import { buildingText, fetchRows, ladderRungs } from '../site-words.ts';
+import { Drivers } from './drivers.tsx';
 import { TerrainEffects } from './terrain-effects.tsx';
 
 interface SiteDrawerProps {
@@ -75,7 +76,7 @@ export function SiteDrawer({ run, scenario, siteNo, onPrevious, onNext, onClose,
             className="m-4"
           />
         ) : site ? (
-          <SiteBody run={run} site={site} />
+          <SiteBody run={run} site={site} at={{ runId: run.id, runScenarioId: scenario.id }} />
         ) : (
           waits && <DrawerSkeleton />
         )}
@@ -106,7 +107,13 @@ function DrawerSkeleton() {
   );
 }
 
-function SiteBody({ run, site }: { run: Run; site: SiteDetail }) {
+interface SiteProps {
+  run: Run;
+  site: SiteDetail;
+  at: ResultAddress;
+}
+
+function SiteBody({ run, site, at }: SiteProps) {
   const { gust, label } = useUnits();
   const building = buildingText(site);
   return (
@@ -123,13 +130,13 @@ function SiteBody({ run, site }: { run: Run; site: SiteDetail }) {
             : `Below the floor: the gust stays under ${gust(20)} ${label} throughout the storm, so there is no loss.`}
         </p>
       ) : (
-        <ScoredSite run={run} site={site} />
+        <ScoredSite run={run} site={site} at={at} />
       )}
     </>
   );
 }
 
-function ScoredSite({ run, site }: { run: Run; site: SiteDetail }) {
+function ScoredSite({ run, site, at }: SiteProps) {
   const { gust, label } = useUnits();
   const vortices = site.p5Ms !== null && site.p50Ms !== null && site.p95Ms !== null;
   const plainMs = site.plainMs ?? 0;
@@ -169,6 +176,10 @@ function ScoredSite({ run, site }: { run: Run; site: SiteDetail }) {
         <CurveAndTerms run={run} site={site} vortices={vortices} />
         <Ground site={site} />
         <TerrainEffects effects={site.terrainEffects} />
+        <section aria-label="What drives it">
+          <h3 className="text-15">What drives it</h3>
+          <Drivers key={site.siteNo} at={at} siteNo={site.siteNo} />
+        </section>
       </div>
     </>
   );
