@@ -30,6 +30,7 @@ const draft: TrackDraft = {
   windAveragingS: 60,
   source: '',
   asOf: null,
+  vortices: [],
 };
 const resolved = draft.fixes.map((fix) => ({
   ...fix,

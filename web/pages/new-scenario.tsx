@@ -28,7 +28,13 @@ export const loader = async (context: LoaderFunctionArgs) => {
   return holdsOneOf(session, TRACK_WRITERS) ? null : redirect(paths.scenarios());
 };
 
-const NEW_TABLE: TrackDraft = { fixes: [emptyFix(), emptyFix()], windAveragingS: null, source: '', asOf: null };
+const NEW_TABLE: TrackDraft = {
+  fixes: [emptyFix(), emptyFix()],
+  windAveragingS: null,
+  source: '',
+  asOf: null,
+  vortices: [],
+};
 
 interface Started {
   name: string;
@@ -53,7 +59,7 @@ export function Component() {
         onRead={(reply) =>
           setStarted({
             name: asName(reply.name),
-            draft: { fixes: reply.fixes, windAveragingS: reply.windAveragingS, source: '', asOf: null },
+            draft: { fixes: reply.fixes, windAveragingS: reply.windAveragingS, source: '', asOf: null, vortices: [] },
             read: reply,
           })
         }

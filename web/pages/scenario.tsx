@@ -2,6 +2,7 @@ import { useRef, useState } from 'react';
 import { useQueryClient, useSuspenseQuery } from '@tanstack/react-query';
 import { Pencil, Play, RefreshCw, Save, Undo2 } from 'lucide-react';
 import { Link, useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
+import { conditionedLabel } from '#contract/observed-vortices.ts';
 import { TRACK_WRITERS, UNDERWRITERS } from '#contract/roles.ts';
 import type { ScenarioVersion } from '#contract/scenarios.ts';
 import { derivationWords } from '#contract/variant-words.ts';
@@ -107,6 +108,7 @@ function Editor({ version: fetched }: { version: ScenarioVersion }) {
           <span>
             {counted(draft.fixes.length, 'fix', 'fixes')}, {base.resolution.hemisphere}ern hemisphere
           </span>
+          {conditionedLabel(draft.vortices) && <span>{conditionedLabel(draft.vortices)}</span>}
           {base.stale && <StaleChip stale={base.stale} what="Stale track" />}
           {base.derivation && (
             <span>

@@ -1,6 +1,7 @@
 import type { LossRange } from '#contract/common.ts';
 import type { Calibration, CurveSet } from '#contract/models.ts';
 import { noticesFor, RESULT_NOTICES } from '#contract/notices.ts';
+import { conditionedLabel } from '#contract/observed-vortices.ts';
 import { chosenInWords, regimeInWords } from '#contract/wind-choice-catalogue.ts';
 import type { Run, RunEvent, RunScenario, RunSlip, RunSummary } from '#contract/runs.ts';
 import type { Notice } from '#contract/common.ts';
@@ -60,12 +61,12 @@ const STAMP: Notice = {
 
 /** What every reply about a run carries. */
 export const runNotices = (
-  { stamped, acceptedAt }: { stamped: boolean; acceptedAt: Date },
+  { stamped, acceptedAt, options }: Pick<RunRecord, 'stamped' | 'acceptedAt' | 'options'>,
   staleAfterHours: number,
-  tracks: readonly { asOf: string | null; name: string }[],
+  tracks: readonly Pick<RunTrack, 'asOf' | 'name' | 'track'>[],
 ): Notice[] => {
   const provisional = tracks
-    .filter((track): track is { asOf: string; name: string } => track.asOf !== null)
+    .flatMap(({ asOf, name }) => (asOf === null ? [] : [{ asOf, name }]))
     .map(({ asOf, name }): Notice => ({
       code: 'provisional',
       text: `${name}: track ${ageWhenRunWords(asOf, acceptedAt, staleAfterHours)}; the next advisory supersedes it.`,
@@ -75,8 +76,15 @@ export const runNotices = (
     ...(stamped ? [STAMP] : []),
     ...provisional,
     ...(provisional.length > 0 ? noticesFor('provisional') : []),
+    ...(options.mesovortices ? tracks.flatMap(conditionedNotice) : []),
     ...RESULT_NOTICES,
   ];
+};
+
+const conditionedNotice = ({ name, track }: Pick<RunTrack, 'name' | 'track'>): Notice[] => {
+  const label = conditionedLabel(track.vortices);
+  if (label === null) return [];
+  return [{ code: 'conditioned-on-observation', text: `${name}: ${label}.`, version: NOTICE_VERSION }];
 };
 
 /** What stays the same whenever the run is read: how old the advisory was when the run was accepted. */

@@ -45,6 +45,7 @@ export async function studySetup(
       notice('exploratory', 'Exploratory: a study of settings, stored nowhere. A file rests on a run.'),
       ...(leavesRing ? [notice('ring-from-calibration', ringWords(calibration))] : []),
       ...(track.asOf === null ? [] : provisional(track.name, track.asOf)),
+      ...conditioned(track),
       ...RESULT_NOTICES,
     ],
   };
@@ -56,6 +57,13 @@ const ringWords = (calibration: Calibration | null): string => {
   }
   const { ringWidthFraction, eyeVorticityRatio } = calibration.settings;
   return `Where the track gives no ring: width ${ringWidthFraction} and eye ratio ${eyeVorticityRatio} from calibration ${calibration.code} version ${calibration.version}, as in a run.`;
+};
+
+const conditioned = ({ observations }: StudyTrack): Notice[] => {
+  if (observations.length === 0) return [];
+  const times = observations.map(({ timeLabel }) => timeLabel).join(', ');
+  const text = `Conditioned on vortices observed at ${times}, where the vortex layer is on.`;
+  return [notice('conditioned-on-observation', text)];
 };
 
 const provisional = (name: string, asOf: string): Notice[] => [

@@ -1,4 +1,5 @@
 import type { z } from 'zod';
+import type { VortexObservation } from '#contract/observed-vortices.ts';
 import type { Averaging, Fix, Track, TrackDeclarations } from '#contract/scenarios.ts';
 
 export type AveragingSeconds = z.infer<typeof Averaging>;
@@ -13,6 +14,7 @@ export interface TrackDraft {
   windAveragingS: AveragingSeconds | null;
   source: string;
   asOf: string | null;
+  vortices: readonly VortexObservation[];
 }
 
 export const emptyFix = (): DraftFix => ({
@@ -31,11 +33,12 @@ export const emptyFix = (): DraftFix => ({
   hoursInland: null,
 });
 
-export const draftOf = ({ fixes, declarations }: Track): TrackDraft => ({
+export const draftOf = ({ fixes, declarations, vortices }: Track): TrackDraft => ({
   fixes,
   windAveragingS: declarations.windAveragingS,
   source: declarations.source,
   asOf: declarations.asOf,
+  vortices: vortices ?? [],
 });
 
 const isComplete = (fix: DraftFix): fix is Fix => fix.time !== null && fix.latitude !== null && fix.longitude !== null;
@@ -57,7 +60,8 @@ export const trackOf = (draft: TrackDraft): Track | null => {
     source: draft.source,
     asOf: draft.asOf,
   };
-  return { fixes: draft.fixes.filter(isComplete), declarations };
+  const fixes = draft.fixes.filter(isComplete);
+  return draft.vortices.length === 0 ? { fixes, declarations } : { fixes, declarations, vortices: [...draft.vortices] };
 };
 
 /** Why the draft can't be saved or resolved yet, in the person's words; null when it can. */

@@ -25,6 +25,7 @@ import { FindingsList } from './findings-list.tsx';
 import { FixDetails } from './fix-details.tsx';
 import { FixGrid } from './fix-grid.tsx';
 import { Maxima } from './maxima.tsx';
+import { ObservedVortices } from './observed-vortices.tsx';
 import { TrackMap } from './track-map.tsx';
 
 interface TrackEditorProps {
@@ -155,6 +156,12 @@ export function TrackEditor({ draft, change, sortByTime, onSortByTime, readOnly,
               onChange={(value) => change((before) => withFix(before, row, value))}
             />
           )}
+          <ObservedVortices
+            vortices={draft.vortices}
+            firstTime={draft.fixes[row]?.time ?? null}
+            readOnly={readOnly}
+            onChange={(vortices) => change((before) => ({ ...before, vortices }))}
+          />
         </div>
       </div>
       {resolved.length > 1 && (
