@@ -3,9 +3,10 @@ import userEvent from '@testing-library/user-event';
 import { useState, type ReactNode } from 'react';
 import { MemoryRouter } from 'react-router-dom';
 import { describe, expect, it } from 'vitest';
+import type { Calibration } from '#contract/models.ts';
 import { WindChoices } from '#contract/wind-choices.ts';
 import { OptionsStep } from '../../web/features/runs/components/options-step.tsx';
-import { DEFAULT_OPTIONS, isSameRequest, type RunSetup } from '../../web/features/runs/run-setup.ts';
+import { DEFAULT_OPTIONS, departures, isSameRequest, type RunSetup } from '../../web/features/runs/run-setup.ts';
 import { TerrainEffects } from '../../web/features/results/components/terrain-effects.tsx';
 import { UnitsProvider } from '../../web/lib/units.tsx';
 
@@ -22,6 +23,28 @@ const withUnits = (children: ReactNode, unit = 'ms') =>
     </MemoryRouter>,
   );
 const open = () => userEvent.click(screen.getByRole('button', { name: /wind field choices$/ }));
+
+describe('the amplitude regime of a run', () => {
+  it('is chosen by the catalogue’s words and left out when it is the default', async () => {
+    withUnits(<Held />);
+    await userEvent.click(screen.getByRole('radio', { name: 'Always breaking down' }));
+    expect(options.regime).toBe('breakdown');
+    await userEvent.click(screen.getByRole('radio', { name: 'Mixed' }));
+    expect(options).toEqual(DEFAULT_OPTIONS);
+  });
+
+  it('isn’t asked where the vortices are off', async () => {
+    withUnits(<Held />);
+    await userEvent.click(screen.getByRole('radio', { name: 'Plain' }));
+    expect(screen.queryByText('Amplitude regime')).toBeNull();
+  });
+
+  it('departs from the calibration by name', () => {
+    const calibration = { settings: { intensity: 'pressure', anchor: 'auto' } } as Calibration;
+    expect(departures({ ...DEFAULT_OPTIONS, regime: 'breakdown' }, calibration)).toEqual(['amplitude regime']);
+    expect(departures({ ...DEFAULT_OPTIONS, regime: 'mixed' }, calibration)).toEqual([]);
+  });
+});
 
 describe('the wind field choices of a run', () => {
   it('are all default until one is confirmed, and say which one isn’t', async () => {
