@@ -42,6 +42,21 @@ type GridShape = Pick<FootprintGrid, 'west' | 'south' | 'stepDeg' | 'nx' | 'ny'>
 
 /** Area between each level and the next, as polygons with holes in longitude and latitude; empty bands are left out. */
 export function bandsOf(grid: GridShape, values: ArrayLike<number>, levels: readonly number[]): Bands {
+  const trace = tracer(grid, values);
+  return bandsBetween(grid, levels.map(trace), levels);
+}
+
+/** Apart by so little that it shows nowhere, lines that would lie on each other stay nested [m/s]. */
+const APART = 1e-6;
+
+/** Area between each chance of a gust and the next: `fields` hold the gust reached with each of CHANCE_LEVELS. */
+export function chanceBands(grid: GridShape, fields: readonly ArrayLike<number>[], gust: number): Bands {
+  const above = fields.map((field, k) => tracer(grid, field)(gust + k * APART));
+  return bandsBetween(grid, above, CHANCE_LEVELS);
+}
+
+/** Rings around what lies above a value, in the tracer’s own coordinates. */
+function tracer(grid: GridShape, values: ArrayLike<number>): (level: number) => Ring[] {
   const width = grid.nx + 2;
   const height = grid.ny + 2;
   const padded = new Array<number>(width * height).fill(NOTHING);
@@ -52,7 +67,11 @@ export function bandsOf(grid: GridShape, values: ArrayLike<number>, levels: read
     }
   }
   const trace = contours().size([width, height]);
-  const above = levels.map((level) => trace.contour(padded, level).coordinates.flat());
+  return (level) => trace.contour(padded, level).coordinates.flat();
+}
+
+/** Each level's rings and the next one's, as polygons with holes. */
+function bandsBetween(grid: GridShape, above: readonly Ring[][], levels: readonly number[]): Bands {
   // The tracer puts the value with index i at i + 0.5, and the padding shifts the grid by one.
   const place = ([x, y]: Position): Position => [
     rounded(grid.west + (x! - 1.5) * grid.stepDeg),

@@ -1,4 +1,4 @@
-import { drawField, type DrawView } from '#engine/footprint/draw-fields.ts';
+import { chanceFields, drawField } from '#engine/footprint/draw-fields.ts';
 import type { Net } from '#engine/footprint/grid.ts';
 import { scoreSites, type ScoreControl, type SiteBatch } from '#engine/footprint/site-peaks.ts';
 import type { Area } from '#engine/footprint/strong-wind-area.ts';
@@ -7,13 +7,23 @@ import { REFERENCE_CURVE } from '#engine/loss/damage-curve.ts';
 import { VORTEX_REACH } from '#engine/ring/draws.ts';
 import { STATE, STATE_SIZE, type Storm } from '#engine/track/storm.ts';
 import { radians } from '#engine/units.ts';
-import { bandsOf, CHANCE_LEVELS, GUST_LEVELS, type Bands } from './bands.ts';
+import { bandsOf, CHANCE_LEVELS, chanceBands, GUST_LEVELS, type Bands } from './bands.ts';
+
+/** A picture made of the 264 draws: the gust in one of them (0..263), a high percentile, or the chance of a gust [m/s]. */
+export type DrawView =
+  | { readonly kind: 'draw'; readonly draw: number }
+  | { readonly kind: 'p99' }
+  | { readonly kind: 'chance'; readonly gust: number };
 
 type Control = Pick<ScoreControl, 'shouldStop'>;
 
 /** Filled bands of a view of the draws, over the net of the stored footprint. */
-export const drawBands = (storm: Storm, land: LandIndex, net: Net, view: DrawView, control: Control): Bands =>
-  bandsOf(net, drawField(storm, land, net, view, control), view.kind === 'chance' ? CHANCE_LEVELS : GUST_LEVELS);
+export const drawBands = (storm: Storm, land: LandIndex, net: Net, view: DrawView, control: Control): Bands => {
+  if (view.kind === 'chance') {
+    return chanceBands(net, chanceFields(storm, land, net, CHANCE_LEVELS, control), view.gust);
+  }
+  return bandsOf(net, drawField(storm, land, net, view.kind === 'p99' ? 'p99' : view.draw, control), GUST_LEVELS);
+};
 
 /** Where a draw changes the gust, and what it makes of it. */
 export const sitesInDraw = (storm: Storm, sites: SiteBatch, draw: number, control: Control) => {

@@ -3,7 +3,6 @@ import type { GustLadder, SiteSeries } from '#engine/footprint/site-series.ts';
 import type { SiteBatch, SiteScores } from '#engine/footprint/site-peaks.ts';
 import type { Site } from '#engine/footprint/wind-at.ts';
 import type { Area } from '#engine/footprint/strong-wind-area.ts';
-import type { DrawView } from '#engine/footprint/draw-fields.ts';
 import type { FootprintGrid, Net } from '#engine/footprint/grid.ts';
 import type { DamageCurve } from '#engine/loss/damage-curve.ts';
 import type { ChainOptions } from '#engine/track/options.ts';
@@ -11,6 +10,7 @@ import type { Storm } from '#engine/track/storm.ts';
 import type { ObservedVortices } from '#engine/ring/observed-vortices.ts';
 import type { BreakdownFrame, BreakdownSetup } from '#engine/ring/breakdown.ts';
 import type { Bands, BandView } from './bands.ts';
+import type { DrawView } from './draws.ts';
 import type { SpreadBase, Trial, TrialResult } from './spread.ts';
 import type { WindField, WindFieldQuestion } from './wind-field.ts';
 

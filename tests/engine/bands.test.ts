@@ -1,6 +1,14 @@
 import type { Position } from 'geojson';
 import { describe, expect, it } from 'vitest';
-import { DIFFERENCE_LEVELS, GUST_LEVELS, bandsOf, footprintBands, type Bands } from '../../api/compute/bands.ts';
+import {
+  CHANCE_LEVELS,
+  DIFFERENCE_LEVELS,
+  GUST_LEVELS,
+  bandsOf,
+  chanceBands,
+  footprintBands,
+  type Bands,
+} from '../../api/compute/bands.ts';
 
 const shape = { west: -5, south: -5, stepDeg: 0.1, nx: 101, ny: 101 };
 const field = (f: (x: number, y: number) => number, grid = shape) =>
@@ -125,5 +133,31 @@ describe('bands of a footprint', () => {
     expect(difference.bands.features.map(({ properties }) => properties.level)).toEqual([0.5]);
     // Out to 20 m/s in the median: radius 4.1; the mask ends between nodes.
     expect(Math.abs(areaOf(difference, 0.5) / (Math.PI * 4.1 ** 2) - 1)).toBeLessThan(0.03);
+  });
+});
+
+describe('bands of a chance', () => {
+  const cone = (x: number, y: number) => 60 - 10 * Math.hypot(x, y);
+  it('lie between circles where the gusts reached with each chance differ', () => {
+    // Each chance reaches a gust lower by 1 than the one before: circles of radius 2, 1.9, 1.8 and so on.
+    const bands = chanceBands(
+      shape,
+      CHANCE_LEVELS.map((_chance, k) => field((x, y) => cone(x, y) - k)),
+      40,
+    );
+    CHANCE_LEVELS.forEach((level, k) => {
+      const inner = k === CHANCE_LEVELS.length - 1 ? 0 : 2 - 0.1 * (k + 1);
+      expect(areaOf(bands, level)).toBeCloseTo(Math.PI * ((2 - 0.1 * k) ** 2 - inner ** 2), 1);
+    });
+  });
+
+  it('are one band where every draw is the same, and the others are empty', () => {
+    const same = chanceBands(
+      shape,
+      CHANCE_LEVELS.map(() => field(cone)),
+      40,
+    );
+    expect(same.bands.features.map(({ properties }) => properties.level)).toEqual([0.95]);
+    expect(Math.abs(areaOf(same, 0.95) / (4 * Math.PI) - 1)).toBeLessThan(0.01);
   });
 });

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { chanceOf, drawField, type DrawView } from '#engine/footprint/draw-fields.ts';
+import { chanceFields, chanceOf, drawField } from '#engine/footprint/draw-fields.ts';
 import { fieldsOver, footprintNet, type Net } from '#engine/footprint/grid.ts';
 import { buildLandIndex } from '#engine/geo/land.ts';
 import { AMPLITUDE_WEIGHTS, DRAW_COUNT, PHASE_COUNT } from '#engine/ring/draws.ts';
@@ -20,17 +20,17 @@ const nodes = Array.from({ length: net.nx * net.ny }, (_, k) =>
 const slow = nodes.map((site) =>
   referenceScores(storm.fixes, storm.wavenumber, site, hoursInlandOf(workedFixes, null)),
 );
-const field = (view: DrawView) => drawField(storm, ocean, net, view);
+const field = (which: number | 'p99') => drawField(storm, ocean, net, which);
 const weightOf = (draw: number) => AMPLITUDE_WEIGHTS[Math.floor(draw / PHASE_COUNT)]! / PHASE_COUNT;
 
 describe('the field of one draw', () => {
   it.each([0, 23, 117, 180, 263])('gives every node what the slow chain gives a site there: draw %d', (draw) => {
-    const gusts = field({ kind: 'draw', draw });
+    const gusts = field(draw);
     slow.forEach(({ draws }, k) => expect(gusts[k]!).toBeCloseTo(draws[draw]!, 8));
   });
 
   it('differs from plain inside the layer only', () => {
-    const gusts = field({ kind: 'draw', draw: 250 });
+    const gusts = field(250);
     const { plain } = fieldsOver(storm, ocean, net, { plain: ({ plainGust }, node) => plainGust[node]! });
     const changed = [...gusts].filter((gust, k) => gust !== plain[k]).length;
     expect(changed).toBeGreaterThan(nodes.length / 3);
@@ -40,7 +40,7 @@ describe('the field of one draw', () => {
   it('averages over all draws, by their weights, to the mean of the slow chain', () => {
     const sums = new Float64Array(nodes.length);
     for (let draw = 0; draw < DRAW_COUNT; draw++) {
-      field({ kind: 'draw', draw }).forEach((gust, k) => (sums[k]! += weightOf(draw) * gust));
+      field(draw).forEach((gust, k) => (sums[k]! += weightOf(draw) * gust));
     }
     slow.forEach(({ mean, plain }, k) => {
       expect(sums[k]!).toBeCloseTo(mean, 8);
@@ -55,7 +55,7 @@ describe('the field of one draw', () => {
     const bound = (1.1 * 0.5 * 1.25 * 1.3082 * vax) / 1.05;
     let most = 0;
     for (let draw = 240; draw < DRAW_COUNT; draw++) {
-      field({ kind: 'draw', draw }).forEach((gust, k) => (most = Math.max(most, gust - slow[k]!.plain)));
+      field(draw).forEach((gust, k) => (most = Math.max(most, gust - slow[k]!.plain)));
     }
     expect(most).toBeGreaterThan(1);
     expect(most).toBeLessThanOrEqual(bound);
@@ -64,18 +64,16 @@ describe('the field of one draw', () => {
   it('is plain, bit for bit, with the layer off', () => {
     const off = prepareStorm(workedFixes, { ...DEFAULT_OPTIONS, mesovortices: false }, ocean);
     const { plain } = fieldsOver(off, ocean, net, { plain: ({ plainGust }, node) => plainGust[node]! });
-    for (const view of [{ kind: 'draw', draw: 200 }, { kind: 'p99' }] as const) {
+    for (const view of [200, 'p99'] as const) {
       expect([...drawField(off, ocean, net, view)]).toEqual([...plain]);
     }
-    const chance = drawField(off, ocean, net, { kind: 'chance', gust: 45 });
-    expect([...chance]).toEqual([...plain].map((gust) => (gust >= 45 ? 1 : 0)));
   });
 
   it('is the mirror image south of the equator', () => {
     const south = prepareStorm(mirroredFixes(workedFixes), DEFAULT_OPTIONS, ocean);
     const below: Net = { ...net, south: -(net.south + (net.ny - 1) * net.stepDeg) };
-    const mirrored = drawField(south, ocean, below, { kind: 'draw', draw: 130 });
-    const gusts = field({ kind: 'draw', draw: 130 });
+    const mirrored = drawField(south, ocean, below, 130);
+    const gusts = field(130);
     for (let k = 0; k < gusts.length; k++) {
       const row = net.ny - 1 - Math.floor(k / net.nx);
       expect(Math.abs(mirrored[row * net.nx + (k % net.nx)]! - gusts[k]!)).toBeLessThan(1e-10);
@@ -83,35 +81,44 @@ describe('the field of one draw', () => {
   });
 
   it('is refused where there is no such draw', () => {
-    for (const draw of [-1, 264, 1.5, Number.NaN]) expect(() => field({ kind: 'draw', draw })).toThrow('draw');
+    for (const draw of [-1, 264, 1.5, Number.NaN]) expect(() => field(draw)).toThrow('draw');
   });
 });
 
-describe('the field of a chance', () => {
-  it('agrees with counting the draws of the slow chain', () => {
-    for (const gust of [40, 47.5, 55]) {
-      const chances = field({ kind: 'chance', gust });
+describe('the fields of chances', () => {
+  const chances = [0.05, 0.1, 0.25, 0.5, 0.75, 0.9, 0.95];
+  const fields = chanceFields(storm, ocean, net, chances);
+
+  it('reach a gust exactly where so large a share of the draws of the slow chain does', () => {
+    for (const gust of [40, 43.7, 47.5, 55]) {
+      let between = 0;
       slow.forEach(({ draws }, k) => {
         const counted = draws.reduce((sum, value, draw) => sum + (value >= gust ? weightOf(draw) : 0), 0);
-        expect(chances[k]!).toBeCloseTo(counted, 10);
+        chances.forEach((chance, c) => expect(fields[c]![k]! >= gust).toBe(counted >= chance - 1e-10));
+        if (counted > 0 && counted < 1) between += 1;
       });
-      expect(Math.max(...chances)).toBeGreaterThan(0);
-      expect(Math.max(...chances)).toBeLessThanOrEqual(1);
+      expect(between).toBeGreaterThan(0);
     }
   });
 
-  it('falls as the gust rises, and counts a draw that just reaches it', () => {
-    const [low, high] = [field({ kind: 'chance', gust: 42 }), field({ kind: 'chance', gust: 46 })];
-    low.forEach((chance, k) => expect(high[k]!).toBeLessThanOrEqual(chance));
+  it('fall as the chance rises', () => {
+    for (let c = 1; c < chances.length; c++) {
+      fields[c]!.forEach((gust, k) => expect(gust).toBeLessThanOrEqual(fields[c - 1]![k]!));
+    }
+  });
+
+  it('are refused for a chance that is none', () => {
+    for (const chance of [0, 1, -0.1, Number.NaN]) {
+      expect(() => chanceFields(storm, ocean, net, [chance])).toThrow('chance');
+    }
+  });
+
+  it('count a draw that just reaches a gust', () => {
     const draws = new Float64Array(DRAW_COUNT).fill(30);
     draws[0] = 50;
     expect(chanceOf(draws, 50)).toBe(150 / 24_000);
     expect(chanceOf(draws, 30)).toBe(1);
     expect(chanceOf(draws, 50.1)).toBe(0);
-  });
-
-  it('is refused below the floor, where gusts may be too low', () => {
-    for (const gust of [19.9, 0, Number.NaN]) expect(() => field({ kind: 'chance', gust })).toThrow('at least 20');
   });
 });
 
@@ -121,7 +128,7 @@ describe('percentiles on a net', () => {
       p50: (scores, node) => scores.p50[node]!,
       p90: (scores, node) => scores.p90[node]!,
     });
-    const p99 = field({ kind: 'p99' });
+    const p99 = field('p99');
     slow.forEach(({ quantile }, k) => {
       expect(p99[k]!).toBeGreaterThanOrEqual(p90[k]!);
       expect(p90[k]!).toBeGreaterThanOrEqual(p50[k]!);
@@ -134,7 +141,7 @@ it('reaches every net the footprint is drawn on, and can be stopped', () => {
   const whole = footprintNet(storm, ocean, { mostNodes: 900 })!;
   expect(whole.nx * whole.ny).toBeLessThanOrEqual(900);
   let asked = 0;
-  const stopped = drawField(storm, ocean, whole, { kind: 'p99' }, { shouldStop: () => ++asked >= 2 });
+  const stopped = drawField(storm, ocean, whole, 'p99', { shouldStop: () => ++asked >= 2 });
   expect(asked).toBe(2);
   expect(stopped.filter(Number.isNaN).length).toBeGreaterThan(whole.nx * whole.ny * 0.5);
 });

@@ -1,12 +1,11 @@
 import type { Draw, Draws, DrawSites } from '#contract/draws.ts';
 import type { Footprint, FootprintQuery } from '#contract/runs.ts';
-import type { DrawView } from '#engine/footprint/draw-fields.ts';
 import type { SiteBatch } from '#engine/footprint/site-peaks.ts';
 import { DRAW_COUNT, DRAW_WEIGHT_TOTAL, DRAW_WEIGHT_UNITS, PHASE_COUNT } from '#engine/ring/draws.ts';
 import { amplitudeNodes } from '#engine/ring/regimes.ts';
 import { SECTOR_COUNT } from '#engine/terrain/fetch.ts';
 import type { Actor } from '../../actor.ts';
-import { layerArea } from '../../compute/draws.ts';
+import { layerArea, type DrawView } from '../../compute/draws.ts';
 import { toCents } from '../../compute/minor-units.ts';
 import type { EnginePool } from '../../compute/pool.ts';
 import { CHUNK_SITES } from '../../compute/protocol.ts';
