@@ -1,6 +1,6 @@
 import { useMemo, type ReactNode } from 'react';
 import type { Footprint, Run, RunScenario } from '#contract/runs.ts';
-import { useNarrow } from '../../../lib/use-narrow.ts';
+import { useNarrow, useWide } from '../../../lib/use-narrow.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { paths } from '../../../paths.ts';
 import type { MapBands, MapSites, MapView } from '../../../ui/map/map-data.ts';
@@ -44,6 +44,7 @@ const WAITING: Record<MapView, string> = {
 /** Room for the panel, the controls and the legend, so that none of them covers the sites. */
 const WIDE = { top: 64, right: 400, bottom: 110, left: 24 };
 const WITHOUT_PANEL = { ...WIDE, right: 24 };
+const BESIDE = { top: 104, right: 16, bottom: 124, left: 16 };
 const NARROW = { top: 64, right: 12, bottom: 64, left: 12 };
 
 /** The footprint in full size, whichever view of it is chosen. */
@@ -52,6 +53,7 @@ export function FootprintMap(props: FootprintMapProps) {
     props;
   const { gust, label } = useUnits();
   const narrow = useNarrow();
+  const wide = useWide();
   const bands = useMemo<MapBands | null>(
     () =>
       picture
@@ -89,7 +91,7 @@ export function FootprintMap(props: FootprintMapProps) {
       label={`Footprint of ${scenario.name}`}
       summary={summary}
       bounds={bounds}
-      padding={narrow ? NARROW : props.hasPanel ? WIDE : WITHOUT_PANEL}
+      padding={narrow ? NARROW : !wide ? BESIDE : props.hasPanel ? WIDE : WITHOUT_PANEL}
       track={track}
       bands={bands}
       bandsNote={note}

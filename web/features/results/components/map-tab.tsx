@@ -84,7 +84,7 @@ export function MapTab({ run, scenario, chosenSiteNo, onChooseSite }: MapTabProp
     });
 
   return (
-    <div className="relative grid min-h-0 flex-1 grid-cols-[minmax(0,1fr)_auto] max-wide:grid-cols-1 max-wide:gap-4 wide:-mx-6 wide:-mt-4 wide:-mb-4.5">
+    <div className="relative grid min-h-0 flex-1 grid-cols-[minmax(0,1fr)_auto] max-wide:flex-none max-wide:grid-cols-1 max-wide:gap-4 wide:-mx-6 wide:-mt-4 wide:-mb-4.5">
       <FootprintMap
         {...{ run, scenario, view, gustMs, sites, drawGusts, onChooseSite }}
         picture={picture.data}
