@@ -172,6 +172,7 @@ describe('the CSV export', () => {
         'track_as_of_utc',
         'track_age_when_run_h',
         'track_stale_when_run',
+        'conditioned_on',
       ]),
     );
     expect(rows.every((row) => row.notice_version === NOTICE_VERSION)).toBe(true);

@@ -1,6 +1,6 @@
 import { useCallback } from 'react';
 import { useSuspenseQuery } from '@tanstack/react-query';
-import { ClockAlert, Download } from 'lucide-react';
+import { ClockAlert, Download, Radar } from 'lucide-react';
 import { Link, useNavigate, useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
 import { exportSites, type Run, type RunScenario } from '#contract/runs.ts';
 import type { Stale } from '#contract/track-age.ts';
@@ -48,6 +48,7 @@ export function Component() {
   const { runId } = useParams();
   const { data: run } = useSuspenseQuery(runQuery(runId!));
   const provisional = run.notices.filter(({ code }) => code === 'provisional').map(({ text }) => text);
+  const conditioned = run.notices.filter(({ code }) => code === 'conditioned-on-observation').map(({ text }) => text);
   const liveness = useRunProgress(run.id, run.state);
   const [search, setSearch] = useSearchParams();
   const navigate = useNavigate();
@@ -107,6 +108,12 @@ export function Component() {
         <p className="mb-3 flex flex-none items-center gap-2.5 rounded-2 bg-event-tint px-3.5 py-2 text-13 text-event">
           <ClockAlert size={16} strokeWidth={1.75} className="flex-none" aria-hidden />
           <span>{provisional.join(' ')}</span>
+        </p>
+      )}
+      {conditioned.length > 0 && (
+        <p className="mb-3 flex flex-none items-center gap-2.5 rounded-2 bg-info-tint px-3.5 py-2 text-13 text-info">
+          <Radar size={16} strokeWidth={1.75} className="flex-none" aria-hidden />
+          <span>{conditioned.join(' ')}</span>
         </p>
       )}
       <Tabs

@@ -35,6 +35,12 @@ const ratio =
   (site) =>
     fixed(pick(site), 5);
 
+/** What was observed of the vortices, where results rest on it. */
+const conditionedOn = ({ notices }: FinishedTrack): Cell => {
+  const said = notices.find(({ code }) => code === 'conditioned-on-observation');
+  return said === undefined ? null : safeText(said.text);
+};
+
 /** Columns of the export, units in their names. Gusts: peak 3 s at 10 m in the exposure found at the site. */
 const columnsFor = (currency: string): readonly Column[] => {
   const unit = currency.toLowerCase();
@@ -86,6 +92,7 @@ const columnsFor = (currency: string): readonly Column[] => {
       'track_stale_when_run',
       (_site, track) => (track.trackAsOf === null ? null : track.trackStaleWhenRun ? 'stale' : 'no'),
     ],
+    ['conditioned_on', (_site, track) => conditionedOn(track)],
     ['calibration', (_site, { calibration }) => safeText(calibration)],
     ['calibration_state', (_site, { calibrationState }) => safeText(calibrationState)],
     ['engine_version', (_site, { engineVersion }) => safeText(engineVersion)],
