@@ -84,7 +84,7 @@ describe('what drives a result', () => {
     const list = await screen.findByRole('list', { name: 'What each setting of the ring does' });
     expect(asked.map(({ path }) => path)).toEqual([`/runs/${at.runId}/scenarios/${at.runScenarioId}/drivers`]);
     const [width, regime, off] = within(list).getAllByRole('listitem');
-    expect(width).toHaveTextContent('in use: 0.35; tried: 0.25, 0.45');
+    expect(width).toHaveTextContent('in use: 0.35; tried: 0.25 (raises it), 0.45 (lowers it)');
     expect(width).toHaveTextContent('judged, not measured');
     expect(width).toHaveTextContent('− 1.3 to + 1.6');
     expect(width).toHaveTextContent('Gross, USD million− 15.0 to + 20.0');

@@ -2,6 +2,7 @@ import { useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import { Scale } from 'lucide-react';
 import type { Drivers as Reply } from '#contract/drivers.ts';
+import type { SpreadRow } from '#contract/studies.ts';
 import { failureOf } from '../../../api/failure.ts';
 import { columnScale } from '../../../lib/money.ts';
 import { decimalsFor, signed } from '../../../lib/numbers.ts';
@@ -37,7 +38,7 @@ export function Drivers({ at, siteNo }: DriversProps) {
       <div aria-live="polite" aria-busy={query.isFetching}>
         {query.isFetching ? (
           <>
-            <p className="mt-2.5 text-13">Working it out: some seconds.</p>
+            <p className="mt-2.5 text-13">Working it out: some seconds, half a minute when the service is busy.</p>
             <div className="mt-2 flex flex-col gap-2.5" aria-hidden>
               <Skeleton className="h-10" />
               <Skeleton className="h-10" />
@@ -85,21 +86,33 @@ function Ranges({ reply }: { reply: Reply }) {
   const gustOf = ({ gustMs }: DriverRange): Change | null => gustMs && [toUnit(gustMs[0]), toUnit(gustMs[1])];
   const grossOf = ({ grossMinor }: DriverRange): Change | null =>
     grossMinor && scale && [grossMinor[0] / scale.minor, grossMinor[1] / scale.minor];
-  const gustAxis = signedAxis(acting.flatMap((range) => gustOf(range) ?? []));
-  const grossAxis = signedAxis(acting.flatMap((range) => grossOf(range) ?? []));
+  // Each bar as a share of the largest change of its kind, so that all of them have one zero.
+  const sharesOf = (changes: readonly (Change | null)[]): (Change | null)[] => {
+    const most = Math.max(1e-9, ...changes.flatMap((change) => change?.map(Math.abs) ?? []));
+    return changes.map((change) => change && [change[0] / most, change[1] / most]);
+  };
+  const gustShares = sharesOf(acting.map(gustOf));
+  const grossShares = sharesOf(acting.map(grossOf));
+  const axis = signedAxis([...gustShares, ...grossShares].flatMap((share) => share ?? []));
   const decimals = decimalsFor(scale === null ? 0 : largest / scale.minor);
   const dominant = dominantWords(ranges);
   return (
     <>
       {dominant && <p className="mt-2.5 text-14 font-bold">{dominant}</p>}
       <ul aria-label="What each setting of the ring does" className="mt-1">
-        {acting.map((range) => (
+        {acting.map((range, i) => (
           <li key={range.choice} className="border-b border-rule py-2.5 last:border-b-0">
             <Heading range={range} />
-            <div className="mt-1.5 grid grid-cols-[6.5rem_minmax(0,1fr)_auto] items-center gap-x-2.5 gap-y-1 text-13">
-              <Line name={`Gust, ${label}`} change={gustOf(range)} axis={gustAxis} decimals={1} />
+            <div className="mt-1.5 grid grid-cols-[6.5rem_minmax(0,1fr)_6.75rem] items-center gap-x-2.5 gap-y-1 text-13">
+              <Line name={`Gust, ${label}`} change={gustOf(range)} share={gustShares[i]!} axis={axis} decimals={1} />
               {scale && (
-                <Line name={`Gross, ${scale.header}`} change={grossOf(range)} axis={grossAxis} decimals={decimals} />
+                <Line
+                  name={`Gross, ${scale.header}`}
+                  change={grossOf(range)}
+                  share={grossShares[i]!}
+                  axis={axis}
+                  decimals={decimals}
+                />
               )}
             </div>
           </li>
@@ -129,26 +142,35 @@ function Heading({ range: { choice, title, inUse, tried } }: { range: DriverRang
       <b>{title}</b>
       {JUDGED.includes(choice) && <Chip tone="caution">judged, not measured</Chip>}
       <span className="basis-full text-12 text-ink-2">
-        in use: {inUse}; tried: {tried.map(({ to }) => to.title).join(', ')}
+        in use: {inUse}; tried: {tried.map((row) => `${row.to.title} (${effectOf(row)})`).join(', ')}
       </span>
     </div>
   );
 }
 
+/** Which way one value moves the result: the loss, or the gust where the loss stays. */
+const effectOf = ({ grossChangeMinor, peakGustChangeMs }: SpreadRow): string => {
+  const change = grossChangeMinor || peakGustChangeMs;
+  if (change === null) return 'not computed';
+  return change > 0 ? 'raises it' : change < 0 ? 'lowers it' : 'no change';
+};
+
 interface LineProps {
   name: string;
   change: Change | null;
+  /** The same for the bar, as a share of the largest. */
+  share: Change | null;
   axis: Axis;
   decimals: number;
 }
 
-function Line({ name, change, axis, decimals }: LineProps) {
+function Line({ name, change, share, axis, decimals }: LineProps) {
   return (
     <>
       <span className="text-12 text-ink-2">{name}</span>
       <span className="grid *:col-start-1 *:row-start-1">
-        <StepBar axis={axis} change={change && Math.min(0, change[0])} />
-        <StepBar axis={axis} change={change && Math.max(0, change[1])} />
+        <StepBar axis={axis} change={share && Math.min(0, share[0])} />
+        <StepBar axis={axis} change={share && Math.max(0, share[1])} />
       </span>
       <b className="text-right whitespace-nowrap">{change === null ? '–' : changeText(change, decimals)}</b>
     </>
