@@ -119,10 +119,12 @@ export const edgeFeatures = ({ bbox, computed, features }: MapBands) => {
   ];
   return collection<LineString>(
     sides
-      .filter((_side, index) => Math.abs(bbox[index]! - computed[index]!) < EDGE_DEG)
-      .map(([x0, y0, x1, y1]) => ({
+      .map((side, index) => ({ side, index }))
+      .filter(({ index }) => Math.abs(bbox[index]! - computed[index]!) < EDGE_DEG)
+      .map(({ side: [x0, y0, x1, y1], index }) => ({
         type: 'Feature',
-        properties: {},
+        // Its word stands inside: below the line at the top, above it elsewhere.
+        properties: { top: index === 3 },
         geometry: {
           type: 'LineString',
           coordinates: [

@@ -80,7 +80,7 @@ const layers = (token: MapTokens): LayerSpecification[] => [
       'text-field': 'Edge of the area worked out',
       'text-font': FONT,
       'text-size': 12,
-      'text-offset': [0, -0.9],
+      'text-offset': ['case', isTrue('top'), ['literal', [0, 0.9]], ['literal', [0, -0.9]]],
       'text-padding': 8,
     },
     paint: {

@@ -9,10 +9,12 @@ interface DrawStepperProps {
   onDraw: (draw: number) => void;
 }
 
+const STRIP =
+  'flex h-7.5 flex-none items-stretch overflow-hidden rounded-2 border border-rule-strong bg-sheet text-13 shadow-2 pointer-coarse:h-11';
 const STEP =
   'grid w-9 place-items-center hover:bg-hover aria-disabled:cursor-not-allowed aria-disabled:text-ink-2 aria-disabled:opacity-50 pointer-coarse:w-11';
 const JUMP =
-  'border-l border-rule px-2 text-12 font-bold text-link hover:bg-hover aria-pressed:bg-selected aria-pressed:text-ink pointer-coarse:min-w-11';
+  'border-l border-rule px-2 text-12 font-bold whitespace-nowrap text-link first:border-l-0 hover:bg-hover aria-pressed:bg-selected aria-pressed:text-ink pointer-coarse:min-w-11';
 const NAMED = [
   ['p5', '5 %'],
   ['p50', '50 %'],
@@ -39,51 +41,52 @@ export function DrawStepper({ draws: { draws, named }, draw, onDraw }: DrawStepp
     return () => document.removeEventListener('keydown', press);
   }, []);
   return (
-    <div
-      role="group"
-      aria-label="Draws in the order of event loss"
-      className="flex h-7.5 items-stretch overflow-hidden rounded-2 border border-rule-strong bg-sheet text-13 shadow-2 pointer-coarse:h-11"
-    >
-      <button
-        type="button"
-        className={STEP}
-        aria-label="Draw with the next smaller loss ([)"
-        title="Draw with the next smaller loss ([)"
-        aria-disabled={before === null}
-        onClick={() => before !== null && onDraw(before)}
-      >
-        <ChevronLeft size={16} aria-hidden />
-      </button>
-      <p
-        role="status"
-        className="flex min-w-34 items-center justify-center border-x border-rule px-2.5 whitespace-nowrap"
-      >
-        Rank&nbsp;<b>{rank}</b>&nbsp;of {draws.length}
-      </p>
-      <button
-        type="button"
-        className={STEP}
-        aria-label="Draw with the next larger loss (])"
-        title="Draw with the next larger loss (])"
-        aria-disabled={after === null}
-        onClick={() => after !== null && onDraw(after)}
-      >
-        <ChevronRight size={16} aria-hidden />
-      </button>
-      {named &&
-        NAMED.map(([name, label]) => (
-          <button
-            key={name}
-            type="button"
-            className={JUMP}
-            aria-pressed={named[name] === draw}
-            aria-label={`Draw at ${label} of the event’s loss`}
-            title={`Draw at ${label} of the event’s loss`}
-            onClick={() => onDraw(named[name])}
-          >
-            {label}
-          </button>
-        ))}
+    <div role="group" aria-label="Draws in the order of event loss" className="flex flex-wrap gap-2">
+      <div className={STRIP}>
+        <button
+          type="button"
+          className={STEP}
+          aria-label="Draw with the next smaller loss ([)"
+          title="Draw with the next smaller loss ([)"
+          aria-disabled={before === null}
+          onClick={() => before !== null && onDraw(before)}
+        >
+          <ChevronLeft size={16} aria-hidden />
+        </button>
+        <p
+          role="status"
+          className="flex min-w-30 items-center justify-center border-x border-rule px-2.5 whitespace-nowrap"
+        >
+          Rank&nbsp;<b>{rank}</b>&nbsp;of {draws.length}
+        </p>
+        <button
+          type="button"
+          className={STEP}
+          aria-label="Draw with the next larger loss (])"
+          title="Draw with the next larger loss (])"
+          aria-disabled={after === null}
+          onClick={() => after !== null && onDraw(after)}
+        >
+          <ChevronRight size={16} aria-hidden />
+        </button>
+      </div>
+      {named && (
+        <div className={STRIP}>
+          {NAMED.map(([name, label]) => (
+            <button
+              key={name}
+              type="button"
+              className={JUMP}
+              aria-pressed={named[name] === draw}
+              aria-label={`Draw at ${label} of the event’s loss`}
+              title={`Draw at ${label} of the event’s loss`}
+              onClick={() => onDraw(named[name])}
+            >
+              {label}
+            </button>
+          ))}
+        </div>
+      )}
     </div>
   );
 }

@@ -45,7 +45,7 @@ const WAITING: Record<MapView, string> = {
 const WIDE = { top: 64, right: 400, bottom: 110, left: 24 };
 const WITHOUT_PANEL = { ...WIDE, right: 24 };
 const BESIDE = { top: 104, right: 16, bottom: 124, left: 16 };
-const NARROW = { top: 64, right: 12, bottom: 64, left: 12 };
+const NARROW = { top: 108, right: 12, bottom: 160, left: 12 };
 
 /** The footprint in full size, whichever view of it is chosen. */
 export function FootprintMap(props: FootprintMapProps) {
@@ -125,7 +125,7 @@ export function FootprintMap(props: FootprintMapProps) {
 
 function DrawNote() {
   return (
-    <p className="max-w-104 rounded-2 border border-l-3 border-rule border-l-event bg-sheet px-3.5 py-2 text-13 leading-snug shadow-2">
+    <p className="max-w-104 rounded-2 border border-l-3 border-rule border-l-event bg-sheet px-3.5 py-2 text-13 leading-snug shadow-2 max-rail:px-2.5 max-rail:py-1.5 max-rail:text-12">
       <b>One of 264 draws.</b> The streaks show how uneven the wind can be, not where it will be. Other draws differ;
       none is likelier for one street.
     </p>
