@@ -112,7 +112,7 @@ export const addObjects = async (superUser: Knex, org: TestOrganisation): Promis
     created_by: by,
     created_at: at,
   });
-  return { ...ids, siteNo: '1' };
+  return { ...ids, siteNo: '1', draw: '1' };
 };
 
 /** A fingerprint of everything an organisation has, to see that nobody else changed it. */

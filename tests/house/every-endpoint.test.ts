@@ -13,7 +13,9 @@ import { DUNE, REEF } from '../helpers/people.ts';
 
 const { container, database, signIn } = await createTestApp();
 const theirs = await addObjects(database.superUser, REEF);
-const nobodys = Object.fromEntries(Object.keys(theirs).map((name) => [name, name === 'siteNo' ? '1' : randomUUID()]));
+const nobodys = Object.fromEntries(
+  Object.keys(theirs).map((name) => [name, name === 'siteNo' || name === 'draw' ? '1' : randomUUID()]),
+);
 
 const later = { ...TRACK_FIX, time: '2026-09-01T06:00:00.000Z', latitude: 26 };
 const track = { fixes: [TRACK_FIX, later], declarations: { windAveragingS: 60 } };

@@ -271,6 +271,7 @@ describe('who sees what', () => {
       runScenarioId: run.scenarios[0]!.id,
       quoteId: quote.id,
       siteNo: '1',
+      draw: '1',
     };
     const paths = ALL_ENDPOINTS.filter(({ path }) => /:(runId|quoteId)/.test(path));
     expect(paths.length).toBeGreaterThanOrEqual(11);
