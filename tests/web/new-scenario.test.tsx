@@ -41,6 +41,8 @@ const version = {
   digest: 'a'.repeat(64),
   track: { fixes: [fix], declarations: { windAveragingS: 600, source: '', asOf: null } },
   resolution,
+  derivation: null,
+  stale: null,
   notices: [],
 };
 
