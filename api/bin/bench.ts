@@ -2,12 +2,13 @@ import type { Bench, Measured } from './benches/bench.ts';
 import { engineBench } from './benches/engine-bench.ts';
 import { growthBench } from './benches/growth-bench.ts';
 import { kepertBench } from './benches/kepert-bench.ts';
+import { ringBench } from './benches/ring-bench.ts';
 import { runBench } from './benches/run-bench.ts';
 import { threadsBench } from './benches/threads-bench.ts';
 
 // npm run bench: a line per measurement; npm run bench -- KEY ...: only what gives these numbers;
 // npm run -s bench -- --json: one JSON object and nothing else.
-const BENCHES: readonly Bench[] = [engineBench, threadsBench, growthBench, kepertBench, runBench];
+const BENCHES: readonly Bench[] = [engineBench, threadsBench, growthBench, kepertBench, ringBench, runBench];
 
 const wanted = process.argv.slice(2).filter((word) => word !== '--json');
 const asJson = process.argv.includes('--json');
