@@ -10,6 +10,7 @@ import { finishedRun, get, savedTrack, sealedEdition, send } from '../helpers/sh
 
 const product = inject('product');
 const charley = readFileSync(new URL('../data/tracks/AL032004_CHARLEY.txt', import.meta.url), 'utf8');
+const READING = ['Home', 'Portfolios', 'Scenarios', 'Runs'];
 const name = `Roles ${crypto.randomUUID().slice(0, 4)}`;
 
 let browser: Browser;
@@ -39,10 +40,10 @@ afterAll(() => browser?.close());
 
 describe('each role comes home to its own work', () => {
   it.each([
-    ['ines.halvard', 'Upload a schedule', ['Home', 'Portfolios', 'Scenarios', 'Runs', 'Billing', 'Limits of use']],
-    ['teodor.brask', 'New scenario', ['Home', 'Portfolios', 'Scenarios', 'Runs', 'Billing', 'Limits of use']],
+    ['ines.halvard', 'Upload a schedule', [...READING, 'Billing', 'Limits of use']],
+    ['teodor.brask', 'New scenario', [...READING, 'Ring bench', 'Validation', 'Billing', 'Limits of use']],
     ['oda.renn', 'Top up', ['Home', 'Runs', 'Billing', 'Limits of use']],
-    ['pell.quist', null, ['Home', 'Portfolios', 'Scenarios', 'Runs', 'Billing', 'Limits of use']],
+    ['pell.quist', null, [...READING, 'Validation', 'Billing', 'Limits of use']],
   ])('%s', async (local, action, links) => {
     const page = await as(local);
     await page

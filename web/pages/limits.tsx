@@ -87,7 +87,10 @@ export function Component() {
             {holdsOneOf(session, READERS) && (
               <p className="mt-3 text-16">
                 How modelled gusts compare with observed ones in past storms, good and bad:{' '}
-                <Link to={paths.validation()}>Validation</Link>.
+                <Link to={paths.validation()} className="underline">
+                  Validation
+                </Link>
+                .
               </p>
             )}
           </section>
