@@ -36,6 +36,8 @@ type Workspace = {
   readonly wave: Float64Array;
   /** Squared wave, 0 where the coefficient is cut away (outside the circle) or is the mean, packed. */
   readonly square: Float64Array;
+  /** One over it, 0 where it is 0, packed. */
+  readonly perSquare: Float64Array;
   readonly alongY: FourierPlan;
   readonly alongX: FourierPlan;
   readonly a: ComplexArray;
@@ -93,7 +95,8 @@ function workspace(points: number, side: number, cut: number): Workspace {
   }
   const packed = (): ComplexArray => complexArray(live * live);
   return {
-    ...{ wave, square, alongY: fourierPlan(points, live), alongX: fourierPlan(points, points) },
+    ...{ wave, square, perSquare: square.map((k2) => (k2 === 0 ? 0 : 1 / k2)) },
+    ...{ alongY: fourierPlan(points, live), alongX: fourierPlan(points, points) },
     ...{ a: complexArray(points * points), b: complexArray(points * points), stage: packed() },
     between: packed(),
     fade: new Float64Array(live * live),
@@ -108,7 +111,9 @@ const copyOf = ({ re, im }: ComplexArray): ComplexArray => ({ re: re.slice(), im
 function packedFrom(field: Float64Array, points: number, cut: number, work: Workspace): ComplexArray {
   if (field.length !== points * points) throw new DomainError('vorticity values', field.length, `${points * points}`);
   const { a } = work;
-  for (let y = 0; y < points; y++) for (let x = 0; x < points; x++) a.re[x * points + y] = field[y * points + x]!;
+  for (let y = 0; y < points; y++) {
+    for (let x = 0; x < points; x++) a.re[placeOf(x, y, points)] = field[y * points + x]!;
+  }
   a.im.fill(0);
   const out = complexArray((2 * cut + 1) ** 2);
   toPacked(points, cut, work, out);
@@ -118,28 +123,46 @@ function packedFrom(field: Float64Array, points: number, cut: number, work: Work
   return out;
 }
 
+/** Where the solver keeps a point: by x then y, counted from the middle of the square, which is its origin. */
+function placeOf(x: number, y: number, points: number): number {
+  const half = points / 2;
+  return ((x + half) % points) * points + ((y + half) % points);
+}
+
+/** A field as callers see it: rows of equal y, from the lower left corner. */
+function inRows(field: Float64Array, points: number): Float64Array {
+  const rows = new Float64Array(points * points);
+  for (let y = 0; y < points; y++) {
+    for (let x = 0; x < points; x++) rows[y * points + x] = field[placeOf(x, y, points)]!;
+  }
+  return rows;
+}
+
 /** From `work.a`, laid out (x, y), to packed coefficients; scaled so that they are amplitudes. */
 function toPacked(points: number, cut: number, work: Workspace, out: ComplexArray): void {
   const { alongX, alongY, a, b } = work;
   const live = 2 * cut + 1;
   const columns = transform(alongX, a, b);
   const free = columns.re === a.re ? b : a;
+  const { re: columnsRe, im: columnsIm } = columns;
+  const { re: freeRe, im: freeIm } = free;
   for (let j = 0; j < live; j++) {
     const row = ((j - cut + points) % points) * points;
     for (let y = 0; y < points; y++) {
-      free.re[y * live + j] = columns.re[row + y]!;
-      free.im[y * live + j] = columns.im[row + y]!;
+      freeRe[y * live + j] = columnsRe[row + y]!;
+      freeIm[y * live + j] = columnsIm[row + y]!;
     }
   }
   const done = transform(alongY, free, columns);
   const scale = 1 / (points * points);
+  const { re, im } = out;
+  const { re: doneRe, im: doneIm } = done;
   for (let i = 0; i < live; i++) {
-    // The origin of x and y is the middle of the square: half a side each turns every odd wave's sign.
-    const row = ((i - cut + points) % points) * live;
+    const from = ((i - cut + points) % points) * live;
+    const to = i * live;
     for (let j = 0; j < live; j++) {
-      const sign = (i + j) % 2 === 0 ? scale : -scale;
-      out.re[i * live + j] = sign * done.re[row + j]!;
-      out.im[i * live + j] = sign * done.im[row + j]!;
+      re[to + j] = scale * doneRe[from + j]!;
+      im[to + j] = scale * doneIm[from + j]!;
     }
   }
 }
@@ -151,22 +174,21 @@ function toGrid(points: number, cut: number, work: Workspace, packed: ComplexArr
   a.re.fill(0, (cut + 1) * live, (points - cut) * live);
   a.im.fill(0, (cut + 1) * live, (points - cut) * live);
   for (let i = 0; i < live; i++) {
-    const row = ((i - cut + points) % points) * live;
-    for (let j = 0; j < live; j++) {
-      const sign = (i + j) % 2 === 0 ? 1 : -1;
-      a.re[row + j] = sign * packed.re[i * live + j]!;
-      a.im[row + j] = sign * packed.im[i * live + j]!;
-    }
+    const to = ((i - cut + points) % points) * live;
+    a.re.set(packed.re.subarray(i * live, (i + 1) * live), to);
+    a.im.set(packed.im.subarray(i * live, (i + 1) * live), to);
   }
   const rows = inverseTransform(alongY, a, b);
   const free = rows.re === a.re ? b : a;
+  const { re: rowsRe, im: rowsIm } = rows;
+  const { re: freeRe, im: freeIm } = free;
   free.re.fill(0, (cut + 1) * points, (points - cut) * points);
   free.im.fill(0, (cut + 1) * points, (points - cut) * points);
   for (let j = 0; j < live; j++) {
     const row = ((j - cut + points) % points) * points;
     for (let y = 0; y < points; y++) {
-      free.re[row + y] = rows.re[y * live + j]!;
-      free.im[row + y] = rows.im[y * live + j]!;
+      freeRe[row + y] = rowsRe[y * live + j]!;
+      freeIm[row + y] = rowsIm[y * live + j]!;
     }
   }
   return inverseTransform(alongX, free, rows);
@@ -179,49 +201,58 @@ function toGrid(points: number, cut: number, work: Workspace, packed: ComplexArr
 function slopeOf(flow: BarotropicFlow, vorticity: ComplexArray, out: ComplexArray): void {
   const { points, cut, work, relaxation, target } = flow;
   const { wave, square, stage } = work;
+  const { re: stageRe, im: stageIm } = stage;
   const live = 2 * cut + 1;
-  const size = live * live;
-  for (let i = 0; i < live; i++) {
-    const ky = wave[i]!;
-    for (let j = 0; j < live; j++) {
-      const at = i * live + j;
-      const k2 = square[at]!;
-      const per = k2 === 0 ? 0 : 1 / k2;
-      const kx = wave[j]! * per;
-      const k = ky * per;
-      stage.re[at] = kx * vorticity.re[at]! - k * vorticity.im[at]!;
-      stage.im[at] = kx * vorticity.im[at]! + k * vorticity.re[at]!;
-    }
-  }
-  const wind = toGrid(points, cut, work, stage);
-  const { a: flux } = work;
+  const last = live * live - 1;
+  windCoefficients(flow, vorticity);
+  const { re: u, im: v } = toGrid(points, cut, work, stage);
+  const { re: straightFlux, im: crossFlux } = work.a;
   for (let i = 0; i < points * points; i++) {
-    const u = wind.re[i]!;
-    const v = wind.im[i]!;
-    flux.re[i] = u * u - v * v;
-    flux.im[i] = 2 * u * v;
+    const east = u[i]!;
+    const north = v[i]!;
+    straightFlux[i] = east * east - north * north;
+    crossFlux[i] = 2 * east * north;
   }
   toPacked(points, cut, work, stage);
   const pull = 1 / relaxation;
+  const { re: outRe, im: outIm } = out;
+  const { re, im } = vorticity;
+  const { re: targetRe, im: targetIm } = target;
   for (let i = 0; i < live; i++) {
     const ky = wave[i]!;
     for (let j = 0; j < live; j++) {
       const at = i * live + j;
       if (square[at] === 0) {
-        out.re[at] = out.im[at] = 0;
+        outRe[at] = outIm[at] = 0;
         continue;
       }
       const kx = wave[j]!;
       // Coefficients of a real field at opposite waves are conjugates of each other.
-      const back = size - 1 - at;
-      const sumRe = 0.5 * (stage.re[at]! + stage.re[back]!);
-      const sumIm = 0.5 * (stage.im[at]! - stage.im[back]!);
-      const crossRe = 0.5 * (stage.im[at]! + stage.im[back]!);
-      const crossIm = -0.5 * (stage.re[at]! - stage.re[back]!);
-      const straight = -kx * ky;
-      const crossed = 0.5 * (kx * kx - ky * ky);
-      out.re[at] = straight * sumRe + crossed * crossRe + pull * (target.re[at]! - vorticity.re[at]!);
-      out.im[at] = straight * sumIm + crossed * crossIm + pull * (target.im[at]! - vorticity.im[at]!);
+      const back = last - at;
+      const straight = -0.5 * kx * ky;
+      const crossed = 0.25 * (kx * kx - ky * ky);
+      const ownRe = stageRe[at]!;
+      const ownIm = stageIm[at]!;
+      const backRe = stageRe[back]!;
+      const backIm = stageIm[back]!;
+      outRe[at] = straight * (ownRe + backRe) + crossed * (ownIm + backIm) + pull * (targetRe[at]! - re[at]!);
+      outIm[at] = straight * (ownIm - backIm) + crossed * (backRe - ownRe) + pull * (targetIm[at]! - im[at]!);
+    }
+  }
+}
+
+/** Coefficients of u + i v of a vorticity, into `work.stage`. */
+function windCoefficients({ cut, work }: BarotropicFlow, { re, im }: ComplexArray): void {
+  const { wave, perSquare, stage } = work;
+  const { re: stageRe, im: stageIm } = stage;
+  const live = 2 * cut + 1;
+  for (let i = 0; i < live; i++) {
+    for (let j = 0; j < live; j++) {
+      const at = i * live + j;
+      const kx = wave[j]! * perSquare[at]!;
+      const ky = wave[i]! * perSquare[at]!;
+      stageRe[at] = kx * re[at]! - ky * im[at]!;
+      stageIm[at] = kx * im[at]! + ky * re[at]!;
     }
   }
 }
@@ -234,33 +265,34 @@ function slopeOf(flow: BarotropicFlow, vorticity: ComplexArray, out: ComplexArra
  * @source Integrating factor for the viscous term; Canuto et al. (1988), Spectral Methods in Fluid Dynamics, section 4.
  */
 export function stepFlow(flow: BarotropicFlow, step: number): void {
-  const { vorticity: z, work } = flow;
+  const { vorticity, work } = flow;
   const { slopes, between, fade } = work;
   const [k1, k2, k3, k4] = slopes;
-  const size = fade.length;
   const half = step / 2;
-  const sixth = step / 6;
   fadeOver(flow, half);
-  slopeOf(flow, z, k1);
-  for (let at = 0; at < size; at++) {
-    between.re[at] = fade[at]! * (z.re[at]! + half * k1.re[at]!);
-    between.im[at] = fade[at]! * (z.im[at]! + half * k1.im[at]!);
+  slopeOf(flow, vorticity, k1);
+  const parts = [
+    [between.re, vorticity.re, k1.re, k2.re, k3.re, k4.re],
+    [between.im, vorticity.im, k1.im, k2.im, k3.im, k4.im],
+  ] as const;
+  for (const [to, z, slope] of parts) {
+    for (let at = 0; at < to.length; at++) to[at] = fade[at]! * (z[at]! + half * slope[at]!);
   }
   slopeOf(flow, between, k2);
-  for (let at = 0; at < size; at++) {
-    between.re[at] = fade[at]! * z.re[at]! + half * k2.re[at]!;
-    between.im[at] = fade[at]! * z.im[at]! + half * k2.im[at]!;
+  for (const [to, z, , slope] of parts) {
+    for (let at = 0; at < to.length; at++) to[at] = fade[at]! * z[at]! + half * slope[at]!;
   }
   slopeOf(flow, between, k3);
-  for (let at = 0; at < size; at++) {
-    between.re[at] = fade[at]! * (fade[at]! * z.re[at]! + step * k3.re[at]!);
-    between.im[at] = fade[at]! * (fade[at]! * z.im[at]! + step * k3.im[at]!);
+  for (const [to, z, , , slope] of parts) {
+    for (let at = 0; at < to.length; at++) to[at] = fade[at]! * (fade[at]! * z[at]! + step * slope[at]!);
   }
   slopeOf(flow, between, k4);
-  for (let at = 0; at < size; at++) {
-    const e = fade[at]!;
-    z.re[at] = e * (e * (z.re[at]! + sixth * k1.re[at]!) + 2 * sixth * (k2.re[at]! + k3.re[at]!)) + sixth * k4.re[at]!;
-    z.im[at] = e * (e * (z.im[at]! + sixth * k1.im[at]!) + 2 * sixth * (k2.im[at]! + k3.im[at]!)) + sixth * k4.im[at]!;
+  const sixth = step / 6;
+  for (const [, z, s1, s2, s3, s4] of parts) {
+    for (let at = 0; at < z.length; at++) {
+      const e = fade[at]!;
+      z[at] = e * (e * (z[at]! + sixth * s1[at]!) + 2 * sixth * (s2[at]! + s3[at]!)) + sixth * s4[at]!;
+    }
   }
 }
 
@@ -276,10 +308,10 @@ function fadeOver({ work, viscosity }: BarotropicFlow, time: number): void {
  * @param flow The flow.
  * @param wind Strongest wind on the grid [m s⁻¹], > 0.
  * @returns Step [s].
- * @source The stability bound of the method on the imaginary axis is 2.83 / (largest wave times wind); 2 leaves a margin.
+ * @source The stability bound of the method on the imaginary axis is 2.83 / (largest wave times wind); 2.6 leaves a margin.
  */
 export function stableStep({ cut, side }: BarotropicFlow, wind: number): number {
-  return 2 / (((2 * Math.PI * cut) / side) * wind);
+  return 2.6 / (((2 * Math.PI * cut) / side) * wind);
 }
 
 /**
@@ -290,10 +322,7 @@ export function stableStep({ cut, side }: BarotropicFlow, wind: number): number 
  * @source Inverse of barotropicFlow's transform.
  */
 export function vorticityOnGrid({ points, cut, work, vorticity }: BarotropicFlow): Float64Array {
-  const { re } = toGrid(points, cut, work, vorticity);
-  const out = new Float64Array(points * points);
-  for (let y = 0; y < points; y++) for (let x = 0; x < points; x++) out[y * points + x] = re[x * points + y]!;
-  return out;
+  return inRows(toGrid(points, cut, work, vorticity).re, points);
 }
 
 /** Wind on the grid: to the right (u) and up (v) [m s⁻¹], shape (points, points), rows of equal y. */
@@ -306,28 +335,17 @@ export type GridWind = { readonly u: Float64Array; readonly v: Float64Array };
  * @returns The wind [m s⁻¹].
  * @source Inverse Laplacian of the vorticity; a periodic flow alone has no mean vorticity, half of it is the turning rate.
  */
-export function windOnGrid({ points, side, cut, work, vorticity, mean }: BarotropicFlow): GridWind {
-  const { wave, square, stage } = work;
-  const live = 2 * cut + 1;
-  for (let i = 0; i < live; i++) {
-    for (let j = 0; j < live; j++) {
-      const at = i * live + j;
-      const per = square[at] === 0 ? 0 : 1 / square[at]!;
-      const kx = wave[j]! * per;
-      const ky = wave[i]! * per;
-      stage.re[at] = kx * vorticity.re[at]! - ky * vorticity.im[at]!;
-      stage.im[at] = kx * vorticity.im[at]! + ky * vorticity.re[at]!;
-    }
-  }
-  const wind = toGrid(points, cut, work, stage);
-  const u = new Float64Array(points * points);
-  const v = new Float64Array(points * points);
-  const step = side / points;
+export function windOnGrid(flow: BarotropicFlow): GridWind {
+  const { points, side, cut, work, mean } = flow;
+  windCoefficients(flow, flow.vorticity);
+  const wind = toGrid(points, cut, work, work.stage);
+  const u = inRows(wind.re, points);
+  const v = inRows(wind.im, points);
+  const turn = (0.5 * mean * side) / points;
   for (let y = 0; y < points; y++) {
     for (let x = 0; x < points; x++) {
-      const at = y * points + x;
-      u[at] = wind.re[x * points + y]! - 0.5 * mean * (y - points / 2) * step;
-      v[at] = wind.im[x * points + y]! + 0.5 * mean * (x - points / 2) * step;
+      u[y * points + x]! -= turn * (y - points / 2);
+      v[y * points + x]! += turn * (x - points / 2);
     }
   }
   return { u, v };
@@ -394,8 +412,5 @@ export function balancedPressure(flow: BarotropicFlow, f: number, density: numbe
     stage.re[at] = scale * (stage.re[at]! + f * vorticity.re[at]!);
     stage.im[at] = scale * (stage.im[at]! + f * vorticity.im[at]!);
   }
-  const { re } = toGrid(points, cut, work, stage);
-  const out = new Float64Array(points * points);
-  for (let y = 0; y < points; y++) for (let x = 0; x < points; x++) out[y * points + x] = re[x * points + y]!;
-  return out;
+  return inRows(toGrid(points, cut, work, stage).re, points);
 }
