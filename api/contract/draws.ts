@@ -1,8 +1,8 @@
 import { z } from 'zod';
-import { Currency, Id, Minor, Notice } from './common.ts';
+import { Currency, Minor, Notice } from './common.ts';
 import { endpoint } from './endpoint.ts';
 import { READERS } from './roles.ts';
-import { DrawNumber } from './runs.ts';
+import { DrawNumber, RunScenarioParams } from './runs.ts';
 
 /** One of the 264 vortex patterns of a track, with what it does to the event. */
 export const Draw = z.object({
@@ -47,15 +47,13 @@ export const DrawSites = z.object({
 });
 export type DrawSites = z.infer<typeof DrawSites>;
 
-const ScenarioParams = z.object({ runId: Id, runScenarioId: Id });
-
 export const listDraws = endpoint({
   id: 'listDraws',
   method: 'get',
   path: '/runs/:runId/scenarios/:runScenarioId/draws',
   summary: 'The 264 vortex draws of a track in the order of event gross',
   access: READERS,
-  params: ScenarioParams,
+  params: RunScenarioParams,
   response: Draws,
   status: 200,
 });
@@ -65,7 +63,7 @@ export const getDrawSites = endpoint({
   path: '/runs/:runId/scenarios/:runScenarioId/draws/:draw/sites',
   summary: 'Gusts in one draw, at the sites where it differs from plain',
   access: READERS,
-  params: ScenarioParams.extend({ draw: z.coerce.number().pipe(DrawNumber) }),
+  params: RunScenarioParams.extend({ draw: z.coerce.number().pipe(DrawNumber) }),
   response: DrawSites,
   status: 200,
 });

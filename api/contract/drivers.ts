@@ -1,7 +1,7 @@
 import { z } from 'zod';
-import { Id } from './common.ts';
 import { endpoint } from './endpoint.ts';
 import { READERS } from './roles.ts';
+import { RunScenarioParams, RunSiteParams } from './runs.ts';
 import { SpreadReply } from './studies.ts';
 
 /** What the eyewall ring and its vortices do to a result of a run, each setting changed alone. */
@@ -23,15 +23,13 @@ export const Drivers = SpreadReply.pick({
 });
 export type Drivers = z.infer<typeof Drivers>;
 
-const ScenarioParams = z.object({ runId: Id, runScenarioId: Id });
-
 export const getDrivers = endpoint({
   id: 'getDrivers',
   method: 'get',
   path: '/runs/:runId/scenarios/:runScenarioId/drivers',
   summary: 'What ring width, eye ratio, anchor, regime and vortices do to the 200 largest losses; free, stored nowhere',
   access: READERS,
-  params: ScenarioParams,
+  params: RunScenarioParams,
   response: Drivers,
   status: 200,
 });
@@ -41,7 +39,7 @@ export const getSiteDrivers = endpoint({
   path: '/runs/:runId/scenarios/:runScenarioId/sites/:siteNo/drivers',
   summary: 'What ring width, eye ratio, anchor, regime and vortices do at one site; free, stored nowhere',
   access: READERS,
-  params: ScenarioParams.extend({ siteNo: z.coerce.number().int().min(1) }),
+  params: RunSiteParams,
   response: Drivers,
   status: 200,
 });

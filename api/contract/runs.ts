@@ -414,8 +414,10 @@ export type RunSlip = z.infer<typeof RunSlip>;
 
 const QuoteParams = z.object({ quoteId: Id });
 const RunParams = z.object({ runId: Id });
-const ScenarioParams = z.object({ runId: Id, runScenarioId: Id });
-const SiteParams = ScenarioParams.extend({ siteNo: z.coerce.number().int().min(1) });
+/** One track of a run. */
+export const RunScenarioParams = z.object({ runId: Id, runScenarioId: Id });
+/** One site under one track of a run. */
+export const RunSiteParams = RunScenarioParams.extend({ siteNo: z.coerce.number().int().min(1) });
 
 export const createQuote = endpoint({
   id: 'createQuote',
@@ -505,7 +507,7 @@ export const listSites = endpoint({
   path: '/runs/:runId/scenarios/:runScenarioId/sites',
   summary: 'Site results, sorted and filtered on the server',
   access: READERS,
-  params: ScenarioParams,
+  params: RunScenarioParams,
   query: SitesQuery,
   response: SitesPage,
   status: 200,
@@ -516,7 +518,7 @@ export const exportSites = endpoint({
   path: '/runs/:runId/scenarios/:runScenarioId/sites.csv',
   summary: 'All site results as CSV, streamed',
   access: READERS,
-  params: ScenarioParams,
+  params: RunScenarioParams,
   stream: 'text/csv',
   response: z.string(),
   status: 200,
@@ -527,7 +529,7 @@ export const getSiteDetail = endpoint({
   path: '/runs/:runId/scenarios/:runScenarioId/sites/:siteNo',
   summary: 'One site: why this gust, series through the storm, damage and terms',
   access: READERS,
-  params: SiteParams,
+  params: RunSiteParams,
   response: SiteDetail,
   status: 200,
 });
@@ -537,7 +539,7 @@ export const getResultPoints = endpoint({
   path: '/runs/:runId/scenarios/:runScenarioId/points',
   summary: 'Site points for the map',
   access: READERS,
-  params: ScenarioParams,
+  params: RunScenarioParams,
   response: ResultPoints,
   status: 200,
 });
@@ -547,7 +549,7 @@ export const getFootprint = endpoint({
   path: '/runs/:runId/scenarios/:runScenarioId/footprint',
   summary: 'Footprint as filled bands',
   access: READERS,
-  params: ScenarioParams,
+  params: RunScenarioParams,
   query: FootprintQuery,
   response: Footprint,
   status: 200,

@@ -1,7 +1,7 @@
-import { barotropicFlow, stableStep, stepFlow, windOnGrid, type BarotropicFlow } from '#engine/ring/barotropic.ts';
+import { stableStep, stepFlow, windOnGrid, type BarotropicFlow } from '#engine/ring/barotropic.ts';
+import { DEFAULT_BREAKDOWN, ringFlow } from '#engine/ring/breakdown.ts';
 import { amplitudeLaw } from '#engine/ring/amplitude.ts';
 import { azimuthalShape, radialShape } from '#engine/ring/draws.ts';
-import { smoothRingVorticity } from '#engine/ring/profile.ts';
 import { smoothRingModes } from '#engine/ring/stability.ts';
 import { seededRandom } from '#engine/numerics/seeded-random.ts';
 
@@ -20,7 +20,6 @@ export type RingRun = {
 };
 
 const SIDE = 6;
-const VISCOSITY = 1.5e-5;
 const FRAME = 1;
 const LONGEST = 110;
 const WINDOW = 30;
@@ -29,28 +28,15 @@ const RADII = 36;
 const REACH = 1.8;
 const radiusAt = (k: number) => (REACH * (k + 0.5)) / RADII;
 
-const flowOf = ({ delta, gamma, seed, relaxation }: StudyRing, points: number): BarotropicFlow => {
-  const { uniform } = seededRandom(seed);
-  const phases = Array.from({ length: 8 }, () => 2 * Math.PI * uniform());
-  const calm = new Float64Array(points * points);
-  const disturbed = new Float64Array(points * points);
-  for (let j = 0; j < points; j++) {
-    for (let i = 0; i < points; i++) {
-      const x = (i / points - 0.5) * SIDE;
-      const y = (j / points - 0.5) * SIDE;
-      const r = Math.hypot(x, y);
-      const at = j * points + i;
-      calm[at] = smoothRingVorticity(r, { delta, gamma });
-      const wave = phases.reduce((sum, phase, m) => sum + Math.cos((m + 1) * Math.atan2(y, x) + phase), 0);
-      disturbed[at] = calm[at]! + 0.01 * smoothRingVorticity(r, { delta, gamma: 0 }) * wave;
-    }
-  }
-  return barotropicFlow(
-    { points, side: SIDE, viscosity: VISCOSITY, relaxation: relaxation ?? Infinity },
-    disturbed,
-    calm,
-  );
-};
+/** The ring as the breakdown lays it, with a maximum of 60 m/s at 30 km: one over its average vorticity is 250 s. */
+const RADIUS = 30_000;
+const UNIT_S = 250;
+const flowOf = ({ delta, gamma, seed, relaxation }: StudyRing, points: number): BarotropicFlow =>
+  ringFlow({
+    ...DEFAULT_BREAKDOWN,
+    ...{ maxWind: 60, radiusOfMaxWind: RADIUS, widthFraction: 1 - delta, eyeRatio: gamma },
+    ...{ points, sideInRadii: SIDE, seed, relaxationS: relaxation === undefined ? null : relaxation * UNIT_S },
+  });
 
 /** Along-flow speed on circles, and its greatest mean and value. */
 const circles = (flow: BarotropicFlow) => {
@@ -64,8 +50,8 @@ const circles = (flow: BarotropicFlow) => {
     for (let a = 0; a < AZIMUTHS; a++) {
       const cos = Math.cos((2 * Math.PI * a) / AZIMUTHS);
       const sin = Math.sin((2 * Math.PI * a) / AZIMUTHS);
-      const p = ((radiusAt(k) * cos) / side + 0.5) * points;
-      const q = ((radiusAt(k) * sin) / side + 0.5) * points;
+      const p = ((RADIUS * radiusAt(k) * cos) / side + 0.5) * points;
+      const q = ((RADIUS * radiusAt(k) * sin) / side + 0.5) * points;
       const i = Math.floor(p);
       const j = Math.floor(q);
       const at = j * points + i;
@@ -91,11 +77,11 @@ export const runRing = (ring: StudyRing, points: number): RingRun => {
   const frames: Float64Array[] = [];
   const until = ring.relaxation === undefined ? LONGEST : 120;
   const first = circles(flow);
-  const steps = Math.ceil(FRAME / stableStep(flow, 0.62));
+  const steps = Math.ceil((FRAME * UNIT_S) / stableStep(flow, 74));
   ratios.push(first.ratio);
   frames.push(first.speed);
   for (let t = FRAME; t <= until; t += FRAME) {
-    for (let k = 0; k < steps; k++) stepFlow(flow, FRAME / steps);
+    for (let k = 0; k < steps; k++) stepFlow(flow, (FRAME * UNIT_S) / steps);
     const { speed, ratio } = circles(flow);
     ratios.push(ratio);
     frames.push(speed);

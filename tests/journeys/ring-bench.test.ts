@@ -49,7 +49,7 @@ describe('a modeler at the ring bench', () => {
     await picture(page, 'ring-bench-1-ring');
   });
 
-  it('computes the breakdown while the page goes on answering, and steps to the four', async () => {
+  it('computes the breakdown, turns the picture round meanwhile, and steps to the four', async () => {
     await button('Compute the film').click();
     await page.getByRole('radio', { name: 'south' }).click();
     await page.getByText('two-dimensional, seen from above, clockwise').waitFor();

@@ -3,11 +3,11 @@ import type { Footprint, Run, RunScenario } from '#contract/runs.ts';
 import { useNarrow, useWide } from '../../../lib/use-narrow.ts';
 import { useUnits } from '../../../lib/units.tsx';
 import { paths } from '../../../paths.ts';
-import type { MapBands, MapSites, MapView } from '../../../ui/map/map-data.ts';
+import type { MapSites, MapView } from '../../../ui/map/map-data.ts';
 import { StormMap } from '../../../ui/map/storm-map.tsx';
 import { chanceWords } from '../draw-sites.ts';
-import { framing } from '../result-framing.ts';
 import { mapSummary } from '../result-words.ts';
+import { useMapLayers } from '../use-map-layers.ts';
 
 interface FootprintMapProps {
   run: Run;
@@ -54,26 +54,7 @@ export function FootprintMap(props: FootprintMapProps) {
   const { gust, label } = useUnits();
   const narrow = useNarrow();
   const wide = useWide();
-  const bands = useMemo<MapBands | null>(
-    () =>
-      picture
-        ? {
-            view: picture.view,
-            levels: picture.levels,
-            features: picture.bands.features,
-            bbox: picture.bbox,
-            computed: picture.computed?.bounds ?? null,
-          }
-        : null,
-    [picture],
-  );
-  const track = useMemo(() => ({ path: scenario.path, times: scenario.pathTimes }), [scenario]);
-  const bounds = useMemo(
-    () => framing(scenario, sites, picture?.bbox ?? null),
-    // The frame is set by the sites; another view of the same storm doesn't move it.
-    // eslint-disable-next-line react-hooks/exhaustive-deps
-    [scenario, sites, sites === null ? picture : null],
-  );
+  const { bands, track, bounds } = useMapLayers(scenario, sites, picture);
   const summary = useMemo(() => mapSummary(scenario, sites, gust, label), [scenario, sites, gust, label]);
   const note = error
     ? `This picture wasn’t read: ${error.message}`

@@ -2,12 +2,12 @@ import { useMemo, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import type { Run, RunScenario } from '#contract/runs.ts';
 import { useUnits } from '../../../lib/units.tsx';
-import type { MapBands, MapView } from '../../../ui/map/map-data.ts';
+import type { MapView } from '../../../ui/map/map-data.ts';
 import { StormMap } from '../../../ui/map/storm-map.tsx';
 import { pictureQuery } from '../draw-queries.ts';
-import { framing } from '../result-framing.ts';
 import { pointsQuery } from '../result-queries.ts';
 import { mapSummary } from '../result-words.ts';
+import { useMapLayers } from '../use-map-layers.ts';
 
 interface ResultMapProps {
   run: Run;
@@ -30,26 +30,7 @@ export function ResultMap({ run, scenario, chosenSiteNo, onChooseSite, fullSize,
   const points = useQuery(pointsQuery(at));
   const sites = points.data ?? null;
 
-  const bands = useMemo<MapBands | null>(
-    () =>
-      footprint.data
-        ? {
-            view: footprint.data.view,
-            levels: footprint.data.levels,
-            features: footprint.data.bands.features,
-            bbox: footprint.data.bbox,
-            computed: footprint.data.computed?.bounds ?? null,
-          }
-        : null,
-    [footprint.data],
-  );
-  const track = useMemo(() => ({ path: scenario.path, times: scenario.pathTimes }), [scenario]);
-  const bounds = useMemo(
-    () => framing(scenario, sites, footprint.data?.bbox ?? null),
-    // The frame is set by the sites; another view of the same storm doesn't move it.
-    // eslint-disable-next-line react-hooks/exhaustive-deps
-    [scenario, sites, sites === null ? footprint.data : null],
-  );
+  const { bands, track, bounds } = useMapLayers(scenario, sites, footprint.data);
   const chosen = sites && chosenSiteNo !== null ? sites.siteNo.indexOf(chosenSiteNo) : -1;
   const summary = useMemo(() => mapSummary(scenario, sites, gust, label), [scenario, sites, gust, label]);
 
